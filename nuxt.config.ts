@@ -1,0 +1,57 @@
+import { cp } from 'node:fs/promises'
+import { join } from 'node:path'
+
+export default defineNuxtConfig({
+  compatibilityDate: '2026-01-01',
+  modules: ['@nuxt/eslint', '@nuxtjs/tailwindcss', '@pinia/nuxt', '@sidebase/nuxt-auth'],
+  devtools: { enabled: false },
+  telemetry: false,
+  css: ['~/assets/css/main.css'],
+  // Component names follow their file, not their folder: <UiButton> lives in components/ui/UiButton.vue.
+  components: [{ path: '~/components', pathPrefix: false }],
+  imports: { dirs: ['queries', 'stores', 'offline'] },
+  app: {
+    head: {
+      htmlAttrs: { lang: 'en' },
+      title: 'Holdover',
+      meta: [
+        { name: 'viewport', content: 'width=device-width, initial-scale=1, viewport-fit=cover' },
+        { name: 'description', content: 'Plan, run and record a refrigeration controller\'s time out of service.' },
+        { name: 'theme-color', content: '#F4EFE3' },
+      ],
+      link: [{ rel: 'icon', type: 'image/svg+xml', href: '/mark.svg' }],
+    },
+  },
+  auth: {
+    originEnvKey: 'AUTH_ORIGIN',
+    provider: { type: 'authjs', defaultProvider: 'credentials', addDefaultCallbackUrl: true },
+    // Every page is closed unless it says `auth: false`; the API guards itself again (server/middleware).
+    globalAppMiddleware: { isEnabled: true, allow404WithoutAuth: true, addDefaultCallbackUrl: true },
+    sessionRefresh: { enablePeriodically: false, enableOnWindowFocus: false },
+  },
+  runtimeConfig: {
+    authSecret: '', // NUXT_AUTH_SECRET
+    databaseUrl: '', // NUXT_DATABASE_URL, set from DATABASE_URL by the start command
+    dataDir: '', // NUXT_DATA_DIR, from HOLDOVER_DATA
+  },
+  routeRules: {
+    // The run is a shell without data; it folds the log that it fetches (and, later, the one kept on the phone).
+    '/outages/**': { ssr: false },
+  },
+  nitro: {
+    // pdfkit reads .woff; only the files that the record's PDF is set in.
+    serverAssets: [
+      { baseName: 'fonts', dir: '../node_modules/@fontsource/ibm-plex-sans/files', pattern: 'ibm-plex-sans-latin-{400,600,700}-normal.woff' },
+      { baseName: 'mono', dir: '../node_modules/@fontsource/ibm-plex-mono/files', pattern: 'ibm-plex-mono-latin-400-normal.woff' },
+    ],
+    hooks: {
+      // Migrations are read at start, not bundled: they travel beside the server.
+      async compiled(nitro) {
+        await cp(join(nitro.options.rootDir, 'server/database/migrations'), join(nitro.options.output.serverDir, 'migrations'), { recursive: true })
+      },
+    },
+    experimental: { asyncContext: true },
+  },
+  typescript: { strict: true },
+  eslint: { config: { stylistic: { semi: false, quotes: 'single', commaDangle: 'always-multiline', braceStyle: '1tbs' } } },
+})
