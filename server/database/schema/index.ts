@@ -1,0 +1,3 @@
+export * from './outages'
+export * from './people'
+export * from './sites'

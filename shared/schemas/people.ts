@@ -1,0 +1,59 @@
+import { z } from 'zod'
+
+export const ROLES = ['technician', 'supervisor', 'auditor', 'administrator'] as const
+export type Role = (typeof ROLES)[number]
+
+/** Roles in the words that stand on screens and in the record. */
+export const ROLE_WORDS: Record<Role, string> = {
+  technician: 'Technician',
+  supervisor: 'Supervisor',
+  auditor: 'Auditor',
+  administrator: 'Administrator',
+}
+
+export const PASSWORD_MIN = 10
+export const PASSWORD_MAX = 200
+export const NAME_MAX = 80
+export const EMAIL_MAX = 254
+
+export const emailSchema = z.string({ required_error: 'Enter an e-mail address' }).trim().toLowerCase()
+  .min(1, 'Enter an e-mail address').max(EMAIL_MAX, `At most ${EMAIL_MAX} characters`).email('This is not an e-mail address')
+
+export const passwordSchema = z.string({ required_error: 'Enter a password' })
+  .min(PASSWORD_MIN, `At least ${PASSWORD_MIN} characters`).max(PASSWORD_MAX, `At most ${PASSWORD_MAX} characters`)
+
+export const personNameSchema = z.string({ required_error: 'Enter a name' }).trim().min(1, 'Enter a name').max(NAME_MAX, `At most ${NAME_MAX} characters`)
+
+export const signInSchema = z.object({
+  email: emailSchema,
+  password: z.string({ required_error: 'Enter the password' }).min(1, 'Enter the password').max(PASSWORD_MAX),
+})
+
+export const personCreateSchema = z.object({
+  email: emailSchema,
+  name: personNameSchema,
+  role: z.enum(ROLES, { errorMap: () => ({ message: 'Choose a role' }) }),
+  password: passwordSchema,
+  siteIds: z.array(z.string().uuid()).max(500).default([]),
+})
+
+export const personUpdateSchema = z.object({
+  name: personNameSchema,
+  role: z.enum(ROLES, { errorMap: () => ({ message: 'Choose a role' }) }),
+  siteIds: z.array(z.string().uuid()).max(500),
+  disabled: z.boolean(),
+  password: passwordSchema.optional(),
+}).partial()
+
+export const passwordChangeSchema = z.object({
+  current: z.string().min(1, 'Enter the present password').max(PASSWORD_MAX),
+  next: passwordSchema,
+}).refine(value => value.current !== value.next, { path: ['next'], message: 'Choose a password that differs from the present one' })
+
+export const DEVICE_NAME_MAX = 60
+export const deviceEnrolSchema = z.object({
+  id: z.string().uuid(),
+  name: z.string().trim().min(1, 'Name this device').max(DEVICE_NAME_MAX),
+  publicKey: z.string().regex(/^[A-Za-z0-9_-]{43}$/, 'A public key is 32 bytes in base64url'),
+  password: z.string().min(1, 'Enter your password').max(PASSWORD_MAX),
+})
