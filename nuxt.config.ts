@@ -5,6 +5,8 @@ export default defineNuxtConfig({
   compatibilityDate: '2026-01-01',
   modules: ['@nuxt/eslint', '@nuxtjs/tailwindcss', '@pinia/nuxt', '@sidebase/nuxt-auth'],
   devtools: { enabled: false },
+  // One style sheet holds Tailwind's layers; without this the module would add its own beside it.
+  tailwindcss: { cssPath: '~/assets/css/main.css', viewer: false },
   telemetry: false,
   css: ['~/assets/css/main.css'],
   // Component names follow their file, not their folder: <UiButton> lives in components/ui/UiButton.vue.
