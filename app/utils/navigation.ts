@@ -1,0 +1,34 @@
+/** The roles of people who sign in; each sees only the rooms that are theirs. */
+export type NavigationRole = 'technician' | 'supervisor' | 'auditor' | 'administrator'
+
+export interface NavigationItem {
+  label: string
+  to: string
+}
+
+const homes: Record<NavigationRole, string> = {
+  technician: 'Outages',
+  supervisor: 'Watch',
+  auditor: 'Overview',
+  administrator: 'Overview',
+}
+
+/** The links of the header for a role, in their order; nothing for somebody without a known role. */
+export function navigationFor(role: string | null | undefined): NavigationItem[] {
+  if (!role || !(role in homes)) return []
+  const items: NavigationItem[] = [
+    { label: homes[role as NavigationRole], to: '/' },
+    { label: 'Records', to: '/records' },
+    { label: 'Sites', to: '/sites' },
+    { label: 'Rulebooks', to: '/rulebooks' },
+  ]
+  if (role === 'administrator') items.push({ label: 'People', to: '/people' })
+  items.push({ label: 'Account', to: '/account' })
+  return items
+}
+
+/** Whether a path lies in the room of a link: '/' holds outages and plans too, any other link what begins with it. */
+export function isWithin(path: string, to: string): boolean {
+  if (to === '/') return path === '/' || path.startsWith('/outages') || path.startsWith('/plans')
+  return path === to || path.startsWith(`${to}/`)
+}
