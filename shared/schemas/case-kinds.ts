@@ -57,3 +57,10 @@ const OPEN_CASE_KINDS: readonly CaseKind[] = [
 export function isOpenKind(kind: CaseKind): boolean {
   return OPEN_CASE_KINDS.includes(kind)
 }
+
+const SLOW_CASE_KINDS: readonly CaseKind[] = ['glass-door-frozen', 'walk-in-freezer', 'walk-in-cooler']
+
+/** True for closed freezers and walk-ins, whose rounds may lie up to an hour apart. */
+export function isSlowKind(kind: CaseKind): boolean {
+  return SLOW_CASE_KINDS.includes(kind)
+}
