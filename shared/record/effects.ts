@@ -1,0 +1,213 @@
+import { BACK_CHECKS } from './checks'
+import type { AnyEntry, Entry, StoredEntry } from './entry'
+import { correctedTime, happenedAt } from './entry'
+import { goDarkGate, NO_RESULTS } from './gates'
+import type { EntryKind } from './kinds'
+import type { Act } from './kinds/rounds'
+import type { Plan } from './plan'
+import { expectedSeen } from './select'
+import type { CaseState, Mark, OutageState, PointState } from './state'
+
+type Effect<K extends EntryKind> = (state: OutageState, entry: Entry<K>, mark: Mark) => void
+
+/** Acts after which nothing of the case is left to judge. */
+const EMPTYING: readonly Act[] = ['moved', 'used', 'emptied', 'discarded']
+
+/** What an accepted entry does to the state. Each changes the draft that the fold hands it. */
+export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
+  'signer-named': (state, { body }) => {
+    state.signers[body.device] = { person: body.person, name: body.name, role: body.role, deviceName: body.deviceName, publicKey: body.publicKey }
+  },
+  'outage-numbered': (state, { body }) => { state.code = body.code },
+  'entry-refused': (state, { body }, mark) => {
+    state.refusals.push({ device: body.device, n: body.n, id: body.id, reason: body.reason, seq: mark.seq })
+    state.chain[body.device] = { n: body.n, hash: body.hash }
+  },
+  'verdict-changed': (state, { body }, mark) => {
+    const item = state.cases[body.caseId]
+    if (!item) return
+    item.verdict = { verdict: body.verdict, deadline: body.deadline === null ? null : Date.parse(body.deadline), minutesAbove: body.minutesAbove, clause: body.clause, source: body.source, act: body.act, why: body.why, at: Date.parse(body.judgedAt), seq: mark.seq }
+    if (body.verdict === 'act' || body.verdict === 'discard') item.openAct = mark.seq
+  },
+
+  'outage-opened': (state, entry, mark) => {
+    const { body } = entry
+    state.opened = mark
+    state.planned = body.planned
+    state.cause = body.cause
+    state.snapshot = body.snapshot
+    for (const point of body.snapshot.points) state.points[point.tag] = newPoint(point.tag, point.kind)
+    for (const item of body.snapshot.cases) state.cases[item.id] = newCase(item.id)
+    setPlan(state, body.plan, mark)
+    if (!body.planned) beginDark(state, correctedTime(entry, body.lostAt ?? entry.at), 'fact', body.cause, [], mark)
+  },
+  'plan-changed': (state, { body }, mark) => {
+    setPlan(state, body.plan, mark)
+    state.planSubmitted = null
+    if (state.phase === 'approved') { state.phase = 'plan'; state.approved = null }
+  },
+  'plan-submitted': (state, _entry, mark) => { state.planSubmitted = mark; state.planReturned = null; addOnce(state.authors, mark.by) },
+  'plan-approved': (state, _entry, mark) => { state.approved = mark; state.phase = 'approved' },
+  'plan-returned': (state, { body }, mark) => { state.planReturned = { reason: body.reason, mark }; state.planSubmitted = null },
+  'in-hand-begun': (state, _entry, mark) => { state.inHandBegun = mark; state.phase = 'in-hand' },
+  'called-off': (state, { body }, mark) => { state.calledOff = { reason: body.reason, mark }; state.phase = 'called-off' },
+
+  'check-signed': (state, { body }, mark) => { state.checks[body.check] = { outcome: body.outcome, words: body.words, photos: body.photos, mark } },
+  'point-in-hand': (state, { body }, mark) => {
+    const point = state.points[body.tag]
+    if (!point) return
+    point.questionedHand = null
+    if (point.kind === 'compressor') point.stoppedAt = body.seen === 'not-running' ? mark.at : null
+    if (body.seen !== expectedSeen(point.kind, body.hand)) { point.tried = { seen: body.seen, mark }; return }
+    Object.assign(point, { status: 'hand', hand: body.hand, seen: body.seen, value: body.value, until: Date.parse(body.until), reason: body.reason, words: body.words, photos: body.photos, mark, tried: null, excuse: null, exception: null, proof: null })
+  },
+  'point-excused': (state, { body }, mark) => {
+    const point = state.points[body.tag]
+    if (point) Object.assign(point, { status: 'excused', hand: null, tried: null, excuse: { reason: body.reason, measure: body.measure }, photos: body.photos, mark })
+  },
+  'point-in-auto': (state, { body }, mark) => {
+    const point = state.points[body.tag]
+    if (!point) return
+    const beforeDark = state.darks.length === 0
+    const status = beforeDark ? 'auto' : body.seen === 'answers' ? 'proven' : 'returned'
+    Object.assign(point, { status, hand: null, value: null, until: null, seen: body.seen, words: body.words, photos: body.photos, mark, tried: null, questionedHand: null, proof: status === 'proven' ? mark : null })
+  },
+  'point-proven': (state, { body }, mark) => {
+    const point = state.points[body.tag]
+    if (point) Object.assign(point, { status: 'proven', seen: 'answers', words: body.words, photos: body.photos, proof: mark })
+  },
+  'left-in-exception': (state, entry, mark) => {
+    for (const left of entry.body.points) {
+      const point = state.points[left.tag]
+      if (point) point.exception = { owner: left.owner, by: correctedTime(entry, left.by), reason: left.reason, mark }
+    }
+  },
+  'hand-back-closed': (state, _entry, mark) => { state.handBackClosed = mark; state.phase = 'settle' },
+  'defrost-watched': (state, { body }, mark) => { state.defrostsWatched.push({ ...body, mark }) },
+
+  'reading-taken': (state, entry, mark) => addReading(state, entry, mark, false),
+  'pressure-read': (state, { body }, mark) => addPressure(state, body, mark, false),
+  'act-signed': (state, { body }, mark) => {
+    const item = state.cases[body.caseId]
+    if (!item) return
+    const { caseId: _, ...act } = body
+    item.acts.push({ ...act, mark })
+    if (body.act === 'accepted-warm') { item.acceptedWarm = true; return }
+    if (EMPTYING.includes(body.act)) item.empty = true
+    if (item.verdict?.verdict !== 'discard' || body.act === 'discarded') item.openAct = null
+  },
+  'decided-otherwise': (state, { body }, mark) => {
+    const item = state.cases[body.caseId]
+    if (item) { item.decidedOtherwise = { reason: body.reason, mark }; item.openAct = null }
+  },
+
+  'went-dark': (state, entry, mark) => beginDark(state, correctedTime(entry, entry.body.lostAt), 'gate', '', [], mark),
+  'control-lost': (state, entry, mark) => {
+    const again = state.darks.length > 0
+    const breach = again ? [`control lost again in ${state.phase === 'settle' ? 'settle' : 'hand back'}`] : goDarkGate(state, mark.at, NO_RESULTS)
+    beginDark(state, correctedTime(entry, entry.body.lostAt), 'fact', entry.body.words, breach, mark)
+  },
+  'step-ticked': (state, { body }, mark) => {
+    const step = state.steps[body.step] ??= { begun: null, done: null }
+    step[body.state] = mark
+  },
+  'turned-back': (state, { body }, mark) => { state.turnedBack = { reason: body.reason, mark } },
+  'control-back': (state, entry) => {
+    const backAt = correctedTime(entry, entry.body.backAt)
+    const open = state.darks.at(-1)
+    if (open) open.to = backAt
+    state.backAt = backAt
+    state.phase = 'hand-back'
+  },
+  'note-added': (state, { body }, mark) => { state.notes.push({ ...body, mark }) },
+
+  'correction': (state, { body }, mark) => {
+    state.corrections.push({ corrects: body.corrects, reason: body.reason, mark })
+    if (body.reading === null) return
+    for (const item of Object.values(state.cases)) {
+      const reading = item.readings.find(known => known.entry === body.corrects)
+      if (!reading) continue
+      reading.correctedBy = mark.entry
+      if (body.reading === 'struck') reading.struck = true
+      else reading.value = body.reading.value
+    }
+  },
+  'questioned-settled': (state, { body }, mark) => {
+    const item = state.questioned.find(known => known.entry === body.entry)
+    if (!item) return
+    item.settled = { words: body.words, mark }
+    for (const point of Object.values(state.points)) if (point.questionedHand === body.entry) point.questionedHand = null
+  },
+  'question-asked': (state, { body }, mark) => { state.questions.push({ entry: mark.entry, ...body, mark, answer: null }) },
+  'question-answered': (state, { body }, mark) => {
+    const question = state.questions.find(known => known.entry === body.question)
+    if (question) question.answer = { words: body.words, mark }
+  },
+  'submitted': (state, { body }, mark) => {
+    state.submitted = { drawing: body.drawing, words: body.words, mark }
+    addOnce(state.submitters, mark.by)
+    state.phase = 'submitted'
+  },
+  'returned': (state, { body }, mark) => { state.returned.push({ reason: body.reason, mark }); state.phase = 'settle' },
+  'sealed': (state, { body }, mark) => {
+    state.sealed = { drawing: body.drawing, size: body.size, root: body.root, words: body.words, mark }
+    state.phase = 'sealed'
+  },
+}
+
+/**
+ * What a questioned entry still does: a point that it says is in hand counts as in hand, a
+ * temperature or pressure that it carries is kept and judged. It moves no phase and lowers no count.
+ */
+export function applyQuestioned(state: OutageState, stored: StoredEntry, mark: Mark): void {
+  const entry: AnyEntry = stored.entry
+  const tag = 'tag' in entry.body && typeof entry.body.tag === 'string' ? entry.body.tag : null
+  state.questioned.push({ entry: entry.id, seq: stored.seq, kind: entry.kind, why: stored.why, tag, settled: null })
+  if (entry.kind === 'point-in-hand') {
+    const point = state.points[entry.body.tag]
+    if (point && point.status !== 'hand') point.questionedHand = entry.id
+  }
+  if (entry.kind === 'reading-taken') addReading(state, entry, mark, true)
+  if (entry.kind === 'pressure-read') addPressure(state, entry.body, mark, true)
+}
+
+function addReading(state: OutageState, entry: Entry<'reading-taken'>, mark: Mark, questioned: boolean): void {
+  const { caseId, round, value, unit, method, instrumentId, words } = entry.body
+  state.cases[caseId]?.readings.push({ entry: entry.id, seq: mark.seq, round, at: happenedAt(entry), value, unit, method, instrumentId, by: entry.by, questioned, correctedBy: null, struck: false, words })
+}
+
+function addPressure(state: OutageState, body: Entry<'pressure-read'>['body'], mark: Mark, questioned: boolean): void {
+  const { round, suctionGroupId, suctionPsig, dischargePsig } = body
+  state.pressures.push({ round, at: mark.at, suctionGroupId, suctionPsig, dischargePsig, by: mark.by, seq: mark.seq, questioned })
+}
+
+function setPlan(state: OutageState, plan: Plan, mark: Mark): void {
+  state.plan = plan
+  addOnce(state.authors, mark.by)
+  for (const item of plan.cases) {
+    const known = state.cases[item.id]
+    if (known) known.touched = item.touched
+  }
+}
+
+/** Control is gone: what the controller had proven holds no more, and its checks must be signed afresh. */
+function beginDark(state: OutageState, from: number, how: 'gate' | 'fact', words: string, breach: string[], mark: Mark): void {
+  state.darks.push({ from, to: null, how, words, breach, mark })
+  state.phase = 'dark'
+  state.backAt = null
+  state.handBackClosed = null
+  for (const check of BACK_CHECKS) Reflect.deleteProperty(state.checks, check.id)
+  for (const point of Object.values(state.points)) if (point.status === 'returned' || point.status === 'proven') { point.status = 'auto'; point.proof = null }
+}
+
+function addOnce(list: string[], value: string): void {
+  if (!list.includes(value)) list.push(value)
+}
+
+function newPoint(tag: string, kind: PointState['kind']): PointState {
+  return { tag, kind, status: 'auto', hand: null, seen: null, value: null, until: null, reason: '', words: '', photos: [], mark: null, tried: null, stoppedAt: null, questionedHand: null, excuse: null, exception: null, proof: null }
+}
+
+function newCase(id: string): CaseState {
+  return { id, touched: false, readings: [], verdict: null, openAct: null, acts: [], decidedOtherwise: null, acceptedWarm: false, empty: false }
+}

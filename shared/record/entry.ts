@@ -1,0 +1,87 @@
+import { z } from 'zod'
+import { canonicalBytes, sha256Hex } from './canonical'
+import type { BodyOf, EntryKind } from './kinds'
+
+/** The signer that stands for the server itself in `by`. */
+export const SERVER = 'server'
+
+const iso = z.string().regex(/^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}:\d{2}\.\d{3}Z$/, 'A time is UTC with milliseconds, such as 2026-03-03T02:24:00.000Z')
+  .refine(text => !Number.isNaN(Date.parse(text)), 'This is not a time')
+
+/** What every entry carries beside its body; the body is checked by its own kind's schema. */
+export const envelopeSchema = z.object({
+  v: z.number().int().min(1).max(1000),
+  id: z.string().uuid().toLowerCase(),
+  outage: z.string().uuid().toLowerCase(),
+  kind: z.string().min(1).max(40),
+  body: z.record(z.unknown()),
+  at: iso,
+  skew: z.number().int().min(-3_153_600_000_000).max(3_153_600_000_000),
+  by: z.union([z.string().uuid(), z.literal(SERVER)]),
+  device: z.string().uuid(),
+  n: z.number().int().min(1).max(1_000_000),
+  prev: z.string().regex(/^[0-9a-f]{64}$/).nullable(),
+}).strict()
+
+export const signedEntrySchema = z.object({
+  entry: envelopeSchema,
+  signature: z.string().regex(/^[A-Za-z0-9_-]{86}$/, 'A signature is 64 bytes in base64url'),
+}).strict()
+
+export const ENTRIES_PER_PUSH = 50
+export const pushSchema = z.object({ entries: z.array(z.unknown()).min(1, 'At least one entry').max(ENTRIES_PER_PUSH, `At most ${ENTRIES_PER_PUSH} entries at once`) })
+
+/** One signed act. See docs/record-format.md. */
+export interface Entry<K extends EntryKind = EntryKind> {
+  v: number
+  id: string
+  outage: string
+  kind: K
+  body: BodyOf<K>
+  at: string
+  skew: number
+  by: string
+  device: string
+  n: number
+  prev: string | null
+}
+
+/** Distributes over the kinds, so that a check of `kind` narrows `body`. */
+export type AnyEntry = { [K in EntryKind]: Entry<K> }[EntryKind]
+
+export interface SignedEntry { entry: AnyEntry, signature: string }
+
+export type Standing = 'accepted' | 'questioned'
+
+/** An entry as it stands in the log: one leaf of the outage's Merkle tree. */
+export interface StoredEntry extends SignedEntry {
+  seq: number
+  receivedAt: string
+  standing: Standing
+  /** why it is questioned, in words; empty when accepted */
+  why: string[]
+}
+
+/** The bytes that are signed and hashed. */
+export function entryBytes(entry: AnyEntry): Uint8Array {
+  return canonicalBytes(entry)
+}
+
+export function entryHash(entry: AnyEntry): string {
+  return sha256Hex(entryBytes(entry))
+}
+
+/** When it happened by the server's clock, Unix ms: the device's time less its last measured difference. */
+export function happenedAt(entry: { at: string, skew: number }): number {
+  return Date.parse(entry.at) - entry.skew
+}
+
+/** A time inside a body, read off the same device, on the same footing. Unix ms. */
+export function correctedTime(entry: { skew: number }, time: string): number {
+  return Date.parse(time) - entry.skew
+}
+
+/** An ISO time with milliseconds in UTC, as entries hold it. @param ms Unix time, ms */
+export function isoTime(ms: number): string {
+  return new Date(ms).toISOString()
+}

@@ -1,0 +1,48 @@
+import { EFFECTS, applyQuestioned } from './effects'
+import type { AnyEntry, Entry, StoredEntry } from './entry'
+import { entryHash, happenedAt } from './entry'
+import type { EntryKind } from './kinds'
+import type { Mark, OutageState } from './state'
+import { emptyState } from './state'
+
+/**
+ * The state of an outage after its entries: pure and deterministic, the same code on the phone and
+ * on the server.
+ * @param entries stored entries in the order of `seq`
+ * @param from a state to go on from; it is not changed
+ */
+export function fold(entries: readonly StoredEntry[], from: OutageState): OutageState {
+  const state = structuredClone(from)
+  for (const stored of entries) applyStored(state, stored)
+  return state
+}
+
+/** The state of a whole log. @param id the outage's id */
+export function foldLog(id: string, entries: readonly StoredEntry[]): OutageState {
+  return fold(entries, emptyState(id))
+}
+
+/** Applies one entry to a draft that the caller owns. An entry already applied changes nothing. */
+export function applyStored(state: OutageState, stored: StoredEntry): void {
+  if (stored.seq <= state.size) return
+  const { entry } = stored
+  state.size = stored.seq
+  const mark: Mark = { by: entry.by, at: happenedAt(entry), seq: stored.seq, entry: entry.id }
+  if (stored.standing === 'accepted') applyAccepted(state, entry, mark)
+  else applyQuestioned(state, stored, mark)
+  state.chain[entry.device] = { n: entry.n, hash: entryHash(entry) }
+  for (const file of filesOf(entry)) if (!state.files.includes(file)) state.files.push(file)
+  if (Math.abs(entry.skew) > (state.largestSkew?.ms ?? 0)) state.largestSkew = { ms: Math.abs(entry.skew), device: entry.device }
+}
+
+function applyAccepted(state: OutageState, entry: AnyEntry, mark: Mark): void {
+  const effect = EFFECTS[entry.kind] as (state: OutageState, entry: Entry<EntryKind>, mark: Mark) => void
+  effect(state, entry, mark)
+}
+
+/** Hashes of the photos and drawings that an entry names. */
+export function filesOf(entry: AnyEntry): string[] {
+  const body: Record<string, unknown> = entry.body
+  const photos = Array.isArray(body.photos) ? body.photos.filter((file): file is string => typeof file === 'string') : []
+  return typeof body.drawing === 'string' ? [...photos, body.drawing] : photos
+}

@@ -1,0 +1,12 @@
+import { z } from 'zod'
+import { photos, saying, time, words } from './common'
+
+/** Kinds of the time without control. */
+export const darkKinds = {
+  'went-dark': { 1: z.object({ lostAt: time }).strict() }, // a decision: the gate's
+  'control-lost': { 1: z.object({ lostAt: time, words: saying('Say what happened'), photos }).strict() }, // a fact: never refused
+  'step-ticked': { 1: z.object({ step: z.string().min(1).max(40), state: z.enum(['begun', 'done']), words }).strict() },
+  'turned-back': { 1: z.object({ reason: saying('Say why') }).strict() },
+  'control-back': { 1: z.object({ backAt: time, words }).strict() },
+  'note-added': { 1: z.object({ words: saying('Write the note'), photos }).strict() },
+}

@@ -1,0 +1,39 @@
+import { z } from 'zod'
+import { ROLES } from '../../schemas/people'
+import { time, uuid } from './common'
+
+export const VERDICTS = ['within', 'above', 'act', 'discard', 'unknown'] as const
+export type Verdict = (typeof VERDICTS)[number]
+export const VERDICT_WORDS: Record<Verdict, string> = {
+  within: 'within its limit',
+  above: 'above its limit',
+  act: 'needs an act now',
+  discard: 'to be discarded',
+  unknown: 'not known: no reading in time',
+}
+
+/** Kinds that only the server signs. */
+export const serverKinds = {
+  'signer-named': { 1: z.object({
+    device: uuid,
+    deviceName: z.string().max(60),
+    person: z.union([uuid, z.literal('server')]),
+    name: z.string().min(1).max(80),
+    role: z.union([z.enum(ROLES), z.literal('server')]),
+    publicKey: z.string().regex(/^[A-Za-z0-9_-]{43}$/),
+    enrolledAt: time,
+  }).strict() },
+  'outage-numbered': { 1: z.object({ code: z.string().min(1).max(40) }).strict() },
+  'verdict-changed': { 1: z.object({
+    caseId: uuid,
+    verdict: z.enum(VERDICTS),
+    deadline: time.nullable(),
+    minutesAbove: z.number().min(0),
+    clause: z.string().max(400),
+    source: z.string().max(400),
+    act: z.string().max(600).nullable(),
+    why: z.array(z.string().max(600)).max(40),
+    judgedAt: time,
+  }).strict() },
+  'entry-refused': { 1: z.object({ device: uuid, n: z.number().int().min(1), id: uuid, hash: z.string().regex(/^[0-9a-f]{64}$/), reason: z.string().max(1000) }).strict() },
+}

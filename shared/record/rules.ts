@@ -1,0 +1,183 @@
+import type { Role } from '../schemas/people'
+import { handWords, isHandActive } from '../schemas/point-kinds'
+import { BACK_CHECKS, checkById } from './checks'
+import type { AnyEntry, Entry } from './entry'
+import { correctedTime, happenedAt } from './entry'
+import { callOffGate, goDarkGate, handBackGate, planGate, returnPointsGate, sealGate, submitGate } from './gates'
+import type { EntryKind } from './kinds'
+import { PHASE_WORDS, PHASES } from './phases'
+import type { Phase } from './phases'
+import type { OutageState } from './state'
+
+/** Who signs. */
+export interface Actor { id: string, role: Role }
+
+/** What only the engines and the store can say; worked out by the caller when asked. */
+export interface Surroundings {
+  /** rules that the plan breaks, by the order engine, in words */
+  planRefusals: (state: OutageState) => string[]
+  /** tags that go back to auto before this one (I7, I12 and the order of page hand back) */
+  handBackAfter: (state: OutageState, tag: string) => string[]
+  /** reasons of the plan against going dark, in words */
+  margin: (state: OutageState, at: number) => string[]
+  /** files named by the log that the store does not hold */
+  filesAwaited: (state: OutageState) => string[]
+  /** Merkle root of the log so far, or null where the log is not at hand (then it is not compared) */
+  root: string | null
+}
+
+interface Rule<K extends EntryKind> {
+  roles: readonly Role[]
+  phases: readonly Phase[]
+  /** a reason why this person may not sign this at all */
+  forbids?: (state: OutageState, entry: Entry<K>, actor: Actor) => string | null
+  /** reasons why the entry does not fit the state */
+  unfit?: (state: OutageState, entry: Entry<K>, around: Surroundings) => string[]
+}
+
+const HANDS: readonly Role[] = ['technician', 'supervisor']
+const SUPERVISOR: readonly Role[] = ['supervisor']
+const NOBODY: readonly Role[] = []
+const RUN: readonly Phase[] = ['in-hand', 'dark', 'hand-back', 'settle']
+const BEFORE_SEAL = PHASES.filter(phase => phase !== 'sealed')
+/** A time given as past may lie this far ahead of the entry's own, ms. */
+const AHEAD_MS = 60_000
+const DEFAULT_MIN_OFF = 5
+
+const own = (state: OutageState, actor: Actor) => state.authors.includes(actor.id)
+const serverOnly = { roles: NOBODY, phases: PHASES }
+const ahead = (entry: AnyEntry, time: string) => correctedTime(entry, time) > happenedAt(entry) + AHEAD_MS ? ['the time lies in the future'] : []
+const knownPoint = (state: OutageState, tag: string) => state.points[tag] ? [] : [`there is no point ${tag}`]
+const knownCase = (state: OutageState, id: string) => state.cases[id] ? [] : ['there is no such case in this outage']
+
+/** Who may sign what, in which phase, and what it must fit. */
+export const RULES: { [K in EntryKind]: Rule<K> } = {
+  'signer-named': serverOnly,
+  'outage-numbered': serverOnly,
+  'verdict-changed': serverOnly,
+  'entry-refused': serverOnly,
+
+  'outage-opened': { roles: HANDS, phases: ['plan'], unfit: (state, entry) => [
+    ...(state.opened ? ['this outage is already open'] : []),
+    ...(entry.body.lostAt === null ? [] : ahead(entry, entry.body.lostAt)),
+  ] },
+  'plan-changed': { roles: HANDS, phases: ['plan', 'approved', 'in-hand', 'dark'] },
+  'plan-submitted': { roles: HANDS, phases: ['plan'], unfit: (state, _entry, around) => planGate(state, { planRefusals: around.planRefusals(state), margin: [] }) },
+  'plan-approved': { roles: SUPERVISOR, phases: ['plan'], forbids: (state, _entry, actor) => own(state, actor) ? 'nobody approves what they planned themselves (I10)' : null, unfit: waitsForApproval },
+  'plan-returned': { roles: SUPERVISOR, phases: ['plan'], unfit: waitsForApproval },
+  'in-hand-begun': { roles: HANDS, phases: ['approved'] },
+  'called-off': { roles: HANDS, phases: ['plan', 'approved', 'in-hand'], unfit: state => callOffGate(state) },
+
+  'check-signed': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => {
+    const back = BACK_CHECKS.some(check => check.id === body.check)
+    if (back && state.phase !== 'hand-back' && state.phase !== 'settle') return ['the controller is checked once control is back']
+    if (body.outcome === 'needless' && !checkById(body.check).mayBeNeedless) return ['this check cannot be left out']
+    return body.outcome === 'needless' && body.words === '' ? ['say why it is not needed'] : []
+  } },
+  'point-in-hand': { roles: HANDS, phases: RUN, unfit: pointInHandUnfit },
+  'point-excused': { roles: HANDS, phases: ['in-hand', 'dark'], unfit: (state, { body }) => knownPoint(state, body.tag) },
+  'point-in-auto': { roles: HANDS, phases: ['in-hand', 'hand-back', 'settle'], unfit: (state, { body }, around) => {
+    const point = state.points[body.tag]
+    if (!point) return knownPoint(state, body.tag)
+    if (point.status !== 'hand' && point.tried === null && point.questionedHand === null) return [`${body.tag} is not in hand`]
+    const gate = state.darks.length > 0 ? returnPointsGate(state) : []
+    const before = around.handBackAfter(state, body.tag).filter(tag => stillHeld(state, tag))
+    return before.length > 0 ? [...gate, `goes back after ${before.join(', ')}`] : gate
+  } },
+  'point-proven': { roles: HANDS, phases: ['hand-back', 'settle'], unfit: (state, { body }) => state.points[body.tag]?.status === 'returned' ? [] : [`${body.tag} is not waiting for its proof`] },
+  'left-in-exception': { roles: SUPERVISOR, phases: ['hand-back', 'settle'], unfit: (state, { body }) => body.points.flatMap(left => knownPoint(state, left.tag)) },
+  'hand-back-closed': { roles: HANDS, phases: ['hand-back'], unfit: state => handBackGate(state) },
+  'defrost-watched': { roles: HANDS, phases: ['hand-back', 'settle'], unfit: (state, { body }) => state.snapshot.circuits.some(circuit => circuit.id === body.circuitId) ? [] : ['there is no such circuit'] },
+
+  'reading-taken': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => knownCase(state, body.caseId) },
+  'pressure-read': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => state.snapshot.suctionGroups.some(group => group.id === body.suctionGroupId) ? [] : ['there is no such suction group'] },
+  'act-signed': { roles: HANDS, phases: [...RUN, 'approved', 'submitted'], unfit: (state, { body }) => {
+    const missing = knownCase(state, body.caseId)
+    if (body.act === 'discarded' && (body.product === '' || body.quantity === null)) missing.push('name the product and the quantity that is discarded')
+    if (body.act === 'moved' && body.place === '') missing.push('say where the product was moved to')
+    return missing
+  } },
+  'decided-otherwise': { roles: SUPERVISOR, phases: [...RUN, 'submitted'], unfit: (state, { body }) => knownCase(state, body.caseId) },
+
+  'went-dark': { roles: HANDS, phases: ['in-hand'], unfit: (state, entry, around) => {
+    const at = happenedAt(entry)
+    return [...ahead(entry, entry.body.lostAt), ...goDarkGate(state, at, { planRefusals: [], margin: around.margin(state, at) })]
+  } },
+  'control-lost': { roles: HANDS, phases: ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], unfit: (_state, entry) => ahead(entry, entry.body.lostAt) },
+  'step-ticked': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => [...state.plan.steps, ...state.plan.rollBack].some(step => step.id === body.step) ? [] : ['there is no such step'] },
+  'turned-back': { roles: HANDS, phases: ['dark'], unfit: state => state.turnedBack ? ['the way back has begun already'] : [] },
+  'control-back': { roles: HANDS, phases: ['dark'], unfit: (state, entry) => {
+    const from = state.darks.at(-1)?.from ?? 0
+    return correctedTime(entry, entry.body.backAt) < from ? ['control cannot be back before it was lost'] : ahead(entry, entry.body.backAt)
+  } },
+  'note-added': { roles: HANDS, phases: BEFORE_SEAL },
+
+  'correction': { roles: HANDS, phases: BEFORE_SEAL, unfit: (state, { body }) => body.reading === null || Object.values(state.cases).some(item => item.readings.some(reading => reading.entry === body.corrects)) ? [] : ['there is no such reading'] },
+  'questioned-settled': { roles: HANDS, phases: BEFORE_SEAL, unfit: (state, { body }) => state.questioned.some(item => item.entry === body.entry && item.settled === null) ? [] : ['no such entry is waiting'] },
+  'question-asked': { roles: SUPERVISOR, phases: [...RUN, 'submitted'] },
+  'question-answered': { roles: HANDS, phases: BEFORE_SEAL, unfit: (state, { body }) => state.questions.some(question => question.entry === body.question && question.answer === null) ? [] : ['no such question is open'] },
+  'submitted': { roles: HANDS, phases: ['settle'], unfit: state => submitGate(state) },
+  'returned': { roles: SUPERVISOR, phases: ['submitted'] },
+  'sealed': {
+    roles: SUPERVISOR,
+    phases: ['submitted'],
+    forbids: (state, _entry, actor) => own(state, actor) || state.submitters.includes(actor.id) ? 'nobody seals what they planned or submitted themselves (I10)' : null,
+    unfit: (state, { body }, around) => {
+      const missing = sealGate(state, around.filesAwaited(state))
+      if (body.size !== state.size) missing.push(`the record has ${state.size} entries, the seal says ${body.size}: read it again`)
+      else if (around.root !== null && body.root !== around.root) missing.push('the root of the seal is not that of the record')
+      return missing
+    },
+  },
+}
+
+function waitsForApproval(state: OutageState): string[] {
+  return state.planSubmitted ? [] : ['the plan was not sent for approval']
+}
+
+function stillHeld(state: OutageState, tag: string): boolean {
+  const point = state.points[tag]
+  return point !== undefined && point.status === 'hand' && point.exception === null
+}
+
+/** Order, minimum off time, and a reason for leaving the plan. */
+function pointInHandUnfit(state: OutageState, entry: Entry<'point-in-hand'>): string[] {
+  const { tag, hand, reason } = entry.body
+  const point = state.points[tag]
+  if (!point) return knownPoint(state, tag)
+  const missing: string[] = []
+  if (isHandActive(hand) && (point.kind === 'defrost-heater' || point.kind === 'hot-gas-valve')) missing.push('a defrost heater or hot-gas valve is never in hand on (I2)')
+  const planned = state.plan.points.find(item => item.tag === tag)
+  if (reason === '' && (!planned || handWords(planned.hand) !== handWords(hand))) missing.push(planned ? `the plan says ${handWords(planned.hand)}: give a reason` : 'the plan does not touch this point: give a reason')
+  const minOff = state.snapshot.points.find(item => item.tag === tag)?.minOffMin ?? DEFAULT_MIN_OFF
+  if (point.kind === 'compressor' && isHandActive(hand) && point.stoppedAt !== null && happenedAt(entry) - point.stoppedAt < minOff * 60_000) missing.push(`stopped less than ${minOff} minutes ago (I5)`)
+  if (state.phase === 'in-hand' || state.phase === 'dark') {
+    const before = (state.plan.order.find(line => line.tag === tag)?.after ?? []).filter(other => isWaiting(state, other))
+    if (before.length > 0) missing.push(`comes after ${before.join(', ')}`)
+  }
+  return missing
+}
+
+/** A point of the plan that is neither in hand nor excused. */
+export function isWaiting(state: OutageState, tag: string): boolean {
+  const point = state.points[tag]
+  return point !== undefined && (point.status === 'auto' || point.tried !== null)
+}
+
+export type Judgement
+  = | { standing: 'accepted' | 'questioned', why: string[] }
+    | { standing: 'refused', why: string[] }
+
+/**
+ * Whether a validly signed entry of a known kind may be stored, and how it stands.
+ * Refused: this person may never sign it. Questioned: it is kept, but does not fit.
+ */
+export function judge(state: OutageState, entry: AnyEntry, actor: Actor, around: Surroundings): Judgement {
+  const rule = RULES[entry.kind] as Rule<EntryKind>
+  if (!rule.roles.includes(actor.role)) return { standing: 'refused', why: [rule.roles.length === 0 ? 'only Holdover itself signs this' : `this is signed by a ${rule.roles.join(' or a ')}, not by ${actor.role === 'auditor' || actor.role === 'administrator' ? 'an' : 'a'} ${actor.role}`] }
+  const forbidden = rule.forbids?.(state, entry, actor)
+  if (forbidden) return { standing: 'refused', why: [forbidden] }
+  if (!rule.phases.includes(state.phase)) return { standing: 'questioned', why: [`does not belong in the phase "${PHASE_WORDS[state.phase].toLowerCase()}"`] }
+  const why = rule.unfit?.(state, entry, around) ?? []
+  return { standing: why.length === 0 ? 'accepted' : 'questioned', why }
+}

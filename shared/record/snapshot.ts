@@ -1,0 +1,92 @@
+import { z } from 'zod'
+import { CASE_KINDS } from '../schemas/case-kinds'
+import { DEFROST_KINDS, defrostScheduleSchema, INSTRUMENT_KINDS, ON_LOSS, PAPERS, PRESSURE_UNITS, quietHoursSchema, STAGES, TEMPERATURE_UNITS } from '../schemas/equipment'
+import { handPositionSchema, POINT_KINDS } from '../schemas/point-kinds'
+import { tag, uuid } from './kinds/common'
+
+const text = z.string().max(400)
+
+export const snapshotPointSchema = z.object({
+  tag,
+  kind: z.enum(POINT_KINDS),
+  name: text,
+  address: text,
+  place: text,
+  means: text,
+  guards: z.array(text).max(12),
+  rackId: uuid.nullable(),
+  suctionGroupId: uuid.nullable(),
+  circuitId: uuid.nullable(),
+  caseIds: z.array(uuid).max(200),
+  drives: tag.nullable(),
+  ratedA: z.number().nullable(),
+  capacityKw: z.number().nullable(),
+  minOffMin: z.number().nullable(),
+  hand: handPositionSchema.nullable(),
+  onLoss: z.enum(ON_LOSS),
+  throughOff: z.boolean(),
+}).strict()
+
+export const snapshotCaseSchema = z.object({
+  id: uuid,
+  name: text,
+  kind: z.enum(CASE_KINDS),
+  foodClass: text,
+  usualC: z.number(),
+  limit: z.object({ value: z.number(), unit: z.enum(TEMPERATURE_UNITS) }).strict(),
+  stricter: z.boolean(), // the site's own limit, stricter than the rulebook's
+  tauHours: z.number().positive(),
+  tauIsOwn: z.boolean(), // false: the kind's default, an estimate
+  runsAlone: z.boolean(),
+  circuitId: uuid.nullable(),
+}).strict()
+
+/**
+ * The equipment as it stood when the outage was opened: the record needs nothing else to be read.
+ * Temperatures in °C unless a unit stands beside them, pressures in psig, times in minutes.
+ */
+export const snapshotSchema = z.object({
+  site: z.object({
+    id: uuid,
+    code: text,
+    name: text,
+    address: text,
+    timeZone: text,
+    temperatureUnit: z.enum(TEMPERATURE_UNITS),
+    pressureUnit: z.enum(PRESSURE_UNITS),
+    altitudeM: z.number(),
+    intervalMinutes: z.number().int().positive(),
+    paper: z.enum(PAPERS),
+    contactName: text,
+    contactPhone: text,
+    quietHours: z.array(quietHoursSchema).max(20),
+  }).strict(),
+  controller: z.object({ id: uuid, name: text, place: text, panelVolts: z.number().nullable() }).strict(),
+  rulebook: z.object({ id: text, version: text, name: text }).strict(),
+  racks: z.array(z.object({ id: uuid, name: text, refrigerant: text, highCutOutPsig: z.number().nullable() }).strict()).max(50),
+  suctionGroups: z.array(z.object({
+    id: uuid,
+    rackId: uuid,
+    name: text,
+    stage: z.enum(STAGES),
+    targetSuctionPsig: z.number().nullable(),
+    lowCutOutPsig: z.number().nullable(),
+  }).strict()).max(100),
+  circuits: z.array(z.object({
+    id: uuid,
+    rackId: uuid,
+    suctionGroupId: uuid.nullable(),
+    name: text,
+    defrostKind: z.enum(DEFROST_KINDS),
+    defrosts: defrostScheduleSchema.nullable(),
+    durationMin: z.number(),
+    dripMin: z.number(),
+  }).strict()).max(400),
+  cases: z.array(snapshotCaseSchema).max(400),
+  points: z.array(snapshotPointSchema).max(2000),
+  instruments: z.array(z.object({ id: uuid, name: text, kind: z.enum(INSTRUMENT_KINDS), accuracyC: z.number(), lastCheckOn: text.nullable() }).strict()).max(100),
+}).strict()
+
+export type Snapshot = z.output<typeof snapshotSchema>
+export type SnapshotPoint = z.output<typeof snapshotPointSchema>
+export type SnapshotCase = z.output<typeof snapshotCaseSchema>

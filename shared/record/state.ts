@@ -1,0 +1,174 @@
+import type { Role } from '../schemas/people'
+import type { HandPosition, PointKind } from '../schemas/point-kinds'
+import type { CheckId } from './checks'
+import type { SeenInAuto, SeenInHand } from './kinds/hand'
+import type { Act } from './kinds/rounds'
+import type { Verdict } from './kinds/server'
+import type { Phase } from './phases'
+import type { Plan } from './plan'
+import type { Snapshot } from './snapshot'
+
+/** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
+export const FOLD_VERSION = 1
+
+/** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
+export interface Mark { by: string, at: number, seq: number, entry: string }
+
+export interface Signer { person: string, name: string, role: Role | 'server', deviceName: string, publicKey: string }
+
+/**
+ * auto: the controller has it · hand: a person has it · excused: cannot be put in hand ·
+ * returned: back in auto, proof due · proven: seen to answer the controller
+ */
+export type PointStatus = 'auto' | 'hand' | 'excused' | 'returned' | 'proven'
+
+export interface PointState {
+  tag: string
+  kind: PointKind
+  status: PointStatus
+  /** the position it is held in; null unless in hand */
+  hand: HandPosition | null
+  seen: SeenInHand | SeenInAuto | null
+  value: { number: number, unit: string } | null
+  until: number | null
+  reason: string
+  words: string
+  photos: string[]
+  mark: Mark | null
+  /** a try that did not come out as asked; cleared when it does */
+  tried: { seen: SeenInHand, mark: Mark } | null
+  /** a machine seen stopped: when, Unix ms (rule I5) */
+  stoppedAt: number | null
+  /** an unsettled questioned entry says that it is in hand: it counts as in hand */
+  questionedHand: string | null
+  excuse: { reason: string, measure: string } | null
+  exception: { owner: string, by: number, reason: string, mark: Mark } | null
+  proof: Mark | null
+}
+
+export interface ReadingState {
+  entry: string
+  seq: number
+  round: number
+  /** server-corrected Unix ms */
+  at: number
+  value: number
+  unit: 'F' | 'C'
+  method: 'product' | 'air' | 'infrared'
+  instrumentId: string | null
+  by: string
+  questioned: boolean
+  /** the entry that corrected it */
+  correctedBy: string | null
+  /** corrected away: judged no more, still shown */
+  struck: boolean
+  words: string
+}
+
+export interface ActState { act: Act, product: string, quantity: number | null, unit: string, place: string, words: string, photos: string[], mark: Mark }
+
+export interface CaseState {
+  id: string
+  touched: boolean
+  readings: ReadingState[]
+  verdict: { verdict: Verdict, deadline: number | null, minutesAbove: number, clause: string, source: string, act: string | null, why: string[], at: number, seq: number } | null
+  /** seq of the verdict that demands an act not yet signed */
+  openAct: number | null
+  acts: ActState[]
+  decidedOtherwise: { reason: string, mark: Mark } | null
+  acceptedWarm: boolean
+  /** emptied, moved or discarded: nothing left to judge */
+  empty: boolean
+}
+
+export interface PressureState { round: number, at: number, suctionGroupId: string, suctionPsig: number, dischargePsig: number | null, by: string, seq: number, questioned: boolean }
+
+export interface DarkInterval { from: number, to: number | null, how: 'gate' | 'fact', words: string, /** what the gate would have missed */ breach: string[], mark: Mark }
+
+export interface Question { entry: string, about: string | null, words: string, mark: Mark, answer: { words: string, mark: Mark } | null }
+
+export interface Questioned { entry: string, seq: number, kind: string, why: string[], tag: string | null, settled: { words: string, mark: Mark } | null }
+
+export interface OutageState {
+  foldVersion: number
+  id: string
+  code: string | null
+  size: number
+  phase: Phase
+  planned: boolean
+  snapshot: Snapshot
+  opened: Mark | null
+  cause: string
+  plan: Plan
+  /** who wrote or changed the plan, person ids */
+  authors: string[]
+  planSubmitted: Mark | null
+  planReturned: { reason: string, mark: Mark } | null
+  approved: Mark | null
+  inHandBegun: Mark | null
+  checks: Partial<Record<CheckId, { outcome: 'done' | 'needless', words: string, photos: string[], mark: Mark }>>
+  points: Record<string, PointState>
+  cases: Record<string, CaseState>
+  pressures: PressureState[]
+  darks: DarkInterval[]
+  turnedBack: { reason: string, mark: Mark } | null
+  steps: Record<string, { begun: Mark | null, done: Mark | null }>
+  /** when the last control came back, Unix ms */
+  backAt: number | null
+  handBackClosed: Mark | null
+  defrostsWatched: { circuitId: string, words: string, mark: Mark }[]
+  notes: { words: string, photos: string[], mark: Mark }[]
+  corrections: { corrects: string, reason: string, mark: Mark }[]
+  questions: Question[]
+  questioned: Questioned[]
+  calledOff: { reason: string, mark: Mark } | null
+  submitted: { drawing: string, words: string, mark: Mark } | null
+  submitters: string[]
+  returned: { reason: string, mark: Mark }[]
+  sealed: { drawing: string, size: number, root: string, words: string, mark: Mark } | null
+  signers: Record<string, Signer>
+  /** hashes of photos and drawings that entries name */
+  files: string[]
+  refusals: { device: string, n: number, id: string, reason: string, seq: number }[]
+  /** each device's own chain here: its count and the hash of its last entry, refused ones included */
+  chain: Record<string, { n: number, hash: string }>
+  /** Largest |skew| seen, ms, and whose device */
+  largestSkew: { ms: number, device: string } | null
+}
+
+const NO_ID = '00000000-0000-0000-0000-000000000000'
+
+export const EMPTY_PLAN: Plan = {
+  startsAt: null,
+  workKind: { id: null, name: '-' },
+  steps: [],
+  rollBack: [],
+  duration: { totalMean: 0, darkMean: 0, dark19in20: 0, rollBack19in20: 0 },
+  points: [],
+  order: [],
+  cases: [],
+  census: [],
+  measures: [],
+  watchDefrosts: false,
+  note: '',
+}
+
+const EMPTY_SNAPSHOT: Snapshot = {
+  site: { id: NO_ID, code: '', name: '', address: '', timeZone: 'UTC', temperatureUnit: 'C', pressureUnit: 'psig', altitudeM: 0, intervalMinutes: 10, paper: 'A4', contactName: '', contactPhone: '', quietHours: [] },
+  controller: { id: NO_ID, name: '', place: '', panelVolts: null },
+  rulebook: { id: '', version: '', name: '' },
+  racks: [], suctionGroups: [], circuits: [], cases: [], points: [], instruments: [],
+}
+
+/** The state of a log without entries. */
+export function emptyState(id: string): OutageState {
+  return {
+    foldVersion: FOLD_VERSION, id, code: null, size: 0, phase: 'plan', planned: true,
+    snapshot: structuredClone(EMPTY_SNAPSHOT), opened: null, cause: '', plan: structuredClone(EMPTY_PLAN),
+    authors: [], planSubmitted: null, planReturned: null, approved: null, inHandBegun: null,
+    checks: {}, points: {}, cases: {}, pressures: [], darks: [], turnedBack: null, steps: {}, backAt: null,
+    handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
+    calledOff: null, submitted: null, submitters: [], returned: [], sealed: null, signers: {}, files: [],
+    refusals: [], chain: {}, largestSkew: null,
+  }
+}

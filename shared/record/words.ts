@@ -1,0 +1,62 @@
+import { handWords } from '../schemas/point-kinds'
+import { checkById } from './checks'
+import type { AnyEntry, Entry } from './entry'
+import type { EntryKind } from './kinds'
+import { ACT_WORDS } from './kinds/rounds'
+import { VERDICT_WORDS } from './kinds/server'
+import { caseName, groupName, pointName, SEEN_WORDS } from './select'
+import type { OutageState } from './state'
+
+/** An entry told in words: what was done, and what was seen. */
+export interface Told { did: string, seen: string }
+
+const tell = (did: string, seen = ''): Told => ({ did, seen })
+const join = (...parts: (string | null | undefined | false)[]) => parts.filter(Boolean).join(' · ')
+const point = (state: OutageState, tag: string) => `${tag} ${pointName(state, tag)}`.trim()
+const AUTO_WORDS = { 'answers': 'seen to answer', 'not-called': 'not called for: proof due', 'no-answer': 'does not answer: proof due' }
+
+/** Every kind in words: one way to say a thing on screens, in the PDF and in the CSV. */
+const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } = {
+  'signer-named': (_state, { body }) => tell(`Signer named: ${body.name}, ${body.role}`, `key on ${body.deviceName}`),
+  'outage-numbered': (_state, { body }) => tell(`Numbered ${body.code}`),
+  'verdict-changed': (state, { body }) => tell(`${caseName(state, body.caseId)} is ${VERDICT_WORDS[body.verdict]}`, join(body.clause, body.minutesAbove > 0 && `${Math.round(body.minutesAbove)} min above`)),
+  'entry-refused': (_state, { body }) => tell('An entry was refused', body.reason),
+  'outage-opened': (_state, { body }) => tell(body.planned ? `Outage opened: ${body.plan.workKind.name}` : 'Unplanned outage opened', join(body.cause, `${body.snapshot.points.length} points, ${body.snapshot.cases.length} cases`)),
+  'plan-changed': (_state, { body }) => tell('Plan changed', join(body.note, `${body.plan.points.length} points`)),
+  'plan-submitted': (_state, { body }) => tell('Plan sent for approval', body.note),
+  'plan-approved': (_state, { body }) => tell('Plan approved', body.note),
+  'plan-returned': (_state, { body }) => tell('Plan returned', body.reason),
+  'in-hand-begun': () => tell('Putting points in hand begun'),
+  'called-off': (_state, { body }) => tell('Called off', body.reason),
+  'check-signed': (_state, { body }) => tell(checkById(body.check).ask, join(body.outcome === 'needless' && 'not needed', body.words)),
+  'point-in-hand': (state, { body }) => tell(`${point(state, body.tag)}, put ${handWords(body.hand)} by hand`, join(SEEN_WORDS[body.seen].toLowerCase(), body.value && `${body.value.number} ${body.value.unit}`, body.reason, body.words)),
+  'point-excused': (state, { body }) => tell(`${point(state, body.tag)}, excused`, join(body.reason, body.measure)),
+  'point-in-auto': (state, { body }) => tell(`${point(state, body.tag)}, back in auto`, join(AUTO_WORDS[body.seen], body.words)),
+  'point-proven': (state, { body }) => tell(`${point(state, body.tag)}, proven`, body.words),
+  'left-in-exception': (_state, { body }) => tell(`Left by exception: ${body.points.map(left => left.tag).join(', ')}`, body.points.map(left => `${left.owner}: ${left.reason}`).join('; ')),
+  'hand-back-closed': (_state, { body }) => tell('Hand back closed', body.words),
+  'defrost-watched': (state, { body }) => tell(`Defrost watched: ${state.snapshot.circuits.find(circuit => circuit.id === body.circuitId)?.name ?? ''}`, body.words),
+  'reading-taken': (state, { body }) => tell(`${caseName(state, body.caseId)}, round ${body.round}`, join(`${body.value.toFixed(1)} °${body.unit}`, body.method !== 'product' && body.method, body.words)),
+  'pressure-read': (state, { body }) => tell(`${groupName(state, body.suctionGroupId)}, round ${body.round}`, join(`suction ${body.suctionPsig} psig`, body.dischargePsig !== null && `discharge ${body.dischargePsig} psig`, body.words)),
+  'act-signed': (state, { body }) => tell(`${caseName(state, body.caseId)}: ${ACT_WORDS[body.act].toLowerCase()}`, join(body.product, body.quantity !== null && `${body.quantity} ${body.unit}`.trim(), body.place, body.words)),
+  'decided-otherwise': (state, { body }) => tell(`${caseName(state, body.caseId)}: decided otherwise`, body.reason),
+  'went-dark': () => tell('Control taken away'),
+  'control-lost': (_state, { body }) => tell('Control lost', body.words),
+  'step-ticked': (state, { body }) => tell(`${[...state.plan.steps, ...state.plan.rollBack].find(step => step.id === body.step)?.name ?? body.step}: ${body.state}`, body.words),
+  'turned-back': (_state, { body }) => tell('Turned back', body.reason),
+  'control-back': (_state, { body }) => tell('Control is back', body.words),
+  'note-added': (_state, { body }) => tell('Note', body.words),
+  'correction': (_state, { body }) => tell('Correction', join(body.reading === 'struck' ? 'struck' : body.reading && `now ${body.reading.value.toFixed(1)}`, body.reason)),
+  'questioned-settled': (_state, { body }) => tell('Questioned entry dealt with', body.words),
+  'question-asked': (_state, { body }) => tell('Question', body.words),
+  'question-answered': (_state, { body }) => tell('Answer', body.words),
+  'submitted': (_state, { body }) => tell('Record submitted', body.words),
+  'returned': (_state, { body }) => tell('Record returned', body.reason),
+  'sealed': (_state, { body }) => tell('Record countersigned and sealed', join(`${body.size} entries`, body.words)),
+}
+
+/** @param state the folded outage, for names of points, cases and steps */
+export function told(state: OutageState, entry: AnyEntry): Told {
+  const teller = TOLD[entry.kind] as (state: OutageState, entry: Entry<EntryKind>) => Told
+  return teller(state, entry)
+}
