@@ -1,5 +1,5 @@
 import { createHash, randomBytes } from 'node:crypto'
-import { chown, mkdir, rename, rm, stat } from 'node:fs/promises'
+import { chmod, chown, mkdir, rename, rm, stat } from 'node:fs/promises'
 import { dirname, join, resolve } from 'node:path'
 import { readIfThere, readJson, writeWhole } from './files.mjs'
 import { ask, run } from './processes.mjs'
@@ -32,10 +32,11 @@ export async function findPlace(dataDirectory) {
     port: null,
   }
   const directory = resolve(dataDirectory, state.directory)
-  if (!kept && await readIfThere(join(directory, 'PG_VERSION'))) {
+  const made = await readIfThere(join(directory, 'PG_VERSION')) !== null
+  if (made && !kept) {
     throw new Refusal(`There is a database in ${directory} but ${path}, which holds its password, is missing. Put the file back.`)
   }
-  if (kept && !canEnter(dirname(directory), owner)) {
+  if (made && !canEnter(dirname(directory), owner)) {
     throw new Refusal(`PostgreSQL runs as the user ${owner.uid} and cannot enter ${dirname(directory)} any more. Let it pass with: chmod a+x on that directory and those above it.`)
   }
   if (!near) say(`PostgreSQL's user cannot enter ${dataDirectory}: the database is kept in ${directory}`)
@@ -82,7 +83,10 @@ export async function makeCluster({ directory, password, owner }, programs) {
   const draft = `${directory}.new`
   const passwordFile = `${directory}.password`
   await rm(draft, { recursive: true, force: true })
-  await mkdir(draft, { recursive: true, mode: 0o700 })
+  const first = await mkdir(dirname(draft), { recursive: true })
+  // Whatever the umask: PostgreSQL's user passes through these, and nobody looks around in them.
+  for (let above = dirname(draft); first && above.length >= first.length; above = dirname(above)) await chmod(above, 0o711)
+  await mkdir(draft, { mode: 0o700 })
   await writeWhole(passwordFile, `${password}\n`)
   if (owner.uid !== undefined) {
     await chown(draft, owner.uid, owner.gid)
