@@ -1,0 +1,28 @@
+/**
+ * Figures and instants in words, for the reasons that go with a verdict. Instants are in UTC: a screen that
+ * shows site-local time has the deadline itself to show.
+ */
+import type { TemperatureUnit } from '~~/shared/schemas/assess'
+import { MINUTE } from './log'
+
+/** A figure with at most two decimals and a true minus sign. */
+export function figureWords(value: number): string {
+  return String(Number(value.toFixed(2)) + 0).replace('-', '−')
+}
+
+export function temperatureWords(value: number, unit: TemperatureUnit): string {
+  return `${figureWords(value)} °${unit}`
+}
+
+/** A duration in minutes, from ms. */
+export function minutesWords(ms: number): string {
+  const minutes = figureWords(ms / MINUTE)
+  return minutes === '1' ? '1 minute' : `${minutes} minutes`
+}
+
+/** An instant to the second, or to the minute when it is a whole one. */
+export function instantWords(ms: number): string {
+  const text = new Date(ms).toISOString()
+  const end = ms % MINUTE === 0 ? 16 : 19
+  return `${text.slice(0, 10)} ${text.slice(11, end)} UTC`
+}
