@@ -19,12 +19,13 @@ const PASSING = /shared memory block|lock file .* already exists|Address already
 /**
  * Starts a PostgreSQL of our own on the loopback, or takes over the one that a killed start left running.
  * @param {string} dataDirectory absolute, exists
- * @param {{ settings?: Record<string, string>, onLost?: (words: string) => void }} [options]
- *   settings of the server; onLost: called when it ends without being asked to
+ * @param {{ settings?: Record<string, string>, beforeStart?: (directory: string) => void, onLost?: (words: string) => void }} [options]
+ *   settings of the server; beforeStart: told where the cluster lies; onLost: called when it ends without being asked to
  * @returns {Promise<{ urlOf: (database: string) => string }>} it is stopped by `closeAll`
  */
-export async function startPostgres(dataDirectory, { settings = {}, onLost = () => {} } = {}) {
+export async function startPostgres(dataDirectory, { settings = {}, beforeStart = () => {}, onLost = () => {} } = {}) {
   const place = await findPlace(dataDirectory)
+  beforeStart(place.directory)
   const log = join(dataDirectory, 'postgres.log')
   const programs = await needServerPrograms((await readIfThere(join(place.directory, 'PG_VERSION')))?.trim())
   await makeCluster(place, programs)
@@ -51,6 +52,15 @@ export async function makeDatabase(adminUrl, name) {
     const found = await sql`select 1 from pg_database where datname = ${name}`
     if (found.length === 0) await sql.unsafe(`create database "${name}"`)
   })
+}
+
+/**
+ * Takes a database away, with whatever connections it still has.
+ * @param {string} adminUrl of another database of the same server
+ * @param {string} name letters, digits and underscores
+ */
+export async function dropDatabase(adminUrl, name) {
+  await withClient(adminUrl, sql => sql.unsafe(`drop database if exists "${name}" with (force)`))
 }
 
 /** Starts the server and waits until it answers, trying again where what stands in the way will pass. */

@@ -14,18 +14,19 @@ const LEASH = fileURLToPath(new URL('leash.cjs', import.meta.url))
 /**
  * Starts a server program of Node, showing what it says and keeping its last words.
  * @param {string[]} args of node
- * @param {{ cwd: string, env: NodeJS.ProcessEnv, leash?: boolean }} options
- *   leash: the server ends by itself when this process is killed; not for programs that use the channel themselves
+ * @param {{ cwd: string, env: NodeJS.ProcessEnv, leash?: boolean, quiet?: boolean }} options
+ *   leash: the server ends by itself when this process is killed; not for programs that use the channel themselves.
+ *   quiet: keep the words without showing them
  * @returns {Running}
  */
-export function startServer(args, { cwd, env, leash = true }) {
+export function startServer(args, { cwd, env, leash = true, quiet = false }) {
   // In a session of its own: Ctrl-C in the terminal reaches this process alone, which stops the server in its turn.
   const child = spawn(process.execPath, [...leash ? ['-r', LEASH] : [], ...args], {
     cwd, env, detached: true, stdio: ['ignore', 'pipe', 'pipe', ...leash ? ['ipc'] : []],
   })
   let words = []
   const keep = (chunk, out) => {
-    out.write(chunk)
+    if (!quiet) out.write(chunk)
     words = [...words, ...chunk.toString().split('\n')].filter(line => line.trim()).slice(-20)
   }
   child.stdout.on('data', chunk => keep(chunk, process.stdout))
