@@ -27,9 +27,11 @@ export function blocksOf(nodes: readonly Placed[], direction: OrderDirection): B
     members,
     contract(graph) {
       const contracted = new Graph(members.length)
-      graph.next.forEach((followers, node) => followers.forEach((follower) => {
-        if (of[node] !== of[follower]) contracted.add(of[node]!, of[follower]!)
-      }))
+      for (let node = 0; node < graph.size; node += 1) {
+        for (const follower of graph.after(node)) {
+          if (of[node] !== of[follower]) contracted.add(of[node]!, of[follower]!)
+        }
+      }
       return contracted
     },
   }

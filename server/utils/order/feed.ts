@@ -12,6 +12,7 @@ export interface Circuit {
   groups: ReadonlySet<string> | null
   valves: Placed[]
   fans: Placed[]
+  fansOn: boolean
 }
 
 export function isLiquidValve(kind: PointKind): boolean {
@@ -25,16 +26,18 @@ export function circuitsOf(placed: readonly Placed[]): Circuit[] {
   for (const place of placed) {
     const { point: { kind, circuit: name }, rack, groups } = place
     if (name !== undefined) {
-      const circuit = named.get(name) ?? { name, rack, groups: null, valves: [], fans: [] }
+      const circuit = named.get(name) ?? { name, rack, groups: null, valves: [], fans: [], fansOn: true }
       named.set(name, circuit)
       if (groups !== null) circuit.groups = new Set([...(circuit.groups ?? []), ...groups])
       if (isLiquidValve(kind)) circuit.valves.push(place)
       if (kind === 'evaporator-fan') circuit.fans.push(place)
     } else if (isLiquidValve(kind)) {
-      alone.push({ name: null, rack, groups, valves: [place], fans: [] })
+      alone.push({ name: null, rack, groups, valves: [place], fans: [], fansOn: true })
     }
   }
-  return [...named.values(), ...alone]
+  const circuits = [...named.values(), ...alone]
+  for (const circuit of circuits) circuit.fansOn = fansRun(circuit, placed)
+  return circuits
 }
 
 /** A rack none of whose points belongs to a circuit: its cases are on other controllers. */
@@ -46,13 +49,12 @@ export function countsAsFed(compressor: Placed, circuits: readonly Circuit[]): b
 export function feeding(
   compressor: Placed,
   circuits: readonly Circuit[],
-  placed: readonly Placed[],
   isOpen: (valve: Placed) => boolean,
 ): Circuit[] {
   return circuits.filter(circuit => circuit.rack === compressor.rack
     && sharesGroup(circuit.groups, compressor.groups)
-    && circuit.valves.every(isOpen)
-    && fansRun(circuit, placed))
+    && circuit.fansOn
+    && circuit.valves.every(isOpen))
 }
 
 /** What is taken for granted about a circuit because the controller has no point for it. */

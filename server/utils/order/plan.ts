@@ -31,7 +31,7 @@ export function planOrder(input: PlanOrderInput): PlannedOrder {
   if ('cycle' in arranged) throw new RangeError(ringWords(arranged.cycle))
   const because = reasons(input, placed, isRefused)
   return {
-    order: arranged.order.map(({ place, after }) => ({ tag: place.point.tag, after, because: because(place) })),
+    order: arranged.order().map(({ place, after }) => ({ tag: place.point.tag, after, because: because(place) })),
     refusals: input.points.flatMap(({ tag }) => refusals.get(tag) ?? []),
   }
 }

@@ -44,16 +44,18 @@ function refuseGoingInHand(placed: readonly Placed[], externalHeatRejection: boo
   // A refusal can take the ground from under another point, so look again until nothing changes.
   const standing = (place: Placed) => place.active && !refusals.has(place.point.tag)
   const compressors = placed.filter(({ point }) => point.kind === 'compressor')
+  const condenserFans = placed.filter(({ point }) => point.kind === 'condenser-fan')
+  const liquidValves = placed.filter(({ point }) => isLiquidValve(point.kind))
   let before = -1
   while (before !== refusals.size) {
     before = refusals.size
     for (const compressor of compressors.filter(standing)) {
-      const fans = placed.filter(({ point, rack }) => point.kind === 'condenser-fan' && rack === compressor.rack)
+      const fans = condenserFans.filter(({ rack }) => rack === compressor.rack)
       if (!externalHeatRejection && !fans.some(fan => fan.active)) {
         add(compressor, 'I1', fans.length === 0
           ? `${rackWords(compressor)} has no condenser fan point, so nothing is known to reject its heat.`
           : `No condenser fan of ${rackWords(compressor, true)} will be on.`)
-      } else if (!countsAsFed(compressor, circuits) && feeding(compressor, circuits, placed, standing).length === 0) {
+      } else if (!countsAsFed(compressor, circuits) && feeding(compressor, circuits, standing).length === 0) {
         add(compressor, 'I1', `No circuit of ${groupWords(compressor)} will have its liquid valves open and its evaporator fans on.`)
       }
     }
@@ -62,7 +64,7 @@ function refuseGoingInHand(placed: readonly Placed[], externalHeatRejection: boo
         add(compressor, 'I12', 'A low-stage compressor is on only while a medium-stage one is, and none will be.')
       }
     }
-    for (const valve of placed.filter(place => isLiquidValve(place.point.kind) && standing(place))) {
+    for (const valve of liquidValves.filter(standing)) {
       if (!compressors.some(compressor => standing(compressor) && sharesScope(valve, compressor))) {
         add(valve, 'I1', `No compressor of ${groupWords(valve)} will be on, so its liquid valves stay closed.`)
       }

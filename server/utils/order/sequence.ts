@@ -7,14 +7,15 @@ import { blocksOf, type Blocks } from './blocks'
 import { compareNaturally } from './compare'
 import { Graph } from './graph'
 import type { Placed } from './layout'
-import { comparePlaces, firstMediumFirst, lastMediumFirst, placeOf, stageBinds, stageDemands, stageOf, stageRank } from './stages'
+import { comparePlaces, firstMediumFirst, isAsFound, lastMediumFirst, placeOf, stageBinds, stagesDemand, stageOf, stageRank } from './stages'
 
 export interface Arranged {
   place: Placed
   after: string[]
 }
 
-export type Arrangement = { order: Arranged[] } | { cycle: string[] }
+/** The order is spelled out on demand: who only asks for a ring needs none of it. */
+export type Arrangement = { order: () => Arranged[] } | { cycle: string[] }
 
 /** Places the points that are neither refused nor staying in hand. */
 export function arrange(input: PlanOrderInput, placed: readonly Placed[], isRefused: (tag: string) => boolean): Arrangement {
@@ -31,11 +32,11 @@ export function arrange(input: PlanOrderInput, placed: readonly Placed[], isRefu
 
 /** The sequence of the trade, between every two points that it binds. */
 function addStages(points: Graph, nodes: readonly Placed[], direction: OrderDirection): void {
+  const stages = nodes.map(node => stageOf(node, direction))
   nodes.forEach((first, from) => {
     if (isAsFound(first)) return
     nodes.forEach((then, to) => {
-      if (isAsFound(then) && stageOf(then, direction) !== 'alarm') return
-      if (stageDemands(first, then, direction) && stageBinds(first, then, direction)) points.add(from, to)
+      if (stagesDemand(stages[from]!, stages[to]!, then, direction) && (stages[to] === 'alarm' || stageBinds(first, then))) points.add(from, to)
     })
   })
 }
@@ -102,12 +103,12 @@ function addDrivesFirst(points: Graph, blocks: Blocks, nodes: readonly Placed[],
     stageOf(node, direction) === 'machine' && !isAsFound(node) ? [{ node, index, block: blocks.of[index]! }] : [])
   const rules = new Graph(blocks.members.length)
   for (const first of machines) {
-    for (const then of machines) if (points.next[first.index]!.has(then.index)) rules.add(first.block, then.block)
+    for (const then of machines) if (points.has(first.index, then.index)) rules.add(first.block, then.block)
   }
   const prefer = (isFirst: (node: Placed) => boolean, isThen: (node: Placed) => boolean) => {
     for (const first of machines.filter(({ node }) => isFirst(node))) {
       for (const then of machines.filter(({ node }) => isThen(node))) {
-        if (!stageBinds(first.node, then.node, direction) || rules.reaches(then.block, first.block)) continue
+        if (!stageBinds(first.node, then.node) || rules.reaches(then.block, first.block)) continue
         rules.add(first.block, then.block)
         points.add(first.index, then.index)
       }
@@ -123,14 +124,10 @@ function isOnDrive({ point, driven }: Placed): boolean {
   return driven || point.kind === 'drive'
 }
 
-function isAsFound({ active, atRest }: Placed): boolean {
-  return !active && !atRest
-}
-
 /** Sorts block by block, so that nothing comes between a drive and its machine. */
 function sortBlocks(points: Graph, blocks: Blocks, nodes: readonly Placed[], direction: OrderDirection): Arrangement {
   const against = blocks.members.find(members => members.some((node, at) =>
-    members.slice(at + 1).some(later => points.before[node]!.has(later))))
+    members.slice(at + 1).some(later => points.has(later, node))))
   if (against) return { cycle: against.map(node => nodes[node]!.point.tag) }
 
   const heads = blocks.members.map(members => nodes[members.at(direction === 'in-hand' ? -1 : 0)!]!)
@@ -146,9 +143,13 @@ function sortBlocks(points: Graph, blocks: Blocks, nodes: readonly Placed[], dir
     return { cycle: sorted.cycle.flatMap(block => blocks.members[block]!.map(node => nodes[node]!.point.tag)) }
   }
   const order = sorted.order.flatMap(block => blocks.members[block]!)
+  return { order: () => spellOut(points, blocks, nodes, order) }
+}
+
+function spellOut(points: Graph, blocks: Blocks, nodes: readonly Placed[], order: readonly number[]): Arranged[] {
   for (const members of blocks.members) {
     members.slice(1).forEach((node, at) => points.add(members[at]!, node))
   }
   const nearest = points.nearestBefore(order)
-  return { order: order.map(node => ({ place: nodes[node]!, after: nearest[node]!.map(earlier => nodes[earlier]!.point.tag) })) }
+  return order.map(node => ({ place: nodes[node]!, after: nearest[node]!.map(earlier => nodes[earlier]!.point.tag) }))
 }

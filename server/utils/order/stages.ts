@@ -52,23 +52,25 @@ export function stageRank(stage: Stage, direction: OrderDirection): number {
 }
 
 /**
- * Whether the sequence has `first` before `then`, given that they share a scope.
- * A machine asked off has no place among the other stages but two: before the heat rejection is
+ * Whether the sequence has a point of stage `from` before the point `then` of stage `to`, given
+ * that they share a scope and the first isn't left as found. A point left as found may come
+ * anywhere, but for an alarm, which closes the hand back all the same. A machine asked off has no place among the other stages but two: before the heat rejection is
  * touched, and before the valves of its group are closed.
  */
-export function stageDemands(first: Placed, then: Placed, direction: OrderDirection): boolean {
-  const from = stageOf(first, direction)
-  const to = stageOf(then, direction)
+export function stagesDemand(from: Stage, to: Stage, then: Placed, direction: OrderDirection): boolean {
   if (to === 'stopped-machine') return false
+  if (to !== 'alarm' && isAsFound(then)) return false
   if (from === 'stopped-machine') {
     return to === 'heat-rejection' || (isValve(then.point.kind) && then.atRest)
   }
   return stageRank(from, direction) < stageRank(to, direction)
 }
 
-/** Heat rejection is the whole rack's, whatever group its points name; alarms close the hand back of all. */
-export function stageBinds(first: Placed, then: Placed, direction: OrderDirection): boolean {
-  if (stageOf(then, direction) === 'alarm') return true
+/**
+ * Whether the sequence binds the two at all. Heat rejection is the whole rack's, whatever group its
+ * points name. (Alarms close the hand back of everything; the caller sees to that.)
+ */
+export function stageBinds(first: Placed, then: Placed): boolean {
   if (sharesScope(first, then)) return true
   return first.rack === then.rack && (isHeatRejection(first) || isHeatRejection(then))
 }
@@ -88,6 +90,10 @@ export function lastMediumFirst(medium: readonly Placed[]): Placed[] {
 
 export function comparePlaces(one: Placed, other: Placed): number {
   return compareNaturally(placeOf(one), placeOf(other)) || compareNaturally(one.point.tag, other.point.tag)
+}
+
+export function isAsFound({ active, atRest }: Placed): boolean {
+  return !active && !atRest
 }
 
 /** A drive is dealt with where its machine is. */

@@ -36,11 +36,12 @@ export function reasons(input: PlanOrderInput, placed: readonly Placed[], isRefu
   return (place) => {
     const said = [whyHere(place, input), ...machineWords(place, input)]
     if (input.direction === 'in-hand' && place.active) {
-      if (place.point.kind === 'compressor') said.push(...fedWords(place, circuits, placed, isOpen, input.externalHeatRejection === true))
+      if (place.point.kind === 'compressor') said.push(...fedWords(place, circuits, isOpen, input.externalHeatRejection === true))
       if (place.point.kind === 'evaporator-fan' || isLiquidValve(place.point.kind)) {
         said.push(...circuits.filter(({ name }) => name !== null && name === place.point.circuit).flatMap(assumptions))
       }
     }
+    if (place.point.after?.length) said.push(`By its links it follows ${place.point.after.join(', ')}.`)
     return shorten(said)
   }
 }
@@ -72,14 +73,13 @@ function machineWords(place: Placed, { direction }: PlanOrderInput): string[] {
 function fedWords(
   compressor: Placed,
   circuits: readonly Circuit[],
-  placed: readonly Placed[],
   isOpen: (valve: Placed) => boolean,
   externalHeatRejection: boolean,
 ): string[] {
   const said: string[] = []
   if (externalHeatRejection) said.push('Heat rejection elsewhere stands for the condenser fans.')
   if (countsAsFed(compressor, circuits)) said.push('Its rack has no circuit points here: it counts as fed.')
-  else said.push(...feeding(compressor, circuits, placed, isOpen).flatMap(assumptions))
+  else said.push(...feeding(compressor, circuits, isOpen).flatMap(assumptions))
   return said
 }
 

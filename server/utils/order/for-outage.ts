@@ -1,0 +1,81 @@
+/** The order engine asked about a real outage: its snapshot, plan and present positions. */
+import type { Plan } from '../../../shared/record/plan'
+import type { OutageState } from '../../../shared/record/state'
+import type { Snapshot, SnapshotPoint } from '../../../shared/record/snapshot'
+import type { OrderPoint } from '../../../shared/schemas/plan-order'
+import { handWords } from '../../../shared/schemas/point-kinds'
+import type { HandPosition } from '../../../shared/schemas/point-kinds'
+import type { OrderStep, PlannedOrder } from './plan'
+import { planOrder } from './plan'
+import { proposeHand } from './propose'
+
+const PLACE_MAX = 200
+
+/** A point of the equipment as the order engine takes it. */
+export function orderPoint(snapshot: Snapshot, point: SnapshotPoint, hand: HandPosition): OrderPoint {
+  const group = snapshot.suctionGroups.find(item => item.id === point.suctionGroupId)
+  return {
+    tag: point.tag,
+    kind: point.kind,
+    hand,
+    ...(point.rackId ? { rack: point.rackId } : {}),
+    ...(point.suctionGroupId ? { suctionGroup: point.suctionGroupId } : {}),
+    ...(group ? { stage: group.stage } : {}),
+    ...(point.circuitId ? { circuit: point.circuitId } : {}),
+    ...(point.place ? { place: point.place.slice(0, PLACE_MAX) } : {}),
+    ...(point.drives ? { drives: point.drives } : {}),
+    // Without a guard named that works in hand, a compressor may not be held on (I9).
+    ...(point.kind === 'compressor' ? { guardInSeries: point.guards.length > 0 } : {}),
+  }
+}
+
+/** `drives` may name a point that this outage leaves alone; it then says nothing here. */
+function withinList(points: OrderPoint[]): OrderPoint[] {
+  const tags = new Set(points.map(point => point.tag))
+  return points.map(({ drives, ...point }) => drives && tags.has(drives) ? { ...point, drives } : point)
+}
+
+/** Order in which the points of a plan go in hand, and those that may not. */
+export function inHandOrder(snapshot: Snapshot, points: Plan['points']): PlannedOrder {
+  const known = points.flatMap((planned) => {
+    const point = snapshot.points.find(item => item.tag === planned.tag)
+    return point ? [orderPoint(snapshot, point, planned.hand)] : []
+  })
+  return planOrder({ direction: 'in-hand', points: withinList(known) })
+}
+
+/** What the rules say against a plan, in words; also where its order is not the one that the rules give. */
+export function planRefusals(state: OutageState): string[] {
+  const { order, refusals } = inHandOrder(state.snapshot, state.plan.points)
+  const said = refusals.map(refusal => `${refusal.tag}: ${refusal.because} (${refusal.rule})`)
+  const planned = new Map(state.plan.order.map(line => [line.tag, new Set(line.after)]))
+  const skipped = order.filter(step => step.after.some(tag => planned.get(step.tag)?.has(tag) === false)).map(step => step.tag)
+  return skipped.length > 0 ? [...said, `the order leaves out what must come before ${skipped.join(', ')}`] : said
+}
+
+/** Order in which the points in hand go back to auto, from where they stand now. */
+export function handBackOrder(state: OutageState): OrderStep[] {
+  const held = state.snapshot.points.flatMap((point) => {
+    const now = state.points[point.tag]
+    if (now?.status !== 'hand' || now.hand === null) return []
+    return [{ ...orderPoint(state.snapshot, point, now.hand), ...(now.exception ? { stays: true } : {}) }]
+  })
+  return planOrder({ direction: 'hand-back', points: withinList(held) }).order
+}
+
+/** Tags that go back to auto before this one. */
+export function handBackAfter(state: OutageState, tag: string): string[] {
+  return handBackOrder(state).find(step => step.tag === tag)?.after ?? []
+}
+
+/** Hand positions that the product proposes for all points of a controller. */
+export function proposePoints(snapshot: Snapshot): Plan['points'] {
+  const groupsOn = new Set(snapshot.points
+    .filter(point => point.kind === 'compressor' && point.hand !== null && handWords(point.hand) === 'on')
+    .map(point => point.suctionGroupId))
+  return snapshot.points.map((point) => {
+    const group = point.suctionGroupId ?? snapshot.circuits.find(circuit => circuit.id === point.circuitId)?.suctionGroupId ?? null
+    const expansionValveInCircuit = point.circuitId !== null && snapshot.points.some(other => other.kind === 'expansion-valve' && other.circuitId === point.circuitId)
+    return { tag: point.tag, hand: proposeHand({ kind: point.kind, hand: point.hand }, { compressorOn: group !== null && groupsOn.has(group), expansionValveInCircuit }), reason: '' }
+  })
+}
