@@ -87,11 +87,14 @@ export const HAND_WORDS_FIXED = ['on', 'off', 'open', 'closed', 'as-found'] as c
 /** Highest output frequency of a drive that is accepted, Hz; far above any compressor's plate. */
 export const MAX_DRIVE_HZ = 400
 
+const upTo = (most: number, unit: string) =>
+  z.number().min(0, `must be at least 0 ${unit}`).max(most, `must be at most ${most} ${unit}`)
+
 /** What a point shall do in hand: a fixed word, or a drive's or valve's fixed speed or opening. */
 export const handPositionSchema = z.union([
   z.enum(HAND_WORDS_FIXED),
-  z.object({ hz: z.number().finite().min(0).max(MAX_DRIVE_HZ) }).strict(),
-  z.object({ percent: z.number().finite().min(0).max(100) }).strict(),
+  z.object({ hz: upTo(MAX_DRIVE_HZ, 'Hz') }).strict(),
+  z.object({ percent: upTo(100, '%') }).strict(),
 ], {
   errorMap: () => ({
     message: 'must be "on", "off", "open", "closed", "as-found", {"hz": 0 to 400} or {"percent": 0 to 100}',

@@ -24,7 +24,7 @@ export function parseOrderInput(body: unknown): Parsed<PlanOrderInput> {
 function tagTwice(points: readonly OrderPoint[]): Fault | null {
   const seen = new Set<string>()
   for (const [index, { tag }] of points.entries()) {
-    if (seen.has(tag)) return refuse(`points.${index}.tag`, `names ${tag}, which stands twice`)
+    if (seen.has(tag)) return refuse(`points[${index}].tag`, `names ${tag}, which stands twice`)
     seen.add(tag)
   }
   return null
@@ -33,9 +33,9 @@ function tagTwice(points: readonly OrderPoint[]): Fault | null {
 function linkToNowhere(points: readonly OrderPoint[]): Fault | null {
   const tags = new Set(points.map(({ tag }) => tag))
   for (const [index, { after, drives }] of points.entries()) {
-    if (drives !== undefined && !tags.has(drives)) return refuse(`points.${index}.drives`, `names ${drives}, and no point has that tag`)
+    if (drives !== undefined && !tags.has(drives)) return refuse(`points[${index}].drives`, `names ${drives}, and no point has that tag`)
     for (const [at, earlier] of (after ?? []).entries()) {
-      if (!tags.has(earlier)) return refuse(`points.${index}.after.${at}`, `names ${earlier}, and no point has that tag`)
+      if (!tags.has(earlier)) return refuse(`points[${index}].after[${at}]`, `names ${earlier}, and no point has that tag`)
     }
   }
   return null
@@ -43,7 +43,7 @@ function linkToNowhere(points: readonly OrderPoint[]): Fault | null {
 
 function circuitTwice(points: readonly OrderPoint[]): Fault | null {
   const twice = circuitOnTwoRacks(points)
-  return twice && refuse(`points.${twice.index}.rack`, `puts circuit ${twice.circuit} on rack ${twice.racks[1]}, and another point on rack ${twice.racks[0]}`)
+  return twice && refuse(`points[${twice.index}].rack`, `puts circuit ${twice.circuit} on rack ${twice.racks[1]}, and another point on rack ${twice.racks[0]}`)
 }
 
 /** Rings of the equipment's own links, whether or not their points are refused. */
