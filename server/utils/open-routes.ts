@@ -1,0 +1,10 @@
+/** API routes that need no session. Every other one answers 401 without a person. */
+export const OPEN_ROUTES: readonly { path: RegExp, why: string }[] = [
+  { path: /^\/api\/auth\//, why: 'next-auth\'s own sign-in' },
+  { path: /^\/api\/health$/, why: 'asked by the start command and by load balancers' },
+  { path: /^\/api\/setup$/, why: 'makes the first administrator; closed once anybody exists' },
+]
+
+export function isOpenRoute(path: string): boolean {
+  return OPEN_ROUTES.some(route => route.path.test(path))
+}

@@ -1,0 +1,94 @@
+import { and, eq } from 'drizzle-orm'
+import { canonicalText, sha256Hex } from '../../../shared/record/canonical'
+import type { AnyEntry, Standing } from '../../../shared/record/entry'
+import { entryBytes, signedEntrySchema } from '../../../shared/record/entry'
+import { isEntryKind, isServerKind, schemaOf } from '../../../shared/record/kinds'
+import { ENTRY_MAX_BYTES } from '../../../shared/record/kinds/common'
+import type { OutageState } from '../../../shared/record/state'
+import { devices, entries, refusals } from '../../database/schema'
+import type { Person } from '../access'
+import type { Queries } from '../database'
+import { firstFault } from '../errors'
+import { verifyBytes } from './keys'
+
+/** What becomes of one pushed entry. */
+export type PushResult
+  = | { id: string, status: Standing, seq: number, receivedAt: string, why: string[] }
+    | { id: string | null, status: 'refused', code: 403 | 409 | 413 | 422, field: string | null, reason: string, /** its place in the device's chain is taken */ recorded: boolean }
+
+export type Refusal = Extract<PushResult, { status: 'refused' }>
+
+/** Where an entry got to: a refusal or an earlier answer, or read, verified and ready to be judged. */
+export type Admitted
+  = | { done: PushResult }
+  /** validly signed, but its body is wrong: refused, and its place in the chain is taken */
+    | { faulty: AnyEntry, refusal: Refusal }
+    | { entry: AnyEntry, signature: string }
+
+export function refuse(id: string | null, code: Refusal['code'], reason: string, field: string | null = null): Refusal {
+  return { id, status: 'refused', code, field, reason, recorded: false }
+}
+
+/** Reads and verifies one pushed item: shape, signer, device, signature, replay, chain, body. */
+export async function admit(db: Queries, person: Person, state: OutageState, item: unknown, at: string): Promise<Admitted> {
+  const parsed = signedEntrySchema.safeParse(item)
+  if (!parsed.success) {
+    const { field, reason } = firstFault(parsed.error)
+    return { done: refuse(idOf(item), 422, reason, field ? `${at}.${field}` : at) }
+  }
+  const entry = (item as { entry: AnyEntry }).entry
+  const { signature } = parsed.data
+  const wrong = (code: Refusal['code'], reason: string, field: string | null = null): Admitted => ({ done: refuse(entry.id, code, reason, field) })
+  if (entry.outage !== state.id) return wrong(422, 'The entry belongs to another outage', `${at}.entry.outage`)
+  if (entry.by !== person.id) return wrong(403, 'An entry is sent by the person who signed it')
+  const text = textOf(entry)
+  if (text === null) return wrong(422, 'The entry has no canonical form', `${at}.entry`)
+  if (text.length > ENTRY_MAX_BYTES) return wrong(413, `An entry takes at most ${ENTRY_MAX_BYTES} bytes`)
+
+  const earlier = await earlierAnswer(db, entry, sha256Hex(text))
+  if (earlier) return { done: earlier }
+
+  const [device] = await db.select().from(devices).where(and(eq(devices.id, entry.device), eq(devices.personId, person.id)))
+  if (!device) return wrong(403, 'This device is not enrolled for you')
+  if (device.revokedAt) return wrong(403, 'This device was revoked')
+  if (!verifyBytes(entryBytes(entry), signature, device.publicKey)) return wrong(422, 'The signature does not fit the entry', `${at}.signature`)
+
+  const chain = state.chain[entry.device]
+  if (entry.n !== (chain?.n ?? 0) + 1) return wrong(409, `This device's entry ${entry.n} cannot come after its entry ${chain?.n ?? 0}`, `${at}.entry.n`)
+  if (entry.prev !== (chain?.hash ?? null)) return wrong(409, 'The entry does not name the hash of the one before it', `${at}.entry.prev`)
+  return checkBody(entry, signature, at)
+}
+
+function checkBody(entry: AnyEntry, signature: string, at: string): Admitted {
+  const faulty = (reason: string, field: string): Admitted => ({ faulty: entry, refusal: { id: entry.id, status: 'refused', code: 422, field, reason, recorded: true } })
+  if (!isEntryKind(entry.kind) || isServerKind(entry.kind)) return faulty(`Nobody signs an entry of the kind "${String(entry.kind)}"`, `${at}.entry.kind`)
+  const schema = schemaOf(entry.kind, entry.v)
+  // A newer version than this server knows waits on the phone: nothing is recorded.
+  if (!schema) return { done: refuse(entry.id, 422, `This server does not know version ${entry.v} of "${entry.kind}" yet`, `${at}.entry.v`) }
+  const body = schema.safeParse(entry.body)
+  if (!body.success) {
+    const { field, reason } = firstFault(body.error)
+    return faulty(reason, `${at}.entry.body${field ? `.${field}` : ''}`)
+  }
+  if (canonicalText(body.data) !== canonicalText(entry.body)) return faulty('The body is not written as its kind lays down (a default left out, or spaces at an end)', `${at}.entry.body`)
+  return { entry, signature }
+}
+
+function textOf(entry: AnyEntry): string | null {
+  try { return canonicalText(entry) } catch { return null }
+}
+
+/** The first answer to the same bytes; 409 where the id came with other bytes. */
+async function earlierAnswer(db: Queries, entry: AnyEntry, hash: string): Promise<PushResult | null> {
+  const other = refuse(entry.id, 409, 'This id was used for another entry')
+  const [row] = await db.select().from(entries).where(eq(entries.id, entry.id))
+  if (row) return row.hash === hash && row.outageId === entry.outage ? { id: row.id, status: row.standing, seq: row.seq, receivedAt: row.receivedAt.toISOString(), why: row.why } : other
+  const [refused] = await db.select().from(refusals).where(eq(refusals.id, entry.id))
+  if (!refused) return null
+  return refused.hash === hash && refused.outageId === entry.outage ? { id: entry.id, status: 'refused', code: 422, field: null, reason: refused.reason, recorded: true } : other
+}
+
+function idOf(item: unknown): string | null {
+  const id = (item as { entry?: { id?: unknown } } | null)?.entry?.id
+  return typeof id === 'string' ? id.slice(0, 64) : null
+}

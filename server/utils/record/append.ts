@@ -1,0 +1,95 @@
+import { eq, sql } from 'drizzle-orm'
+import type { AnyEntry, Entry } from '../../../shared/record/entry'
+import { entryHash } from '../../../shared/record/entry'
+import { judge } from '../../../shared/record/rules'
+import { emptyState, FOLD_VERSION } from '../../../shared/record/state'
+import { controllers, outages, refusals, sites } from '../../database/schema'
+import type { Person } from '../access'
+import { maySeeSite } from '../access'
+import type { Database, Queries } from '../database'
+import { notFound } from '../errors'
+import type { PushResult, Refusal } from './admit'
+import { admit } from './admit'
+import type { Draft } from './draft'
+import { addEntry, addServerEntry, saveProjection } from './draft'
+import { followUp } from './follow'
+import { readState } from './log'
+import { serverSigner } from './server-signer'
+import { surroundingsOf } from './surroundings'
+
+export interface PushAnswer { results: PushResult[], size: number, phase: string, code: string | null }
+
+/**
+ * Takes signed entries into an outage's log, in order, under the lock of its row: each is verified,
+ * judged and stored with the next seq, or refused with a reason. Replays are answered as the first time.
+ * @param items as they came, not yet checked
+ * @param now Unix ms
+ * @throws 404 when the outage, or the site that an opening names, is not the person's to see
+ */
+export async function appendEntries(db: Database, person: Person, outageId: string, items: unknown[], now: number): Promise<PushAnswer> {
+  return db.transaction(async (tx) => {
+    const signer = await serverSigner(tx)
+    const [row] = await tx.select().from(outages).where(eq(outages.id, outageId)).for('update')
+    if (row && !await maySeeSite(person, row.siteId, tx)) notFound('outage')
+    if (!row && !isOpening(items[0])) notFound('outage')
+    const draft: Draft = { db: tx, signer, now, state: row ? await readState(tx, row) : emptyState(outageId) }
+    const before = draft.state.size
+    const results: PushResult[] = []
+    for (const [index, item] of items.entries()) results.push(await appendOne(draft, person, item, `entries[${index}]`))
+    if (draft.state.size > before) {
+      await followUp(draft)
+      await saveProjection(draft)
+    }
+    return { results, size: draft.state.size, phase: draft.state.phase, code: draft.state.code }
+  })
+}
+
+async function appendOne(draft: Draft, person: Person, item: unknown, at: string): Promise<PushResult> {
+  const admitted = await admit(draft.db, person, draft.state, item, at)
+  if ('done' in admitted) return admitted.done
+  if ('faulty' in admitted) return recordRefusal(draft, admitted.faulty, admitted.refusal)
+  const { entry, signature } = admitted
+  const { standing, why } = judge(draft.state, entry, person, await surroundingsOf(draft.db, draft.state, entry))
+  if (standing === 'refused') return recordRefusal(draft, entry, { id: entry.id, status: 'refused', code: 403, field: null, reason: why.join('; '), recorded: true })
+  if (entry.kind === 'outage-opened' && draft.state.opened === null) await openOutage(draft, person, entry)
+  const stored = await addEntry(draft, entry, signature, standing, why)
+  if (entry.kind === 'outage-opened' && standing === 'accepted') await numberOutage(draft, entry.body.snapshot.site.id)
+  return { id: entry.id, status: standing, seq: stored.seq, receivedAt: stored.receivedAt, why }
+}
+
+/** The refusal leaves n, hash and reason in the log, so that the device's chain stays whole. */
+async function recordRefusal(draft: Draft, entry: AnyEntry, refusal: Refusal): Promise<PushResult> {
+  if (draft.state.opened === null) return { ...refusal, recorded: false }
+  const { device, n, id } = entry
+  const hash = entryHash(entry)
+  const stored = await addServerEntry(draft, 'entry-refused', { device, n, id, hash, reason: refusal.reason.slice(0, 1000) })
+  await draft.db.insert(refusals).values({ outageId: entry.outage, deviceId: device, n, id, hash, reason: refusal.reason, seq: stored.seq })
+  return refusal
+}
+
+async function openOutage(draft: Draft, person: Person, entry: Entry<'outage-opened'>): Promise<void> {
+  const { snapshot, plan, planned } = entry.body
+  const [controller] = await draft.db.select().from(controllers).where(eq(controllers.id, snapshot.controller.id))
+  if (!controller || controller.siteId !== snapshot.site.id || !await maySeeSite(person, controller.siteId, draft.db)) notFound('controller')
+  const opened = new Date(draft.now)
+  await draft.db.insert(outages).values({
+    id: entry.outage, code: entry.outage, siteId: snapshot.site.id, controllerId: snapshot.controller.id, planned, workKind: plan.workKind.name,
+    phase: 'plan', state: draft.state, foldVersion: FOLD_VERSION, openedAt: opened, updatedAt: opened,
+  })
+}
+
+/** Gives the outage the next number of its site. */
+async function numberOutage(draft: Draft, siteId: string): Promise<void> {
+  const code = await nextCode(draft.db, siteId)
+  await draft.db.update(outages).set({ code }).where(eq(outages.id, draft.state.id))
+  await addServerEntry(draft, 'outage-numbered', { code })
+}
+
+async function nextCode(db: Queries, siteId: string): Promise<string> {
+  const [site] = await db.update(sites).set({ outageCount: sql`${sites.outageCount} + 1` }).where(eq(sites.id, siteId)).returning({ code: sites.code, count: sites.outageCount })
+  return `${site!.code}-${String(site!.count).padStart(4, '0')}`
+}
+
+function isOpening(item: unknown): boolean {
+  return (item as { entry?: { kind?: unknown } } | null)?.entry?.kind === 'outage-opened'
+}

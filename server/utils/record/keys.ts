@@ -1,0 +1,34 @@
+import { createPrivateKey, createPublicKey, sign, verify } from 'node:crypto'
+import type { KeyObject } from 'node:crypto'
+
+// RFC 8410: the DER wrappings of a raw Ed25519 seed and public key.
+const PRIVATE_PREFIX = Buffer.from('302e020100300506032b657004220420', 'hex')
+const PUBLIC_PREFIX = Buffer.from('302a300506032b6570032100', 'hex')
+
+/** A private key from its 32-byte seed (RFC 8032). */
+export function privateKeyOf(seed: Uint8Array): KeyObject {
+  if (seed.length !== 32) throw new RangeError('An Ed25519 seed is 32 bytes')
+  return createPrivateKey({ key: Buffer.concat([PRIVATE_PREFIX, seed]), format: 'der', type: 'pkcs8' })
+}
+
+/** The raw public half, 32 bytes in base64url. */
+export function publicKeyText(key: KeyObject): string {
+  return createPublicKey(key).export({ format: 'der', type: 'spki' }).subarray(PUBLIC_PREFIX.length).toString('base64url')
+}
+
+/** Signs bytes; 64 bytes in base64url. */
+export function signBytes(bytes: Uint8Array, key: KeyObject): string {
+  return sign(null, bytes, key).toString('base64url')
+}
+
+/** Whether a signature over bytes is good; false for a malformed key or signature too. */
+export function verifyBytes(bytes: Uint8Array, signature: string, publicKey: string): boolean {
+  const raw = Buffer.from(publicKey, 'base64url')
+  const mark = Buffer.from(signature, 'base64url')
+  if (raw.length !== 32 || mark.length !== 64) return false
+  try {
+    return verify(null, bytes, createPublicKey({ key: Buffer.concat([PUBLIC_PREFIX, raw]), format: 'der', type: 'spki' }), mark)
+  } catch {
+    return false
+  }
+}

@@ -1,0 +1,63 @@
+import { and, desc, eq, inArray, sql } from 'drizzle-orm'
+import type { Phase } from '../../../shared/record/phases'
+import { controllers, outages, sites } from '../../database/schema'
+import type { Person } from '../access'
+import { visibleSites } from '../access'
+import { useDatabase } from '../database'
+import { unprocessable } from '../errors'
+
+export interface OutageFilter { phase: Phase[], site?: string, after?: string, limit: number }
+
+export interface OutageItem {
+  id: string
+  code: string
+  phase: Phase
+  planned: boolean
+  site: { id: string, code: string, name: string, timeZone: string }
+  controller: { id: string, name: string }
+  workKind: string
+  pointsInHand: number
+  size: number
+  openedAt: string
+  startsAt: string | null
+  darkAt: string | null
+  endedAt: string | null
+  planSubmitted: boolean
+}
+
+/** A page of outages, newest first; `next` goes on from here, null at the end. */
+export async function listOutages(person: Person, filter: OutageFilter): Promise<{ items: OutageItem[], next: string | null }> {
+  const visible = await visibleSites(person)
+  if (visible?.length === 0 || (filter.site && visible && !visible.includes(filter.site))) return { items: [], next: null }
+  const rows = await useDatabase().select({
+    outage: {
+      id: outages.id, code: outages.code, phase: outages.phase, planned: outages.planned, workKind: outages.workKind, pointsInHand: outages.pointsInHand,
+      size: outages.size, openedAt: outages.openedAt, startsAt: outages.startsAt, darkAt: outages.darkAt, endedAt: outages.endedAt,
+      planSubmitted: sql<boolean>`${outages.state} -> 'planSubmitted' <> 'null'::jsonb`,
+    },
+    site: { id: sites.id, code: sites.code, name: sites.name, timeZone: sites.timeZone },
+    controller: { id: controllers.id, name: controllers.name },
+  }).from(outages).innerJoin(sites, eq(sites.id, outages.siteId)).innerJoin(controllers, eq(controllers.id, outages.controllerId))
+    .where(and(
+      visible ? inArray(outages.siteId, visible) : undefined,
+      filter.site ? eq(outages.siteId, filter.site) : undefined,
+      filter.phase.length > 0 ? inArray(outages.phase, filter.phase) : undefined,
+      filter.after ? beyond(filter.after) : undefined,
+    ))
+    .orderBy(desc(outages.openedAt), desc(outages.id)).limit(filter.limit + 1)
+  const page = rows.slice(0, filter.limit)
+  const last = page.at(-1)?.outage
+  return {
+    items: page.map(({ outage, site, controller }) => ({ ...outage, site, controller, openedAt: outage.openedAt.toISOString(), startsAt: iso(outage.startsAt), darkAt: iso(outage.darkAt), endedAt: iso(outage.endedAt) })),
+    next: rows.length > filter.limit && last ? `${last.openedAt.toISOString()}_${last.id}` : null,
+  }
+}
+
+const iso = (date: Date | null) => date?.toISOString() ?? null
+
+/** Rows after a place that an earlier page ended at. */
+function beyond(place: string) {
+  const [at = '', id = ''] = place.split('_')
+  if (Number.isNaN(Date.parse(at)) || !/^[0-9a-f-]{36}$/.test(id)) return unprocessable('after', 'Give the "next" of an earlier page')
+  return sql`(date_trunc('milliseconds', ${outages.openedAt}), ${outages.id}) < (${at}::timestamptz, ${id}::uuid)`
+}

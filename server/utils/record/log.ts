@@ -1,0 +1,27 @@
+import { and, asc, eq, gt } from 'drizzle-orm'
+import type { StoredEntry } from '../../../shared/record/entry'
+import { foldLog } from '../../../shared/record/fold'
+import type { OutageState } from '../../../shared/record/state'
+import { FOLD_VERSION } from '../../../shared/record/state'
+import type { outages } from '../../database/schema'
+import { entries } from '../../database/schema'
+import type { Queries } from '../database'
+
+export type OutageRow = typeof outages.$inferSelect
+
+/** A row of the log as the record holds it. */
+export function storedEntry(row: typeof entries.$inferSelect): StoredEntry {
+  return { entry: JSON.parse(row.signed), signature: row.signature, seq: row.seq, receivedAt: row.receivedAt.toISOString(), standing: row.standing, why: row.why }
+}
+
+/** Entries of an outage after a seq, in order. @param limit 0: all */
+export async function readEntries(db: Queries, outageId: string, after = 0, limit = 0): Promise<StoredEntry[]> {
+  const query = db.select().from(entries).where(and(eq(entries.outageId, outageId), gt(entries.seq, after))).orderBy(asc(entries.seq))
+  const rows = limit > 0 ? await query.limit(limit) : await query
+  return rows.map(storedEntry)
+}
+
+/** The folded state of a row: the cached one where its meaning is still the same, else folded anew. */
+export async function readState(db: Queries, row: OutageRow): Promise<OutageState> {
+  return row.foldVersion === FOLD_VERSION && row.state.size === row.size ? row.state : foldLog(row.id, await readEntries(db, row.id))
+}
