@@ -6,7 +6,5 @@ import { rulebookById } from '~~/server/utils/holding'
 /** One rulebook in its newest version, for any signed-in role. */
 export default defineEventHandler((event) => {
   requirePerson(event)
-  const rulebook = rulebookById(getRouterParam(event, 'id') ?? '')
-  if (!rulebook) throw notFound('rulebook')
-  return rulebook
+  return rulebookById(getRouterParam(event, 'id') ?? '') ?? notFound('rulebook')
 })
