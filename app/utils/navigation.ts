@@ -15,7 +15,7 @@ const homes: Record<NavigationRole, string> = {
 
 /** The links of the header for a role, in their order; nothing for somebody without a known role. */
 export function navigationFor(role: string | null | undefined): NavigationItem[] {
-  if (!role || !(role in homes)) return []
+  if (!role || !Object.hasOwn(homes, role)) return []
   const items: NavigationItem[] = [
     { label: homes[role as NavigationRole], to: '/' },
     { label: 'Records', to: '/records' },

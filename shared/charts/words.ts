@@ -49,7 +49,7 @@ export function dayClockWords(iso: string, timeZone: string): string {
 /** The offset in force at that moment: 'UTC−6', 'UTC+5:30', 'UTC'. */
 export function offsetWords(iso: string, timeZone: string): string {
   const { timeZoneName = 'GMT' } = parts(iso, timeZone, { timeZoneName: 'shortOffset', year: 'numeric' })
-  return timeZoneName.replace('GMT', 'UTC').replace('-', minus)
+  return timeZoneName.replace('GMT', 'UTC').replace(/\+0$/, '').replace('-', minus)
 }
 
 /** A number with a true minus sign and a fixed count of decimals: '−0.4', '38.0'. Never '−0.0'. */
