@@ -1,17 +1,14 @@
 import { sql } from 'drizzle-orm'
-import { z } from 'zod'
-import { emailSchema, passwordSchema, personNameSchema } from '~~/shared/schemas/people'
+import { setupSchema } from '~~/shared/schemas/people'
 import { people } from '~~/server/database/schema'
 import { useDatabase } from '~~/server/utils/database'
 import { forbidden } from '~~/server/utils/errors'
 import { readBodyAs } from '~~/server/utils/parse'
 import { hashPassword } from '~~/server/utils/people/password'
 
-const body = z.object({ email: emailSchema, name: personNameSchema, password: passwordSchema })
-
 /** Makes the first administrator; closed as soon as anybody exists. */
 export default defineEventHandler(async (event) => {
-  const { email, name, password } = await readBodyAs(event, body)
+  const { email, name, password } = await readBodyAs(event, setupSchema)
   const passwordHash = await hashPassword(password)
   const made = await useDatabase().transaction(async (tx) => {
     await tx.execute(sql`lock table ${people} in share row exclusive mode`)

@@ -8,3 +8,8 @@ export const OPEN_ROUTES: readonly { path: RegExp, why: string }[] = [
 export function isOpenRoute(path: string): boolean {
   return OPEN_ROUTES.some(route => route.path.test(path))
 }
+
+/** What somebody may still ask for whose password was given by an administrator. */
+export function isOpenWithTemporaryPassword(path: string): boolean {
+  return path === '/api/account' || path === '/api/account/password'
+}

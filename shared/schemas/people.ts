@@ -29,6 +29,12 @@ export const signInSchema = z.object({
   password: z.string({ required_error: 'Enter the password' }).min(1, 'Enter the password').max(PASSWORD_MAX),
 })
 
+/** Wrong passwords are counted over this many minutes; then the account may try again. */
+export const SIGN_IN_WINDOW_MINUTES = 15
+
+/** The first administrator, made when nobody is there yet. */
+export const setupSchema = z.object({ email: emailSchema, name: personNameSchema, password: passwordSchema })
+
 export const personCreateSchema = z.object({
   email: emailSchema,
   name: personNameSchema,
@@ -44,6 +50,24 @@ export const personUpdateSchema = z.object({
   disabled: z.boolean(),
   password: passwordSchema.optional(),
 }).partial()
+
+/** A person as an administrator sees them; times in ISO 8601, UTC. */
+export interface PersonItem {
+  id: string
+  email: string
+  name: string
+  role: Role
+  siteIds: string[]
+  /** The password was given by an administrator and not changed since. */
+  mustChangePassword: boolean
+  disabledAt: string | null
+  createdAt: string
+}
+
+export interface SiteName { id: string, code: string, name: string }
+
+/** Who is signed in, and the sites that are theirs. */
+export interface Account { id: string, name: string, email: string, role: Role, mustChangePassword: boolean, sites: SiteName[] }
 
 export const passwordChangeSchema = z.object({
   current: z.string().min(1, 'Enter the present password').max(PASSWORD_MAX),

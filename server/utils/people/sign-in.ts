@@ -5,12 +5,26 @@ import { useDatabase } from '../database'
 import { clearWrongPasswords, countWrongPassword, signInWait } from './limits'
 import { passwordMatches } from './password'
 
-/** Why a sign-in failed, as the sign-in page is told: never which of e-mail and password was wrong. */
-export const WRONG = 'wrong'
+/** Why a sign-in failed, as the sign-in page is told in its address: never which of e-mail and password was wrong. */
 export const TOO_MANY = 'too-many'
+export const AWAY = 'away'
 
-/** The account of an e-mail and password. Null: unknown, wrong or switched off. @throws Error(TOO_MANY) */
+/**
+ * The account of an e-mail and password. Null: unknown, wrong or switched off.
+ * @throws Error(TOO_MANY), Error(AWAY)
+ */
 export async function signIn(input: unknown, address: string): Promise<typeof people.$inferSelect | null> {
+  try {
+    return await check(input, address)
+  } catch (error) {
+    if (error instanceof Error && error.message === TOO_MANY) throw error
+    // The message goes into an address; what the database said belongs in the server's own log.
+    console.error('Sign-in failed', error)
+    throw new Error(AWAY)
+  }
+}
+
+async function check(input: unknown, address: string): Promise<typeof people.$inferSelect | null> {
   const parsed = signInSchema.safeParse(input)
   if (!parsed.success) return null
   const { email, password } = parsed.data

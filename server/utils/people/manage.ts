@@ -1,0 +1,85 @@
+import { asc, eq, inArray, sql } from 'drizzle-orm'
+import type { z } from 'zod'
+import type { PersonItem, personCreateSchema, personUpdateSchema } from '../../../shared/schemas/people'
+import { people, siteAccess, sites } from '../../database/schema'
+import type { Queries } from '../database'
+import { useDatabase } from '../database'
+import { conflict, notFound, unprocessable } from '../errors'
+import { clearWrongPasswords } from './limits'
+import { hashPassword } from './password'
+
+type Row = typeof people.$inferSelect
+
+/** Everybody, by name. */
+export async function listPeople(): Promise<PersonItem[]> {
+  const db = useDatabase()
+  const [rows, access] = await Promise.all([db.select().from(people).orderBy(asc(people.name), asc(people.id)), db.select().from(siteAccess)])
+  const siteIds = new Map<string, string[]>()
+  for (const { personId, siteId } of access) siteIds.set(personId, [...siteIds.get(personId) ?? [], siteId])
+  return rows.map(row => itemOf(row, siteIds.get(row.id) ?? []))
+}
+
+/** Makes an account with a password that its owner must change. 409 for an e-mail address in use. */
+export async function createPerson({ email, name, role, password, siteIds }: z.output<typeof personCreateSchema>): Promise<PersonItem> {
+  const passwordHash = await hashPassword(password)
+  return useDatabase().transaction(async (tx) => {
+    const [row] = await tx.insert(people).values({ email, name, role, passwordHash, mustChangePassword: true }).onConflictDoNothing({ target: people.email }).returning()
+    if (!row) return conflict('Somebody has this e-mail address already', 'email')
+    return itemOf(row, await setSites(tx, row, siteIds))
+  })
+}
+
+/**
+ * Changes an account. A change of role, password or of being switched off ends all its sessions.
+ * 409 when no administrator would be left.
+ */
+export async function updatePerson(id: string, change: z.output<typeof personUpdateSchema>): Promise<PersonItem> {
+  const passwordHash = change.password === undefined ? undefined : await hashPassword(change.password)
+  const item = await useDatabase().transaction(async (tx) => {
+    // Locked with all administrators, so that two of them cannot switch each other off at once.
+    const locked = await tx.select().from(people).where(sql`${people.id} = ${id} or ${people.role} = 'administrator'`).orderBy(asc(people.id)).for('update')
+    const before = locked.find(row => row.id === id)
+    if (!before) return notFound('person')
+    const role = change.role ?? before.role
+    const disabledAt = change.disabled === undefined ? before.disabledAt : change.disabled ? before.disabledAt ?? new Date() : null
+    const staysAdministrator = role === 'administrator' && !disabledAt
+    if (!staysAdministrator && isLastAdministrator(before, locked)) {
+      return conflict('This is the last administrator: make another one first', change.disabled ? 'disabled' : 'role')
+    }
+    const endsSessions = role !== before.role || Boolean(disabledAt) !== Boolean(before.disabledAt) || passwordHash !== undefined
+    const [row] = await tx.update(people).set({
+      name: change.name ?? before.name,
+      role,
+      disabledAt,
+      ...(passwordHash === undefined ? {} : { passwordHash, mustChangePassword: true }),
+      ...(endsSessions ? { sessionVersion: sql`${people.sessionVersion} + 1` } : {}),
+    }).where(eq(people.id, id)).returning()
+    return itemOf(row!, await setSites(tx, row!, change.siteIds))
+  })
+  if (passwordHash !== undefined) await clearWrongPasswords(item.email)
+  return item
+}
+
+function isLastAdministrator(person: Row, administrators: Row[]): boolean {
+  const acts = (row: Row) => row.role === 'administrator' && !row.disabledAt
+  return acts(person) && !administrators.some(row => row.id !== person.id && acts(row))
+}
+
+/** Writes which sites a person may see, when they are given; an administrator sees all and has none written. */
+async function setSites(tx: Queries, person: Row, siteIds: string[] | undefined): Promise<string[]> {
+  const wanted = person.role === 'administrator' ? [] : siteIds
+  if (wanted !== undefined) {
+    const distinct = [...new Set(wanted)]
+    const known = distinct.length > 0 ? await tx.select({ id: sites.id }).from(sites).where(inArray(sites.id, distinct)) : []
+    if (known.length < distinct.length) return unprocessable('siteIds', 'One of these sites does not exist')
+    await tx.delete(siteAccess).where(eq(siteAccess.personId, person.id))
+    if (distinct.length > 0) await tx.insert(siteAccess).values(distinct.map(siteId => ({ personId: person.id, siteId })))
+  }
+  const rows = await tx.select({ siteId: siteAccess.siteId }).from(siteAccess).where(eq(siteAccess.personId, person.id))
+  return rows.map(row => row.siteId)
+}
+
+function itemOf(row: Row, siteIds: string[]): PersonItem {
+  const { id, email, name, role, mustChangePassword, disabledAt, createdAt } = row
+  return { id, email, name, role, siteIds: [...siteIds].sort(), mustChangePassword, disabledAt: disabledAt?.toISOString() ?? null, createdAt: createdAt.toISOString() }
+}
