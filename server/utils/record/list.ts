@@ -1,5 +1,6 @@
 import { and, desc, eq, inArray, sql } from 'drizzle-orm'
 import type { Phase } from '../../../shared/record/phases'
+import type { OutagePage } from '../../../shared/schemas/outage-list'
 import { controllers, outages, sites } from '../../database/schema'
 import type { Person } from '../access'
 import { visibleSites } from '../access'
@@ -8,25 +9,8 @@ import { unprocessable } from '../errors'
 
 export interface OutageFilter { phase: Phase[], site?: string, after?: string, limit: number }
 
-export interface OutageItem {
-  id: string
-  code: string
-  phase: Phase
-  planned: boolean
-  site: { id: string, code: string, name: string, timeZone: string }
-  controller: { id: string, name: string }
-  workKind: string
-  pointsInHand: number
-  size: number
-  openedAt: string
-  startsAt: string | null
-  darkAt: string | null
-  endedAt: string | null
-  planSubmitted: boolean
-}
-
 /** A page of outages, newest first; `next` goes on from here, null at the end. */
-export async function listOutages(person: Person, filter: OutageFilter): Promise<{ items: OutageItem[], next: string | null }> {
+export async function listOutages(person: Person, filter: OutageFilter): Promise<OutagePage> {
   const visible = await visibleSites(person)
   if (visible?.length === 0 || (filter.site && visible && !visible.includes(filter.site))) return { items: [], next: null }
   const rows = await useDatabase().select({
