@@ -15,7 +15,7 @@ const TYPE_WORDS: Readonly<Record<string, string>> = {
 
 /**
  * Parses a body by a schema and words the first fault so that it can stand
- * alone on a screen. `field` is the path with dots ("compressors.2.kw"), or
+ * alone on a screen. `field` is the path as people write it ("compressors[2].kw"), or
  * "body" when the body as a whole is wrong.
  */
 export function parseWith<S extends z.ZodTypeAny>(schema: S, body: unknown): Parsed<z.output<S>> {
@@ -24,8 +24,13 @@ export function parseWith<S extends z.ZodTypeAny>(schema: S, body: unknown): Par
     return { ok: true, input: result.data as z.output<S> }
   }
   const issue = result.error.issues[0]!
-  const field = issue.path.length > 0 ? issue.path.join('.') : 'body'
+  const field = pathWords(issue.path) || 'body'
   return { ok: false, field, reason: `${field} ${faultWords(issue)}` }
+}
+
+function pathWords(path: readonly (string | number)[]): string {
+  return path.reduce<string>((words, part) =>
+    typeof part === 'number' ? `${words}[${part}]` : words === '' ? part : `${words}.${part}`, '')
 }
 
 /** The fault as the end of a sentence that begins with the field's name. */

@@ -58,11 +58,11 @@ describe('bodies of the fit question', () => {
     ['no readings', { ...fit, readings: [] }, 'readings', 'readings must hold at least one reading'],
     ['readings that are no list', { ...fit, readings: {} }, 'readings', 'readings must be a list'],
     ['too many readings', { ...fit, readings: Array.from({ length: 2001 }, () => fit.readings[0]) }, 'readings', 'readings must hold at most 2000 readings'],
-    ['unordered readings', { ...fit, readings: [...fit.readings].reverse() }, 'readings.1.at', 'readings.1.at is before the reading that it follows'],
+    ['unordered readings', { ...fit, readings: [...fit.readings].reverse() }, 'readings[1].at', 'readings[1].at is before the reading that it follows'],
     ['now before the last', { ...fit, now: '2026-03-01T02:09:59Z' }, 'now', 'now is before the last reading'],
     ['a time in words', { ...fit, now: 'tonight' }, 'now', 'now must be a time such as 2026-03-01T02:10:00Z'],
     ['a day that is none', { ...fit, now: '2026-02-30T02:10:00Z' }, 'now', 'now must be a time such as 2026-03-01T02:10:00Z'],
-    ['a reading without temperature', { ...fit, readings: [{ at: fit.now }] }, 'readings.0.c', 'readings.0.c is needed'],
+    ['a reading without temperature', { ...fit, readings: [{ at: fit.now }] }, 'readings[0].c', 'readings[0].c is needed'],
     ['a prior of 0', { ...fit, priorTauHours: 0 }, 'priorTauHours', 'priorTauHours must be above 0'],
     ['no ambient', { ...fit, ambientC: undefined }, 'ambientC', 'ambientC is needed'],
   ])('refuses %s', (_, body, field, reason) => {

@@ -1,0 +1,8 @@
+export { ahri540, capacityKw, DEFAULT_SLOPE_PER_K } from './capacity'
+export { parseCoverInput, parseSaturationQuery } from './parse'
+export { planCover } from './plan-cover'
+export type { Cover } from './plan-cover'
+export { atmosphereKpa, KPA_PER_PSI, kpaOfPsig, listRefrigerants, psigOf, saturation } from './refrigerants'
+export type { Refrigerant, SaturationPressure, SaturationRefusal, SaturationTemperature } from './refrigerants'
+export { r744Standstill, R744_AT_35C } from './standstill'
+export type { ReliefValve, Standstill } from './standstill'
