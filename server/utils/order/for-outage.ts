@@ -14,13 +14,15 @@ const PLACE_MAX = 200
 /** A point of the equipment as the order engine takes it. */
 export function orderPoint(snapshot: Snapshot, point: SnapshotPoint, hand: HandPosition): OrderPoint {
   const group = snapshot.suctionGroups.find(item => item.id === point.suctionGroupId)
+  // I12 is about stages that feed each other: a low-temperature rack of one stage has its own condenser.
+  const staged = group && snapshot.suctionGroups.some(item => item.rackId === group.rackId && item.stage === 'medium')
   return {
     tag: point.tag,
     kind: point.kind,
     hand,
     ...(point.rackId ? { rack: point.rackId } : {}),
     ...(point.suctionGroupId ? { suctionGroup: point.suctionGroupId } : {}),
-    ...(group ? { stage: group.stage } : {}),
+    ...(staged ? { stage: group.stage } : {}),
     ...(point.circuitId ? { circuit: point.circuitId } : {}),
     ...(point.place ? { place: point.place.slice(0, PLACE_MAX) } : {}),
     ...(point.drives ? { drives: point.drives } : {}),
