@@ -56,7 +56,7 @@ async function main() {
     await installPackages(root)
     if (parts.some(part => part === 'api' || part === 'e2e')) await installTools()
     if (parts.some(part => part !== 'migrations')) {
-      await mustRun(bin('nuxt'), ['prepare'], { cwd: root, env, sentence: 'Nuxt could not prepare its types.' })
+      await mustRun(bin('nuxt'), ['prepare'], { cwd: root, env, quiet: true, sentence: 'Nuxt could not prepare its types.' })
     }
   })
   for (const part of parts) await PARTS[part](extra)

@@ -26,13 +26,14 @@ export async function phase(name, work) {
  * Runs a program that must succeed.
  * @param {string} command
  * @param {string[]} args
- * @param {{ cwd: string, env?: NodeJS.ProcessEnv, sentence: string }} options sentence: says what is wrong when it fails
+ * @param {{ cwd: string, env?: NodeJS.ProcessEnv, quiet?: boolean, sentence: string }} options
+ *   sentence: says what is wrong when it fails; quiet: the output is shown only then
  * @throws {Refusal} with the sentence
  */
 export async function mustRun(command, args, { sentence, ...options }) {
-  const { code, timedOut } = await run(command, args, { ...options, timeout: PATIENCE })
+  const { code, output, timedOut } = await run(command, args, { ...options, timeout: PATIENCE })
   if (timedOut) throw new Refusal(`${sentence} (It was stopped after ${spell(PATIENCE)}.)`)
-  if (code !== 0) throw new Refusal(sentence)
+  if (code !== 0) throw new Refusal(`${sentence}\n${output.trim()}`.trim())
 }
 
 /** What Vitest's JSON report counts. @returns {Promise<Count | null>} null when there is no report */
