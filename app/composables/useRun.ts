@@ -1,0 +1,78 @@
+import type { InjectionKey, Ref } from 'vue'
+import { inject, provide, ref } from 'vue'
+import { navigateTo } from '#imports'
+import { clockWords } from '~~/shared/charts/words'
+import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
+import type { OutageHandle } from '~/composables/useOutage'
+import { encodePhoto } from '~/utils/photos'
+
+export interface Run extends OutageHandle { now: Readonly<Ref<number>> }
+
+const KEY: InjectionKey<Run> = Symbol('run')
+
+export function provideRun(run: Run): void {
+  provide(KEY, run)
+}
+
+/** The outage whose run this screen belongs to. */
+export function useRun(): Run {
+  const run = inject(KEY)
+  if (!run) throw new Error('useRun outside the run of an outage')
+  return run
+}
+
+/** Time of day at the site. */
+export function useSiteClock() {
+  const { state } = useRun()
+  return (ms: number, seconds = false) => clockWords(new Date(ms).toISOString(), state.value.snapshot.site.timeZone, seconds)
+}
+
+/** Signing from a screen: what is under way, and what came of it in words. */
+export function useSigning() {
+  const run = useRun()
+  const busy = ref(false)
+  const trouble = ref<string[]>([])
+
+  /**
+   * Signs an entry with its photo, then goes where `then` says. A questioned entry is in the record, and its
+   * reason is shown; a refused one is not, and the screen stays.
+   * @returns whether it is signed and kept or in the record as accepted
+   */
+  async function act<K extends EntryKind>(kind: K, body: BodyInput<K>, then?: string): Promise<boolean> {
+    if (busy.value) return false
+    busy.value = true
+    trouble.value = []
+    try {
+      const { status, why } = await run.sign(kind, body)
+      if (status === 'refused') trouble.value = [`Not taken into the record: ${why.join('; ')}.`]
+      if (status === 'questioned') trouble.value = [`In the record, but questioned: ${why.join('; ')}.`]
+      const good = status === 'accepted' || status === 'kept'
+      if (good && then !== undefined) await navigateTo(then)
+      return good
+    } catch (error) {
+      trouble.value = [error instanceof Error && error.name === 'ZodError' ? faultOf(error) : `This could not be signed: ${error instanceof Error ? error.message : String(error)}`]
+      return false
+    } finally {
+      busy.value = false
+    }
+  }
+
+  /** Strips and keeps photos; their hashes go into the entry. */
+  async function photosOf(files: (File | null)[]): Promise<string[]> {
+    const hashes: string[] = []
+    for (const file of files) {
+      if (!file) continue
+      const { sha256, blob } = await encodePhoto(file)
+      await run.attach(sha256, blob)
+      hashes.push(sha256)
+    }
+    return hashes
+  }
+
+  return { busy, trouble, act, photosOf }
+}
+
+function faultOf(error: Error): string {
+  const issues = (error as unknown as { issues: { path: (string | number)[], message: string }[] }).issues
+  return issues.map(issue => issue.message).join('; ')
+}

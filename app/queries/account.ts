@@ -1,0 +1,27 @@
+import type { Account } from '~~/shared/schemas/people'
+
+export interface DeviceItem { id: string, name: string, publicKey: string, enrolledAt: string, revokedAt: string | null }
+
+/** Who is signed in, with the sites that are theirs. */
+export function useAccount() {
+  const request = useRequestFetch()
+  return useAsyncData('account', () => request<Account>('/api/account'))
+}
+
+/** The person's own signing devices, oldest first. */
+export function useDevices() {
+  const request = useRequestFetch()
+  return useAsyncData('devices', () => request<DeviceItem[]>('/api/devices'))
+}
+
+export function fetchDevices(): Promise<DeviceItem[]> {
+  return $fetch<DeviceItem[]>('/api/devices')
+}
+
+export function revokeDevice(id: string): Promise<unknown> {
+  return $fetch(`/api/devices/${id}`, { method: 'DELETE' })
+}
+
+export function changePassword(current: string, next: string): Promise<unknown> {
+  return $fetch('/api/account/password', { method: 'POST', body: { current, next } })
+}

@@ -1,0 +1,151 @@
+import type { Role } from '../schemas/people'
+import type { StoredEntry } from './entry'
+import { ACT_WORDS } from './kinds/rounds'
+import { SEAL_STATEMENT, SUBMIT_STATEMENT } from './kinds/review'
+import type { CheckLine, CorrectionLine, LateReading, Line, PointLine, RoundLine, VerdictLine } from './record-lines'
+import { acceptedOf, checkLines, correctionLines, lineOf, lineOfMark, overLimit, pointLines, roundLines, verdictLines } from './record-lines'
+import { caseName, darkMs, nameOf, pointsInHand, productReadings, proofsDue, watchedCases } from './select'
+import type { OutageState } from './state'
+
+/** A clock that differs by more than this from the server's is pointed out, ms. */
+export const CLOCK_DIFFERENCE_MS = 5 * 60_000
+
+/** What only the engines know about a record; worked out by the caller, since this room computes none of it. */
+export interface RecordFacts {
+  /** readings that came later than they were due by the forecast */
+  late: readonly LateReading[]
+  /** where the limits of this record are written, each once */
+  limits: readonly string[]
+}
+
+export interface SignatureLine extends Line { what: 'submitted' | 'sealed', role: Role | 'server', meaning: string, drawing: string, words: string, /** false once the record was returned for answers */ stands: boolean }
+export interface ActLine extends Line { caseId: string, name: string, act: string, discarded: boolean, product: string, quantity: number | null, unit: string, place: string, words: string }
+export interface QuestionedLine { seq: number, entry: string, why: string[], settled: (Line & { words: string }) | null }
+export interface ClockLine { device: string, deviceName: string, name: string, /** largest difference, ms; positive: the device is ahead */ ms: number, entries: number }
+export interface QuestionLine extends Line { words: string, answer: (Line & { words: string }) | null }
+
+/** The figures of a record's front page and of its sections; page, PDF and CSV take them from here. */
+export interface RecordSummary {
+  heading: { code: string | null, site: string, controller: string, work: string, planned: boolean, from: number, to: number | null, timeZone: string }
+  /** ms without control in all; minutes that were planned, null for an unplanned outage */
+  dark: { ms: number, plannedMinutes: number | null, running: boolean, times: number }
+  points: { set: number, back: number, proven: number, excused: number, inHand: number, proofsDue: number }
+  rounds: { taken: number, late: number, never: number, lines: RoundLine[] }
+  highest: { caseId: string, name: string, value: number, unit: 'F' | 'C', at: number } | null
+  above: { watched: number, cases: string[] }
+  limits: readonly string[]
+  signatures: SignatureLine[]
+  checks: { before: CheckLine[], back: CheckLine[] }
+  pointLines: PointLine[]
+  verdicts: VerdictLine[]
+  acts: ActLine[]
+  decidedOtherwise: (Line & { name: string, reason: string })[]
+  questioned: QuestionedLine[]
+  questions: QuestionLine[]
+  clocks: ClockLine[]
+  corrections: CorrectionLine[]
+  refusals: { seq: number, reason: string }[]
+}
+
+/**
+ * The summary of a record.
+ * @param state the fold of these entries
+ * @param now until when time without control still counts, Unix ms
+ */
+export function summaryOf(state: OutageState, entries: readonly StoredEntry[], facts: RecordFacts, now: number): RecordSummary {
+  const verdicts = verdictLines(state, entries)
+  const points = pointLines(state, entries)
+  const lines = roundLines(state, facts.late)
+  return {
+    heading: headingOf(state),
+    dark: { ms: darkMs(state, now), plannedMinutes: state.planned ? Math.round(state.plan.duration.darkMean) : null, running: state.darks.at(-1)?.to === null, times: state.darks.length },
+    points: pointCounts(state, points),
+    rounds: { taken: lines.length, late: lines.filter(line => line.late > 0).length, never: facts.late.filter(item => item.seq === null).length, lines },
+    highest: highestProduct(state),
+    above: { watched: watchedCases(state).length, cases: casesAbove(state, verdicts) },
+    limits: facts.limits.length > 0 ? facts.limits : [state.snapshot.rulebook.name].filter(Boolean),
+    signatures: signatureLines(state, entries),
+    checks: checkLines(state),
+    pointLines: points,
+    verdicts,
+    acts: actLines(state),
+    decidedOtherwise: acceptedOf(entries, 'decided-otherwise').map(({ stored, entry }) => ({ ...lineOf(state, stored), name: caseName(state, entry.body.caseId), reason: entry.body.reason })),
+    questioned: state.questioned.map(item => ({ seq: item.seq, entry: item.entry, why: item.why, settled: item.settled ? { ...lineOfMark(state, item.settled.mark), words: item.settled.words } : null })),
+    questions: state.questions.map(item => ({ ...lineOfMark(state, item.mark), words: item.words, answer: item.answer ? { ...lineOfMark(state, item.answer.mark), words: item.answer.words } : null })),
+    clocks: clockLines(state, entries),
+    corrections: correctionLines(state, entries),
+    refusals: state.refusals.map(({ seq, reason }) => ({ seq, reason })),
+  }
+}
+
+function headingOf(state: OutageState): RecordSummary['heading'] {
+  const { site, controller } = state.snapshot
+  const ended = state.phase === 'submitted' || state.phase === 'sealed' ? state.submitted : state.calledOff
+  const begun = Math.min(state.inHandBegun?.at ?? Infinity, state.darks[0]?.from ?? Infinity)
+  return {
+    code: state.code, site: site.name, controller: controller.name, work: state.plan.workKind.name, planned: state.planned,
+    from: Number.isFinite(begun) ? begun : state.opened?.at ?? 0, to: ended?.mark.at ?? null, timeZone: site.timeZone,
+  }
+}
+
+function pointCounts(state: OutageState, lines: readonly PointLine[]): RecordSummary['points'] {
+  const held = new Set(pointsInHand(state).map(point => point.tag))
+  const set = new Set(lines.filter(line => line.inHand).map(line => line.tag))
+  const statuses = Object.values(state.points)
+  return {
+    set: set.size,
+    back: [...set].filter(tag => !held.has(tag)).length,
+    proven: statuses.filter(point => point.status === 'proven').length,
+    excused: statuses.filter(point => point.status === 'excused').length,
+    inHand: held.size,
+    proofsDue: proofsDue(state).length,
+  }
+}
+
+/** The warmest product reading; the earlier one, then the lower case id, where two are as warm. */
+function highestProduct(state: OutageState): RecordSummary['highest'] {
+  const kelvin = (reading: { value: number, unit: 'F' | 'C' }) => reading.unit === 'C' ? reading.value : (reading.value - 32) * 5 / 9
+  const readings = Object.values(state.cases).flatMap(item => productReadings(item).map(reading => ({ caseId: item.id, value: reading.value, unit: reading.unit, at: reading.at })))
+  const first = readings.sort((a, b) => kelvin(b) - kelvin(a) || a.at - b.at || a.caseId.localeCompare(b.caseId))[0]
+  return first ? { ...first, name: caseName(state, first.caseId) } : null
+}
+
+/** Names of cases that a reading or a verdict once put above their limit, in the order of the equipment. */
+function casesAbove(state: OutageState, verdicts: readonly VerdictLine[]): string[] {
+  const judged = new Set(verdicts.filter(line => line.verdict === 'above' || line.verdict === 'act' || line.verdict === 'discard').map(line => line.caseId))
+  return state.snapshot.cases
+    .filter(item => judged.has(item.id) || (state.cases[item.id] && productReadings(state.cases[item.id]!).some(reading => overLimit(state, item.id, reading) > 1e-6)))
+    .map(item => item.name)
+}
+
+function signatureLines(state: OutageState, entries: readonly StoredEntry[]): SignatureLine[] {
+  return acceptedOf(entries, 'submitted', 'sealed').map(({ stored, entry }) => ({
+    ...lineOf(state, stored),
+    what: entry.kind,
+    role: state.signers[entry.device]?.role ?? 'technician',
+    meaning: entry.kind === 'submitted' ? SUBMIT_STATEMENT : SEAL_STATEMENT,
+    drawing: entry.body.drawing,
+    words: entry.body.words,
+    stands: entry.kind === 'sealed' || (state.submitted?.mark.seq === stored.seq && (state.phase === 'submitted' || state.phase === 'sealed')),
+  }))
+}
+
+function actLines(state: OutageState): ActLine[] {
+  return Object.values(state.cases).flatMap(item => item.acts.map(act => ({
+    ...lineOfMark(state, act.mark), caseId: item.id, name: caseName(state, item.id), act: ACT_WORDS[act.act], discarded: act.act === 'discarded',
+    product: act.product, quantity: act.quantity, unit: act.unit, place: act.place, words: act.words,
+  }))).sort((a, b) => a.seq - b.seq)
+}
+
+/** Devices whose clock differed by more than five minutes, with the largest difference. */
+function clockLines(state: OutageState, entries: readonly StoredEntry[]): ClockLine[] {
+  const byDevice = new Map<string, ClockLine>()
+  for (const { entry } of entries) {
+    if (Math.abs(entry.skew) <= CLOCK_DIFFERENCE_MS) continue
+    const known = byDevice.get(entry.device) ?? { device: entry.device, deviceName: state.signers[entry.device]?.deviceName ?? 'Unknown device', name: nameOf(state, entry.by), ms: 0, entries: 0 }
+    known.entries++
+    if (Math.abs(entry.skew) > Math.abs(known.ms)) known.ms = entry.skew
+    byDevice.set(entry.device, known)
+  }
+  return [...byDevice.values()].sort((a, b) => a.device.localeCompare(b.device))
+}
