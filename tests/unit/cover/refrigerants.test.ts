@@ -70,7 +70,7 @@ describe('saturation pressure', () => {
 
   it('rises with temperature for every refrigerant', () => {
     for (const { id, lowestC, highestC } of listRefrigerants()) {
-      const steps = Array.from({ length: 400 }, (_, index) => pressures(id, lowestC + (highestC - lowestC) * index / 399))
+      const steps = Array.from({ length: 100 }, (_, index) => pressures(id, lowestC + (highestC - lowestC) * index / 99))
       steps.slice(1).forEach((step, index) => {
         expect(step.bubbleKpa).toBeGreaterThan(steps[index]!.bubbleKpa)
         expect(step.dewKpa).toBeGreaterThan(steps[index]!.dewKpa)

@@ -168,11 +168,10 @@ describe('properties', () => {
         expect(last.c).toBe(input.limitC)
       }
       const sign = Math.sign(input.ambientC - input.startC)
-      curve.slice(1).forEach((point, index) => {
-        expect(point.minute).toBeGreaterThan(curve[index]!.minute)
-        expect(sign * (point.c - curve[index]!.c)).toBeGreaterThanOrEqual(-1e-9)
-        expect(sign * (input.ambientC - point.c)).toBeGreaterThanOrEqual(-1e-9)
-      })
+      expect(curve.slice(1).every((point, index) =>
+        point.minute > curve[index]!.minute
+        && sign * (point.c - curve[index]!.c) >= -1e-9
+        && sign * (input.ambientC - point.c) >= -1e-9)).toBe(true)
     }))
   })
 })
