@@ -56,6 +56,7 @@ async function nameSigner(draft: Draft, entry: AnyEntry): Promise<void> {
 /** Writes the projection that lists and screens read. */
 export async function saveProjection(draft: Draft): Promise<void> {
   const { state } = draft
+  const dark = state.darks.at(-1) // the present time without control, or the last one
   const ended = state.sealed?.mark.at ?? state.calledOff?.mark.at ?? null
   await draft.db.update(outages).set({
     phase: state.phase,
@@ -65,7 +66,7 @@ export async function saveProjection(draft: Draft): Promise<void> {
     workKind: state.plan.workKind.name,
     pointsInHand: pointsInHand(state).length,
     startsAt: state.plan.startsAt ? new Date(state.plan.startsAt) : null,
-    darkAt: state.darks[0] ? new Date(state.darks[0].from) : null,
+    darkAt: dark ? new Date(dark.from) : null,
     endedAt: ended === null ? null : new Date(ended),
     updatedAt: new Date(draft.now),
   }).where(eq(outages.id, state.id))
