@@ -133,7 +133,7 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
     if (import.meta.client) window.removeEventListener('online', online)
   })
 
-  return { id, person, state, entries, base, pending, refused, loaded, failure, heardAt, skew, open, sync, sign, attach, dismiss, root }
+  return { id, person, signer, state, entries, base, pending, refused, loaded, failure, heardAt, skew, open, sync, sign, attach, dismiss, root }
 }
 
 export type OutageHandle = ReturnType<typeof useOutage>
