@@ -29,6 +29,7 @@ export interface ClockStep {
   minutes: number
   reached: 'after' | 'at'
   verdict: 'act' | 'discard'
+  /** What to do, without figures that a site may have made stricter. */
   act: string
 }
 
@@ -70,7 +71,7 @@ export interface ChartAsk<T = Threshold> {
   minutes: number
 }
 
-/** One cell of a chart: temperatures up to `to` (itself included or not); null has no upper end. */
+/** One cell of a chart, its `act` to follow what it asks: temperatures up to `to` (itself included or not); null has no upper end. */
 export interface ChartCell<T = Threshold> {
   to: number | null
   included: boolean

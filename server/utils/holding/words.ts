@@ -20,6 +20,12 @@ export function minutesWords(ms: number): string {
   return minutes === '1' ? '1 minute' : `${minutes} minutes`
 }
 
+/** A time allowed, in minutes: whole hours as hours. */
+export function allowedWords(minutes: number): string {
+  if (minutes % 60 !== 0) return minutesWords(minutes * MINUTE)
+  return minutes === 60 ? '1 hour' : `${minutes / 60} hours`
+}
+
 /** An instant to the second, or to the minute when it is a whole one. */
 export function instantWords(ms: number): string {
   const text = new Date(ms).toISOString()

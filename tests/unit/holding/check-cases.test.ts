@@ -251,6 +251,8 @@ describe('Canadian outage sheet for food service (V copy)', () => {
   it('keeps an overdue gap in the sum when a reading within ends it', () => {
     expect(assess(log('ca-4c/tcs', [[0, 4], [121, 4]])).verdict).toBe('discard')
     expect(assess(log('ca-4c/tcs', [[0, 4], [100, 4], [110, 4]])).verdict).toBe('within')
-    expect(assess(log('ca-4c/tcs', [[100, 4]])).verdict).toBe('within')
+    expect(assess(log('ca-4c/tcs', [[0, 5], [115, 4], [125, 4]])).verdict).toBe('within')
+    expect(assess(log('ca-4c/tcs', [[0, 5], [115, 4], [125.1, 4]])).verdict).toBe('discard')
+    expect(assess(log('ca-4c/tcs', [[130, 4]])).verdict).toBe('within')
   })
 })

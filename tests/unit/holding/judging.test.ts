@@ -140,6 +140,12 @@ describe('a site’s own figures', () => {
     expect(assess(log('us-sf-dph/tcs', [[0, 40], [10, 47]], { now: 101, site: { minutes: 100 } })).verdict).toBe('discard')
   })
 
+  it('reach into what a chart asks', () => {
+    const site = { limit: 38 }
+    expect(assess(log('us-sf-dph/tcs', [[0, 37], [250, 37], [260, 40], [300, 39]], { site }))).toMatchObject({ verdict: 'act', deadline: at(320), act: expect.stringContaining('38 °F or below within 1 hour') })
+    expect(assess(log('us-sf-dph/tcs', [[0, 40], [60, 43]], { site: { minutes: 50 } }))).toMatchObject({ verdict: 'act', deadline: at(110), act: expect.stringContaining('41 °F or below within 50 minutes') })
+  })
+
   it('add the accuracy of each reading in its own unit', () => {
     const site = { addAccuracy: true }
     expect(assess(log(TCS, [[0, 40, { accuracy: 1 }]], { site })).verdict).toBe('within')
@@ -168,6 +174,11 @@ describe('what goes with a verdict', () => {
     expect(assessment.why).toContain('Counted: 2026-03-01 02:00 UTC to 2026-03-01 02:20 UTC, 20 minutes, at up to 44 °F.')
     expect(assessment.why).toContain('Counted: 2026-03-01 03:40 UTC to 2026-03-01 04:00 UTC, 20 minutes, at up to 45 °F.')
     expect(assessment.act).toContain('before the deadline')
+  })
+
+  it('speaks of the last reading, and of no time without control before it was lost', () => {
+    expect(assess(log('us-food-code-2022/frozen', [[0, 20], [10, 15]])).why[0]).toContain('15 °F at 2026-03-01 02:10 UTC')
+    expect(assess(log('us-sf-dph/tcs', [[-20, 40], [-10, 47]], { now: 0 })).why[0]).toContain('47 °F at 0 minutes without control')
   })
 
   it('says what is from memory and what is common practice', () => {

@@ -7,7 +7,7 @@ import type { Assessment, Verdict } from '../../../server/utils/holding'
 import { convertDifference, convertTemperature } from '../../../server/utils/holding/units'
 import { at, DARK_AT } from './log'
 
-const RUNS = { numRuns: 60 }
+const RUNS = { numRuns: 40 }
 
 /** `unknown` is worse than within, since nobody looked, and milder than anything that a reading says. */
 const RANK: Record<Verdict, number> = { within: 0, unknown: 1, above: 2, act: 3, discard: 4 }

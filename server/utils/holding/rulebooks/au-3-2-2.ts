@@ -14,7 +14,7 @@ function twoHourFourHour(over: Threshold): ClockRule {
     overdueCounts: false,
     steps: [
       { minutes: 120, reached: 'at', verdict: 'act', act: 'Use or sell it now: it may not go back to cold holding.' },
-      { minutes: 240, reached: 'at', verdict: 'discard', act: 'Discard it: 4 hours or more between 5 and 60 °C.' },
+      { minutes: 240, reached: 'at', verdict: 'discard', act: 'Discard it: too long between cold and hot holding.' },
     ],
     act: 'Refrigerate or use it before the deadline.',
     authority: TWO_FOUR,

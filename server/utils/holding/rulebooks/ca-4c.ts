@@ -26,7 +26,7 @@ export const ca4c: Rulebook = {
             minutes: 120,
             reached: 'after',
             verdict: 'discard',
-            act: 'Discard it: more than 2 hours over the limit or without a reading.',
+            act: 'Discard it: too long over the limit or without a reading.',
           }],
           act: 'Cool it to the limit or below before the deadline.',
           authority: SHEET,

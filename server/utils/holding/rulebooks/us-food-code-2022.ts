@@ -22,7 +22,7 @@ const DISCARD_AFTER_FOUR_HOURS = {
   minutes: 240,
   reached: 'after',
   verdict: 'discard',
-  act: 'Discard it: more than 4 hours over the limit.',
+  act: 'Discard it: over the limit for longer than is allowed.',
 } as const
 
 export const usFoodCode2022: Rulebook = {
@@ -89,7 +89,7 @@ export const usFoodCode2022: Rulebook = {
           over: 41,
           counts: 'over',
           overdueCounts: false,
-          steps: [{ ...DISCARD_AFTER_FOUR_HOURS, act: 'Discard it: thawed and more than 4 hours over 41 °F.' }],
+          steps: [{ ...DISCARD_AFTER_FOUR_HOURS, act: 'Discard it: thawed and over 41 °F for longer than is allowed.' }],
           act: 'Refreeze it, or cool it to 41 °F or below, before the deadline.',
           authority: FROZEN_PRACTICE,
         },

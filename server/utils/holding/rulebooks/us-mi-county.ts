@@ -13,7 +13,7 @@ function line(over: Threshold, minutes: number, words: string): ClockRule {
     over,
     counts: 'at-or-over',
     overdueCounts: false,
-    steps: [{ minutes, reached: 'at', verdict: 'discard', act: `Discard it: ${words}.` }],
+    steps: [{ minutes, reached: 'at', verdict: 'discard', act: `Discard it: too long at ${words} or over.` }],
     act: 'Cool it to the limit or below before the deadline.',
     authority: GUIDANCE,
   }
@@ -34,9 +34,9 @@ export const usMiCounty: Rulebook = {
       lowMark: 30,
       hotFrom: null,
       rules: [
-        line(50, 120, '2 hours or more at 50 °F or over'),
-        line(46, 240, '4 hours or more at 46 °F or over'),
-        line('limit', 300, '5 hours or more at 41 °F or over'),
+        line(50, 120, '50 °F'),
+        line(46, 240, '46 °F'),
+        line('limit', 300, 'the limit itself'),
       ],
       choice: null,
       notes: [],

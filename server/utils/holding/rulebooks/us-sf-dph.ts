@@ -34,8 +34,8 @@ export const usSfDph: Rulebook = {
             {
               until: 120,
               cells: [
-                to45('above', null, 'Cool it to 41 °F or below.'),
-                below50('above', { to: 45, minutes: 120 }, 'Cool it to 45 °F or below within 2 hours.'),
+                to45('above', null, 'Cool it to the limit or below.'),
+                below50('above', { to: 45, minutes: 120 }, 'It may then be kept.'),
                 FROM_50,
               ],
             },
@@ -43,16 +43,16 @@ export const usSfDph: Rulebook = {
               // The chart's row is 2 to 3 hours; 3 to 4 hours is not on it and is read as this row.
               until: 240,
               cells: [
-                to45('above', { to: 'limit', minutes: 120 }, 'Cool it to 41 °F or below within 2 hours.'),
-                below50('act', { to: 45, minutes: 60 }, 'Cool it to 45 °F or below within 1 hour, or discard it.'),
+                to45('above', { to: 'limit', minutes: 120 }, 'It may then be kept.'),
+                below50('act', { to: 45, minutes: 60 }, 'Discard it if that fails.'),
                 FROM_50,
               ],
             },
             {
               until: null,
               cells: [
-                to45('act', { to: 'limit', minutes: 60 }, 'Cool it to 41 °F or below within 1 hour, or discard it.'),
-                below50('discard', null, 'Discard it: over 45 °F more than 4 hours after control was lost.'),
+                to45('act', { to: 'limit', minutes: 60 }, 'Discard it if that fails.'),
+                below50('discard', null, 'Discard it: over 45 °F too long after control was lost.'),
                 FROM_50,
               ],
             },

@@ -7,31 +7,31 @@ const TO_45: ChartCell<Threshold> = {
   included: true,
   verdict: 'above',
   ask: null,
-  act: 'It may be sold: cool it to 41 °F or below at once.',
+  act: 'It may be sold: cool it to the limit or below at once.',
 }
 const BELOW_51: ChartCell<Threshold> = {
   to: 51,
   included: false,
   verdict: 'above',
   ask: null,
-  act: 'It may be sold: cool it to 41 °F or below at once, before the deadline.',
+  act: 'It may be sold: cool it to the limit or below at once, before the deadline.',
 }
 const BELOW_51_TOO_LONG: ChartCell<Threshold> = {
   ...BELOW_51,
   verdict: 'discard',
-  act: 'Discard it: over 45 °F more than 4 hours after control was lost.',
+  act: 'Discard it: over 45 °F too long after control was lost.',
 }
 const FROM_51: ChartCell<Threshold> = {
   to: null,
   included: false,
   verdict: 'above',
   ask: null,
-  act: 'Cool it to 41 °F or below at once, before the deadline.',
+  act: 'Cool it to the limit or below at once, before the deadline.',
 }
 const FROM_51_TOO_LONG: ChartCell<Threshold> = {
   ...FROM_51,
   verdict: 'discard',
-  act: 'Discard it: 51 °F or over more than 2 hours after control was lost.',
+  act: 'Discard it: 51 °F or over too long after control was lost.',
 }
 
 export const usWaDoh: Rulebook = {
@@ -52,7 +52,7 @@ export const usWaDoh: Rulebook = {
         {
           kind: 'started-warm',
           verdict: 'act',
-          act: 'The chart is for food that was at 41 °F or below at the start: have a supervisor decide on this product now.',
+          act: 'The chart is for food that was within the limit at the start: have a supervisor decide on this product now.',
           authority: CHART,
         },
         {

@@ -4,8 +4,9 @@
  */
 import type { ChartCell, ChartRow, ChartRule } from '../types'
 import { MINUTE } from '../log'
+import type { LogReading } from '../log'
 import { isAtOrOver, isOver } from '../units'
-import { instantWords, minutesWords, temperatureWords } from '../words'
+import { allowedWords, instantWords, minutesWords, temperatureWords } from '../words'
 import type { Case, Finding, Outcome } from './finding'
 import { isWorse } from './finding'
 
@@ -32,21 +33,28 @@ function rowAt(rows: ChartRow<number>[], clock: number): { row: ChartRow<number>
   return { row, begins: index === 0 ? 0 : rows[index - 1]!.until! * MINUTE, index }
 }
 
-/** The first reading of the unbroken run over a temperature that reaches up to a reading, or that reading itself. */
-function runStart(of: Case, index: number, over: number): number {
-  const { readings } = of.log
-  let start = index
-  while (start > 0 && isOver(readings[start - 1]!.value, over)) start--
-  return readings[start]!.at
+/** For each reading, when the unbroken run of readings over a temperature began that reaches up to it, or its own instant. */
+function runStarts(readings: LogReading[], over: number): number[] {
+  let start = 0
+  return readings.map((_, index) => {
+    if (index > 0 && !isOver(readings[index - 1]!.value, over)) start = index
+    return readings[start]!.at
+  })
+}
+
+/** Run starts for every temperature that a chart asks for, worked out once. */
+function runsOf(rule: ChartRule<number>, readings: LogReading[]): Map<number, number[]> {
+  const asked = rule.rows.flatMap(({ cells }) => cells.flatMap(({ ask }) => ask ? [ask.to] : []))
+  return new Map(asked.map(to => [to, runStarts(readings, to)]))
 }
 
 /** Looks the chart up; `index` is the reading that the product was last seen at. */
-function lookUp(rule: ChartRule<number>, of: Case, clockStart: number, index: number, at: number, value: number): LookUp {
+function lookUp(rule: ChartRule<number>, runs: Map<number, number[]>, clockStart: number, index: number, at: number, value: number): LookUp {
   const clock = Math.max(0, at - clockStart)
   const { row, begins } = rowAt(rule.rows, clock)
   const cell = cellOf(row, value)
   const due = cell.verdict === 'act' && cell.ask
-    ? Math.max(runStart(of, index, cell.ask.to), clockStart + begins) + cell.ask.minutes * MINUTE
+    ? Math.max(runs.get(cell.ask.to)![index]!, clockStart + begins) + cell.ask.minutes * MINUTE
     : null
   return { at, value, clock, cell, due }
 }
@@ -54,13 +62,14 @@ function lookUp(rule: ChartRule<number>, of: Case, clockStart: number, index: nu
 /** Every look-up of a log in order, only of temperatures above the limit. */
 function lookUps(rule: ChartRule<number>, of: Case, clockStart: number): LookUp[] {
   const { readings } = of.log
+  const runs = runsOf(rule, readings)
   const found: LookUp[] = []
   readings.forEach((reading, index) => {
     const warmer = Math.max(reading.value, readings[index - 1]?.value ?? reading.value)
     for (const value of warmer > reading.value ? [warmer, reading.value] : [reading.value])
-      if (isOver(value, of.foodClass.limit)) found.push(lookUp(rule, of, clockStart, index, reading.at, value))
+      if (isOver(value, of.foodClass.limit)) found.push(lookUp(rule, runs, clockStart, index, reading.at, value))
   })
-  if (of.lastAbove) found.push(lookUp(rule, of, clockStart, readings.length - 1, of.log.now, of.last.value))
+  if (of.lastAbove) found.push(lookUp(rule, runs, clockStart, readings.length - 1, of.log.now, of.last.value))
   return found
 }
 
@@ -77,12 +86,11 @@ function comingVerdicts(rule: ChartRule<number>, here: LookUp, clockStart: numbe
 function outcomeOf(found: LookUp, rule: ChartRule<number>, of: Case): Outcome {
   const missed = found.due !== null && found.at > found.due
   const seen = `${temperatureWords(found.value, of.unit)} at ${minutesWords(found.clock)} without control`
-  const asked = found.cell.ask
-    ? `, to be at or below ${temperatureWords(found.cell.ask.to, of.unit)} within ${found.cell.ask.minutes} minutes`
-    : ''
+  const ask = found.cell.ask && `${temperatureWords(found.cell.ask.to, of.unit)} or below within ${allowedWords(found.cell.ask.minutes)}`
+  const asked = ask ? `, to be brought to ${ask}` : ''
   return {
     verdict: missed ? 'discard' : found.cell.verdict,
-    act: missed ? 'Discard: it was not cooled in the time that the chart gives.' : found.cell.act,
+    act: missed ? 'Discard it: it was not cooled in the time that the chart gives.' : ask ? `Bring it to ${ask}. ${found.cell.act}` : found.cell.act,
     reason: missed
       ? `${seen}${asked}, by ${instantWords(found.due!)}; it was not, which means discard`
       : `${seen} reads ${found.cell.verdict}${asked}`,
