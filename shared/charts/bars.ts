@@ -49,6 +49,8 @@ export interface BarsGeometry {
   ticks: { minute: number, x: number }[]
   curve: string
   workX: number
+  /** Where the words of the work begin or end, and where the line below them starts. */
+  workWords: { x: number, anchor: 'start' | 'end', lineTop: number }
   /** Between the end of the work and the shortest hold; `short` when the hold ends first. */
   margin: { x: number, width: number, y: number, minutes: number, short: boolean } | null
   rows: BarRow[]
@@ -56,6 +58,8 @@ export interface BarsGeometry {
 
 const barHeight = 30
 const curveHeight = 46
+/** Room for the words at the end of the work, set at 16 px. */
+const workWordsWidth = 264
 /** Space right of the longest bar for its words. */
 const wordsWidth = 84
 
@@ -93,7 +97,7 @@ export function bars({ width, cases, workMinutes, likelihood, labelWidth }: Bars
     }
   })
   const axisY = firstY + sorted.length * pitch + 2
-  const step = [5, 10, 20, 30, 60, 120, 240].find(minute => (right - left) / (end / minute) >= 44) ?? 480
+  const step = [5, 10, 20, 30, 60, 120, 240].find(minute => (right - left) / (end / minute) >= 56) ?? 480
   const peak = Math.max(...likelihood.map(point => point.density), 0)
   const baseline = workLabel + curveHeight
   const curve = area<{ minute: number, density: number }>()
@@ -102,6 +106,9 @@ export function bars({ width, cases, workMinutes, likelihood, labelWidth }: Bars
     .y1(point => baseline - (peak > 0 ? point.density / peak : 0) * (curveHeight - 4))
     .curve(curveMonotoneX)
     .digits(2)
+  const workX = x(workMinutes)
+  const fitsRight = workX + 10 + workWordsWidth <= width
+  const fitsLeft = workX - 10 - workWordsWidth >= 0
   const hold = sorted[0]?.plannedMinutes ?? null
   return {
     width,
@@ -113,7 +120,13 @@ export function bars({ width, cases, workMinutes, likelihood, labelWidth }: Bars
     gridTop,
     ticks: Array.from({ length: Math.floor(end / step) + 1 }, (_, index) => ({ minute: index * step, x: x(index * step) })),
     curve: likelihood.length > 1 ? curve([...likelihood].filter(point => point.minute <= end)) ?? '' : '',
-    workX: x(workMinutes),
+    workX,
+    // Where there is no room on either side the words stand across, and the line begins below them.
+    workWords: fitsRight
+      ? { x: workX + 10, anchor: 'start', lineTop: gridTop + 6 }
+      : fitsLeft
+        ? { x: workX - 10, anchor: 'end', lineTop: gridTop + 6 }
+        : { x: Math.max(0, width - workWordsWidth), anchor: 'start', lineTop: gridTop + 26 },
     margin: hold === null
       ? null
       : {

@@ -115,6 +115,16 @@ describe('bars', () => {
     expect(late.margin!.x + late.margin!.width).toBeCloseTo(late.workX)
   })
 
+  it('keeps the words of the work inside the drawing, on whichever side has room', () => {
+    expect(bars(input).workWords).toMatchObject({ anchor: 'start' })
+    const late = bars({ ...input, workMinutes: 60 }).workWords
+    expect(late.anchor).toBe('end')
+    const narrow = bars({ ...input, width: 300, labelWidth: 0, workMinutes: 60 })
+    expect(narrow.workWords.x).toBeGreaterThanOrEqual(0)
+    expect(narrow.workWords.x).toBeLessThan(40)
+    expect(narrow.workWords.lineTop).toBeGreaterThan(narrow.gridTop + 18)
+  })
+
   it('stands without cases and without a curve', () => {
     expect(bars({ ...input, cases: [], likelihood: [] })).toMatchObject({ rows: [], margin: null, curve: '' })
   })
