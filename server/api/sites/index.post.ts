@@ -1,0 +1,13 @@
+import { siteSchema } from '~~/shared/schemas/equipment'
+import { requirePerson } from '~~/server/utils/access'
+import { requireEditor } from '~~/server/utils/equipment/guards'
+import { createSite } from '~~/server/utils/equipment/sites'
+import { readBodyAs } from '~~/server/utils/parse'
+
+/** Makes a site, still without equipment. */
+export default defineEventHandler(async (event) => {
+  requireEditor(requirePerson(event))
+  const site = await createSite(await readBodyAs(event, siteSchema))
+  setResponseStatus(event, 201)
+  return site
+})

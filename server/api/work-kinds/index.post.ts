@@ -1,0 +1,13 @@
+import { workKindSchema } from '~~/shared/schemas/work'
+import { requirePerson } from '~~/server/utils/access'
+import { requireEditor } from '~~/server/utils/equipment/guards'
+import { createWorkKind } from '~~/server/utils/equipment/work-kinds'
+import { readBodyAs } from '~~/server/utils/parse'
+
+/** Makes a kind of work. */
+export default defineEventHandler(async (event) => {
+  requireEditor(requirePerson(event))
+  const kind = await createWorkKind(await readBodyAs(event, workKindSchema))
+  setResponseStatus(event, 201)
+  return kind
+})
