@@ -18,8 +18,9 @@ export function fetchDevices(): Promise<DeviceItem[]> {
   return $fetch<DeviceItem[]>('/api/devices')
 }
 
-export function revokeDevice(id: string): Promise<unknown> {
-  return $fetch(`/api/devices/${id}`, { method: 'DELETE' })
+export function revokeDevice(id: string): Promise<{ id: string, revokedAt: string }> {
+  const path: string = `/api/devices/${id}`
+  return $fetch<{ id: string, revokedAt: string }>(path, { method: 'DELETE' })
 }
 
 export function changePassword(current: string, next: string): Promise<unknown> {
