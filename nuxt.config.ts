@@ -43,7 +43,7 @@ export default defineNuxtConfig({
   nitro: {
     // pdfkit reads .woff; only the files that the record's PDF is set in.
     serverAssets: [
-      { baseName: 'fonts', dir: '../node_modules/@fontsource/ibm-plex-sans/files', pattern: 'ibm-plex-sans-latin-{400,600,700}-normal.woff' },
+      { baseName: 'fonts', dir: '../node_modules/@fontsource/ibm-plex-sans/files', pattern: 'ibm-plex-sans-{latin,latin-ext,cyrillic,greek,vietnamese}-{400,600,700}-normal.woff' },
       { baseName: 'mono', dir: '../node_modules/@fontsource/ibm-plex-mono/files', pattern: 'ibm-plex-mono-latin-400-normal.woff' },
     ],
     hooks: {

@@ -24,8 +24,20 @@ export function minuteWords(minutes: number): string {
   return whole === 0 ? '0 min' : durationWords(whole * 60)
 }
 
-function parts(iso: string, timeZone: string, options: Intl.DateTimeFormatOptions): Record<string, string> {
+/** Making a formatter costs a hundred times what using it does, and a long record asks thousands of times. */
+const formats = new Map<string, Intl.DateTimeFormat>()
+
+function formatOf(timeZone: string, options: Intl.DateTimeFormatOptions): Intl.DateTimeFormat {
+  const key = `${timeZone} ${JSON.stringify(options)}`
+  const known = formats.get(key)
+  if (known) return known
   const format = new Intl.DateTimeFormat('en-GB', { timeZone, ...options })
+  formats.set(key, format)
+  return format
+}
+
+function parts(iso: string, timeZone: string, options: Intl.DateTimeFormatOptions): Record<string, string> {
+  const format = formatOf(timeZone, options)
   return Object.fromEntries(format.formatToParts(new Date(iso)).map(part => [part.type, part.value]))
 }
 

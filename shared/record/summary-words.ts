@@ -82,16 +82,24 @@ export function attentionOf(summary: RecordSummary, breaches: readonly string[] 
     { what: 'Proofs due', items: summary.points.proofsDue > 0 ? [countWords(summary.points.proofsDue, 'point')] : [] },
     { what: 'Left by exception', items: summary.pointLines.filter(line => line.exception).map(line => `${line.tag}: ${line.exception!.owner}, by ${fullStampWords(line.exception!.until, timeZone)}: ${line.exception!.reason}`) },
     { what: 'Excused points', items: summary.pointLines.filter(line => line.excused && !line.inHand).map(line => `${line.tag}: ${line.excused!.reason}; instead: ${line.excused!.measure}`) },
-    { what: 'Verdicts', items: summary.verdicts.filter(line => line.verdict !== 'within').map(line => `${clock(line.at)} ${line.name} ${VERDICT_WORDS[line.verdict]}${line.clause ? ` (${line.clause})` : ''}`) },
+    { what: 'Verdicts', items: summary.verdicts.filter(line => line.verdict !== 'within' && line.verdict !== 'unknown').map(line => `${clock(line.at)} ${line.name} ${VERDICT_WORDS[line.verdict]}${line.clause ? ` (${line.clause})` : ''}`) },
     { what: 'Acts', items: summary.acts.map(act => `${clock(act.at)} ${act.name}: ${act.act.toLowerCase()}${[act.product, amount(act.quantity, act.unit), act.place].filter(Boolean).map(part => `, ${part}`).join('')}`) },
     { what: 'Decided otherwise', items: summary.decidedOtherwise.map(line => `${line.name}: ${line.reason}`) },
     { what: 'Late rounds', items: [...summary.rounds.lines.filter(line => line.late > 0).map(line => `Round ${line.round}: ${countWords(line.late, 'reading')} late, by ${minuteWords(line.latestBy)} at most`), ...(summary.rounds.never > 0 ? [`${countWords(summary.rounds.never, 'case')} not read when due`] : [])] },
+    { what: 'No reading in time', items: unreadWords(summary) },
     { what: 'Longer than planned', items: longerWords(summary) },
     { what: 'Clock differences', items: summary.clocks.map(line => `${line.deviceName} of ${line.name}: ${durationWords(Math.abs(line.ms) / 1000)} ${line.ms > 0 ? 'ahead' : 'behind'}, ${countWords(line.entries, 'entry', 'entries')}`) },
     { what: 'Corrections', items: summary.corrections.map(line => `No. ${line.seq}${line.of ? ` corrects No. ${line.of.seq}` : ''}: ${[line.now, line.reason].filter(Boolean).join(', ')}`) },
     { what: 'Refused entries', items: summary.refusals.map(line => `No. ${line.seq}: ${line.reason}`) },
   ]
   return list.filter(item => item.items.length > 0)
+}
+
+/** Cases whose verdict was not known for want of a reading, each with how often. */
+export function unreadWords({ verdicts }: RecordSummary): string[] {
+  const times = new Map<string, number>()
+  for (const line of verdicts) if (line.verdict === 'unknown') times.set(line.name, (times.get(line.name) ?? 0) + 1)
+  return [...times].map(([name, count]) => count === 1 ? name : `${name} (${count} times)`)
 }
 
 function longerWords({ dark }: RecordSummary): string[] {

@@ -1,0 +1,95 @@
+import PDFDocument from 'pdfkit'
+import type { StoredEntry } from '../../shared/record/entry'
+import { temperatureCharts } from '../../shared/record/record-charts'
+import type { OutageState } from '../../shared/record/state'
+import type { RecordSummary } from '../../shared/record/summary'
+import { hashWords } from '../../shared/record/summary-words'
+import { temperatureWords } from '../../shared/charts/words'
+import { drawTemperatures } from './charts'
+import { drawEntries, drawLooseEnds, drawProof } from './entry-sections'
+import type { FontBytes } from './fonts'
+import { drawFront } from './front'
+import { drawChecks, drawDarks, drawPlan } from './plan-sections'
+import { drawPoints, drawRounds, drawVerdicts } from './run-sections'
+import { COLOURS, MARGIN, paperSize, Sheet } from './sheet'
+import { Typesetter } from './typesetter'
+
+/** All that the paper is made from; the same input makes the same bytes. */
+export interface RecordPaper {
+  state: OutageState
+  entries: readonly StoredEntry[]
+  summary: RecordSummary
+  /** when the last entry was received, Unix ms: the date of the document */
+  now: number
+  /** seq → its signature fits its signer's key */
+  verified: ReadonlyMap<number, boolean>
+  /** whether the sealed root is that of the entries; null where there is no seal */
+  sealHolds: boolean | null
+  /** drawn signatures by hash, as PNG or JPEG without transparency */
+  drawings: ReadonlyMap<string, Uint8Array>
+  /** hashes of the files that the store holds */
+  held: ReadonlySet<string>
+}
+
+const CHART_HEIGHT = 168
+
+/**
+ * Starts the document. It is a stream to be read at once; `written` ends when all has been drawn.
+ * @throws nothing itself: `written` rejects, and the stream then ends with the same error
+ */
+export function openRecordPdf(paper: RecordPaper, fonts: FontBytes): { doc: PDFKit.PDFDocument, written: Promise<void> } {
+  const { heading } = paper.summary
+  const date = new Date(paper.now)
+  const title = `Record of a controller outage${heading.code ? ` ${heading.code}` : ''}: ${heading.site}, ${heading.controller}`
+  const doc = new PDFDocument({
+    autoFirstPage: false, bufferPages: true, size: paperSize(paper.state.snapshot.site.paper), margin: 0, pdfVersion: '1.7', tagged: true, lang: 'en', displayTitle: true,
+    // Without a font of its own the constructor would load a standard one that the paper does not use.
+    font: null as never,
+    info: { Title: title, Author: 'Holdover', Subject: `${heading.work}, ${heading.site}`, Creator: 'Holdover', Producer: 'Holdover', CreationDate: date, ModDate: date },
+  })
+  const written = draw(doc, paper, fonts)
+  written.catch((error: unknown) => doc.destroy(error instanceof Error ? error : new Error(String(error))))
+  return { doc, written }
+}
+
+async function draw(doc: PDFKit.PDFDocument, paper: RecordPaper, fonts: FontBytes): Promise<void> {
+  const type = new Typesetter(doc, fonts)
+  const sheet = new Sheet(doc, type, paper.state.snapshot.site.paper)
+  drawFront(sheet, paper)
+  drawCharts(sheet, paper)
+  await drawPlan(sheet, paper)
+  await drawChecks(sheet, paper)
+  await drawPoints(sheet, paper)
+  await drawDarks(sheet, paper)
+  await drawRounds(sheet, paper)
+  await drawVerdicts(sheet, paper)
+  await drawLooseEnds(sheet, paper)
+  await drawEntries(sheet, paper)
+  await drawProof(sheet, paper)
+  sheet.end()
+  drawFeet(sheet, paper)
+  doc.end()
+}
+
+function drawCharts(sheet: Sheet, { state, summary, now }: RecordPaper): void {
+  for (const chart of temperatureCharts(state, now)) {
+    sheet.begin(`Product temperatures, °${chart.unit}`, CHART_HEIGHT, `Product temperatures, limit ${temperatureWords(chart.limit, chart.unit)}`)
+    drawTemperatures(sheet, chart, summary.heading.timeZone, CHART_HEIGHT)
+    if (chart.left > 0) sheet.paragraph(`Drawn: the ${chart.cases.length} cases that came nearest to their limit; ${chart.left} more stand in the tables.`, { style: { size: 7.5 } })
+  }
+}
+
+/** Code, root and page number at the foot of every page. */
+function drawFeet({ doc, type, left, right, bottom }: Sheet, { state, summary }: RecordPaper): void {
+  const { start, count } = doc.bufferedPageRange()
+  const y = bottom + MARGIN.foot - 30
+  for (let page = start; page < start + count; page++) {
+    doc.switchToPage(page)
+    doc.markContent('Artifact', { type: 'Pagination' })
+    doc.moveTo(left, y - 12).lineTo(right, y - 12).lineWidth(0.9).stroke(COLOURS.ink)
+    const root = state.sealed ? `seal ${hashWords(state.sealed.root)}` : 'not sealed'
+    type.draw(`${summary.heading.code ?? 'not numbered'} · ${root}`, left, y, { face: 'mono', size: 7.5, colour: COLOURS['ink-2'] })
+    type.drawRight(`page ${page - start + 1} of ${count}`, right, y, { size: 8.5, colour: COLOURS['ink-2'] })
+    doc.endMarkedContent()
+  }
+}

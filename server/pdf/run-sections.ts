@@ -1,0 +1,122 @@
+import { clockWords, countWords, minuteWords, numberWords, temperatureWords } from '../../shared/charts/words'
+import { isoTime } from '../../shared/record/entry'
+import { VERDICT_WORDS } from '../../shared/record/kinds/server'
+import type { PointLine, VerdictLine } from '../../shared/record/record-lines'
+import { caseName, celsius, groupName, inUnit, isOver, judgedReadings, nameOf } from '../../shared/record/select'
+import { fullStampWords, unreadWords } from '../../shared/record/summary-words'
+import { handWords } from '../../shared/schemas/point-kinds'
+import type { PaperMark } from './marks'
+import { drawMark } from './marks'
+import type { RecordPaper } from './record'
+import type { Sheet } from './sheet'
+import { COLOURS } from './sheet'
+import type { Cell, Row } from './table'
+import { drawTable } from './table'
+
+function markOf(line: PointLine): PaperMark {
+  if (line.proven) return 'proven'
+  if (line.back === null && line.inHand) return 'hand'
+  return line.excused && !line.inHand ? 'excused' : 'auto'
+}
+
+/** Every point: in hand, seen, back in auto, proven; and those that were excused or left. */
+export async function drawPoints(sheet: Sheet, { summary }: RecordPaper): Promise<void> {
+  if (summary.pointLines.length === 0) return
+  const { timeZone } = summary.heading
+  const clock = (line: { at: number } | null) => line ? clockWords(isoTime(line.at), timeZone, true) : ''
+  sheet.begin('Points')
+  await drawTable(sheet, [
+    { label: 'Point', width: 62 }, { label: 'Name', width: 0.34 }, { label: 'Held', width: 52 }, { label: 'Seen', width: 0.26 }, { label: 'In hand', width: 44 }, { label: 'By', width: 0.2 }, { label: 'In auto', width: 44 }, { label: 'Proven', width: 44 },
+  ], summary.pointLines.map((line): Row => [
+    { text: line.tag, inset: 11, draw: (x, baseline) => drawMark(sheet.doc, markOf(line), x, baseline) },
+    line.name,
+    line.hand === null ? line.excused ? 'excused' : '' : handWords(line.hand),
+    [line.seen, line.excused && !line.inHand ? `${line.excused.reason}; instead: ${line.excused.measure}` : '', line.exception ? `left: ${line.exception.owner}, by ${fullStampWords(line.exception.until, timeZone)}: ${line.exception.reason}` : ''].filter(Boolean).join(' · '),
+    clock(line.inHand ?? line.excused),
+    (line.inHand ?? line.excused)?.by ?? '',
+    clock(line.back),
+    line.proven ? clock(line.proven) : line.back && line.backSeen !== 'answers' ? 'proof due' : '',
+  ]))
+  sheet.y += 3
+  sheet.paragraph('Marks: ring = in auto, filled square = in hand, ring with a tick = back and proven, ring with a bar = excused.', { style: { size: 7.5 } })
+}
+
+/** The rounds, then every product temperature by case and round. */
+export async function drawRounds(sheet: Sheet, paper: RecordPaper): Promise<void> {
+  const { summary, state } = paper
+  const { lines } = summary.rounds
+  if (lines.length === 0) return
+  const { timeZone } = summary.heading
+  const clock = (at: number) => clockWords(isoTime(at), timeZone, true)
+  sheet.begin('Rounds')
+  await drawTable(sheet, [
+    { label: 'Round', width: 38, align: 'right' }, { label: 'From', width: 50 }, { label: 'To', width: 50 }, { label: 'Cases', width: 38, align: 'right' }, { label: 'Racks', width: 38, align: 'right' }, { label: 'Nearest to its limit', width: 1 }, { label: 'Late', width: 110 },
+  ], lines.map(line => [
+    String(line.round), clock(line.from), clock(line.to), String(line.cases), String(line.racks),
+    line.nearest ? `${temperatureWords(line.nearest.value, line.nearest.unit)}, ${line.nearest.name}` : '',
+    line.late > 0 ? `${countWords(line.late, 'reading')}, by ${minuteWords(line.latestBy)}` : 'no',
+  ]))
+  await drawMatrix(sheet, paper)
+  if (state.pressures.length > 0) {
+    sheet.heading('Pressures')
+    await drawTable(sheet, [{ label: 'Round', width: 38, align: 'right' }, { label: 'Time', width: 50 }, { label: 'Suction group', width: 1 }, { label: 'Suction, psig', width: 76, align: 'right' }, { label: 'Discharge, psig', width: 84, align: 'right' }, { label: 'By', width: 90 }],
+      state.pressures.map(reading => [String(reading.round), clock(reading.at), groupName(state, reading.suctionGroupId), numberWords(reading.suctionPsig), reading.dischargePsig === null ? '–' : numberWords(reading.dischargePsig), nameOf(state, reading.by)]))
+  }
+}
+
+/** Rounds that stand side by side. */
+const ROUNDS_ACROSS = 9
+
+/** Product temperatures in the site's unit, cases down, rounds across; over the limit in heavy type. */
+async function drawMatrix(sheet: Sheet, { state, summary }: RecordPaper): Promise<void> {
+  const unit = state.snapshot.site.temperatureUnit
+  const rounds = summary.rounds.lines.filter(line => line.cases > 0).map(line => line.round)
+  const known = state.snapshot.cases.filter(item => (state.cases[item.id]?.readings.length ?? 0) > 0)
+  const each = Math.ceil(rounds.length / Math.ceil(rounds.length / ROUNDS_ACROSS))
+  for (let from = 0; from < rounds.length; from += each) {
+    const across = rounds.slice(from, from + each)
+    sheet.heading(`Temperatures, °${unit}, ${across.length === 1 ? `round ${across[0]}` : `rounds ${across[0]} to ${across.at(-1)}`}`)
+    await drawTable(sheet, [{ label: 'Case', width: 1 }, { label: 'Limit', width: 38, align: 'right' }, ...across.map(round => ({ label: String(round), width: 36, align: 'right' as const }))],
+      known.map((item): Cell[] => [item.name, numberWords(inUnit(celsius(item.limit.value, item.limit.unit), unit)), ...across.map((round): Cell => {
+        const reading = judgedReadings(state.cases[item.id]!).filter(taken => taken.round === round).at(-1)
+        if (!reading) return ''
+        const text = `${reading.method === 'product' ? '' : `${reading.method} `}${numberWords(inUnit(celsius(reading.value, reading.unit), unit))}${reading.correctedBy ? '*' : ''}`
+        return isOver(reading, item.limit) ? { text, style: { face: 'bold', colour: COLOURS.limit } } : text
+      })]))
+  }
+  sheet.y += 3
+  sheet.paragraph('Heavy and red: over the limit. *: corrected by a later entry. Readings without a word are product temperatures. Where a case was read twice in a round, the later reading stands here; both stand among the entries.', { style: { size: 7.5 } })
+}
+
+/** Verdicts but those that were only unknown for a while and within again. */
+function tellingVerdicts(verdicts: readonly VerdictLine[]): VerdictLine[] {
+  const before = new Map<string, VerdictLine['verdict']>()
+  return verdicts.filter((line) => {
+    const known = before.get(line.caseId) ?? 'within'
+    if (line.verdict !== 'unknown') before.set(line.caseId, line.verdict)
+    return line.verdict !== 'unknown' && line.verdict !== known
+  })
+}
+
+/** Verdicts as they changed, and what was done about them. */
+export async function drawVerdicts(sheet: Sheet, { summary, state }: RecordPaper): Promise<void> {
+  const { timeZone } = summary.heading
+  const clock = (at: number) => clockWords(isoTime(at), timeZone, true)
+  sheet.begin('Verdicts and acts')
+  sheet.paragraph(`Judged by ${state.snapshot.rulebook.name}, version ${state.snapshot.rulebook.version}. A verdict is entered when it changes; until the first one a case is within its limit.`)
+  const telling = tellingVerdicts(summary.verdicts)
+  if (telling.length > 0) {
+    await drawTable(sheet, [{ label: 'No.', width: 26 }, { label: 'Time', width: 46 }, { label: 'Case', width: 0.26 }, { label: 'Verdict', width: 0.3 }, { label: 'Gets worse', width: 50 }, { label: 'Rule', width: 0.44 }],
+      telling.map(line => [String(line.seq), clock(line.at), line.name, `${VERDICT_WORDS[line.verdict]}${line.minutesAbove > 0 ? `, ${minuteWords(line.minutesAbove)} above` : ''}`, line.deadline === null ? '' : clock(line.deadline), [`${line.source}, ${line.clause}`, line.act].filter(Boolean).join(': ')]))
+  } else {
+    sheet.paragraph('No case was found above its limit.')
+  }
+  const unread = unreadWords(summary)
+  if (unread.length > 0) { sheet.y += 4; sheet.paragraph(`Not known for a while, for want of a reading in time: ${unread.join(', ')}. Each such verdict stands among the entries.`) }
+  if (summary.acts.length > 0) {
+    sheet.heading('Acts')
+    await drawTable(sheet, [{ label: 'No.', width: 26 }, { label: 'Time', width: 46 }, { label: 'Case', width: 0.26 }, { label: 'Act', width: 0.26 }, { label: 'Product, quantity, place', width: 0.48 }, { label: 'By', width: 78 }],
+      summary.acts.map(act => [String(act.seq), clock(act.at), act.name, act.act, [act.product, act.quantity === null ? '' : `${act.quantity} ${act.unit}`.trim(), act.place, act.words].filter(Boolean).join(' · '), act.by]))
+  }
+  for (const line of summary.decidedOtherwise) { sheet.y += 4; sheet.paragraph(`No. ${line.seq}, ${clock(line.at)}: for ${line.name} ${line.by} decided otherwise: ${line.reason}`) }
+}

@@ -1,0 +1,26 @@
+/** What the engines add to a record that its own log does not hold. */
+import type { OutageState } from '../../../shared/record/state'
+import type { RecordFacts } from '../../../shared/record/summary'
+import { classById, rulebookById } from '../holding'
+import { lateReadings } from './for-outage'
+
+/**
+ * Late readings by the forecasts of that moment, and where the limits of the watched cases are written.
+ * @param until Unix ms; until when a case that was not read counts as overdue
+ */
+export function recordFacts(state: OutageState, until: number): RecordFacts {
+  return { late: lateReadings(state, until), limits: limitSources(state) }
+}
+
+/** "FDA Food Code 2022, 3-501.16(A)(2)", one for each class of food in the cases that are watched. */
+export function limitSources(state: OutageState): string[] {
+  const { rulebook: { id, version, name }, cases } = state.snapshot
+  const rulebook = rulebookById(id, version)
+  const watched = cases.filter(item => !item.runsAlone && state.cases[item.id]?.touched)
+  const sources = watched.flatMap((item) => {
+    const within = rulebook && classById(rulebook, item.foodClass)?.within
+    const own = item.stricter ? [`the site's own ${item.limit.value} °${item.limit.unit} for ${item.name}`] : []
+    return [within ? `${within.source}, ${within.clause}` : name, ...own]
+  })
+  return [...new Set(sources)]
+}
