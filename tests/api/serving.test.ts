@@ -54,8 +54,14 @@ describe('a server without the demo', () => {
   }, 120_000)
   afterAll(() => server?.stop())
 
-  it('is empty and waits for its first administrator', async () => {
-    expect((await visitor(server.url).send('GET', '/api/setup')).body).toEqual({ needed: true })
-    await expect(signIn(server.url, 'admin@quillfeather.example')).rejects.toThrow('was not let in')
+  it('is empty, and lets the administrator in whom the first visit makes', async () => {
+    const guest = visitor(server.url)
+    const person = { email: 'ada@quillfeather.example', name: 'Ada Brook', password: 'a long first password' }
+    expect((await guest.send('GET', '/api/setup')).body).toEqual({ needed: true })
+    await expect(signIn(server.url, person.email, person.password)).rejects.toThrow('was not let in')
+    expect((await guest.send('POST', '/api/setup', person)).status).toBe(201)
+    const client = await signIn(server.url, person.email, person.password)
+    expect((await client.send<{ user?: { email?: string } }>('GET', '/api/auth/session')).body.user?.email).toBe(person.email)
+    expect((await guest.send('GET', '/api/setup')).body).toEqual({ needed: false })
   })
 })
