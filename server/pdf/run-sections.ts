@@ -2,7 +2,7 @@ import { clockWords, countWords, minuteWords, numberWords, temperatureWords } fr
 import { isoTime } from '../../shared/record/entry'
 import { VERDICT_WORDS } from '../../shared/record/kinds/server'
 import type { PointLine, VerdictLine } from '../../shared/record/record-lines'
-import { caseName, celsius, groupName, inUnit, isOver, judgedReadings, nameOf } from '../../shared/record/select'
+import { celsius, groupName, inUnit, isOver, judgedReadings, nameOf } from '../../shared/record/select'
 import { fullStampWords, unreadWords } from '../../shared/record/summary-words'
 import { handWords } from '../../shared/schemas/point-kinds'
 import type { PaperMark } from './marks'

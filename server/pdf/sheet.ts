@@ -16,12 +16,12 @@ export function paperSize(paper: Paper): [number, number] {
 
 /** A column of pages: where the next thing goes, and which structure element it belongs to. */
 export class Sheet {
-  readonly left = MARGIN.side
+  readonly left: number = MARGIN.side
   readonly right: number
   readonly width: number
   readonly bottom: number
   /** the next free place, from the top of the page */
-  y = MARGIN.top
+  y: number = MARGIN.top
   private readonly root: Element
   private section: Element
 

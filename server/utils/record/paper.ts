@@ -1,0 +1,53 @@
+import type { StoredEntry } from '../../../shared/record/entry'
+import { foldLog } from '../../../shared/record/fold'
+import { sealHolds } from '../../../shared/record/record-document'
+import type { OutageState } from '../../../shared/record/state'
+import { summaryOf } from '../../../shared/record/summary'
+import type { FontBytes } from '../../pdf/fonts'
+import { readFonts } from '../../pdf/fonts'
+import type { RecordPaper } from '../../pdf/record'
+import type { Queries } from '../database'
+import { heldFiles } from '../files/keep'
+import { flattened } from '../files/picture'
+import { fileStorage, readBytes } from '../files/storage'
+import { recordFacts } from '../hold/record-facts'
+import type { OutageRow } from './log'
+import { readEntries } from './log'
+import { verifyEntries } from './verify'
+
+/** A record read from its log alone: no cached fold stands between the entries and the reader. */
+export async function readRecord(db: Queries, outage: OutageRow): Promise<{ entries: StoredEntry[], state: OutageState }> {
+  const entries = await readEntries(db, outage.id)
+  return { entries, state: foldLog(outage.id, entries) }
+}
+
+/** All that the PDF is made from. Its date is that of the last entry, so that the same record makes the same bytes. */
+export async function readPaper(db: Queries, outage: OutageRow): Promise<RecordPaper> {
+  const { entries, state } = await readRecord(db, outage)
+  const now = Date.parse(entries.at(-1)?.receivedAt ?? outage.openedAt.toISOString())
+  const held = await heldFiles(db, outage.id)
+  const summary = summaryOf(state, entries, recordFacts(state, now), now)
+  const drawings = new Map<string, Uint8Array>()
+  for (const { drawing, stands } of summary.signatures) {
+    const bytes = stands && held.has(drawing) ? await readBytes(fileStorage(), drawing) : null
+    if (bytes) drawings.set(drawing, await flattened(bytes))
+  }
+  return { state, entries, summary, now, verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held }
+}
+
+let fonts: Promise<FontBytes> | null = null
+
+/** The fonts that were built into the server. */
+export function paperFonts(): Promise<FontBytes> {
+  fonts ??= readFonts(async (name) => {
+    const bytes: unknown = await useStorage(name.startsWith('ibm-plex-mono') ? 'assets:mono' : 'assets:fonts').getItemRaw(name)
+    if (bytes instanceof Uint8Array) return bytes
+    return bytes instanceof ArrayBuffer ? new Uint8Array(bytes) : null
+  })
+  return fonts
+}
+
+/** The name of a downloaded file: the outage's code where it has one. */
+export function recordFileName(outage: { code: string }, extension: 'pdf' | 'csv' | 'json'): string {
+  return `${outage.code.replace(/[^A-Za-z0-9-]/g, '-')}.${extension}`
+}

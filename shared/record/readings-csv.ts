@@ -1,0 +1,62 @@
+import { happenedAt, isoTime } from './entry'
+import type { StoredEntry } from './entry'
+import { VERDICT_WORDS } from './kinds/server'
+import { acceptedOf } from './record-lines'
+import { caseName, nameOf } from './select'
+import type { OutageState, ReadingState } from './state'
+
+/** Excel reads UTF-8 only behind this mark. */
+const BYTE_ORDER_MARK = '\uFEFF'
+const HEAD = ['seq', 'round', 'case', 'time', 'time_utc', 'value', 'unit', 'value_signed', 'limit', 'limit_unit', 'method', 'instrument', 'by', 'verdict', 'standing', 'corrected', 'struck', 'words'] as const
+
+/**
+ * One cell by RFC 4180. Words that a spreadsheet would take for a formula get an apostrophe before
+ * them; numbers stay numbers, below zero too.
+ */
+export function csvCell(value: string | number | null): string {
+  if (value === null) return ''
+  if (typeof value === 'number') return String(value)
+  const safe = /^[=+\-@\t\r]/.test(value) ? `'${value}` : value
+  return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe
+}
+
+export function csvRow(cells: readonly (string | number | null)[]): string {
+  return `${cells.map(csvCell).join(',')}\r\n`
+}
+
+/** A time at the site with its offset: 2026-03-03T02:24:00-06:00. @param at Unix ms, cut to seconds */
+export function localTime(at: number, timeZone: string): string {
+  const second = Math.floor(at / 1000) * 1000
+  const parts = new Intl.DateTimeFormat('en-GB', { timeZone, timeZoneName: 'longOffset', year: 'numeric' }).formatToParts(new Date(second))
+  const name = (parts.find(part => part.type === 'timeZoneName')?.value ?? 'GMT').replace('GMT', '')
+  const [, sign = '+', hours = '00', minutes = '00'] = /^([+-])(\d{2}):(\d{2})/.exec(name) ?? []
+  const offset = (sign === '-' ? -1 : 1) * (Number(hours) * 60 + Number(minutes))
+  return `${isoTime(second + offset * 60_000).slice(0, 19)}${sign}${hours}:${minutes}`
+}
+
+/** Every reading of a record, in the order of the log, as CSV with a head. */
+export function readingsCsv(state: OutageState, entries: readonly StoredEntry[]): string {
+  const folded = new Map<string, ReadingState>(Object.values(state.cases).flatMap(item => item.readings.map(reading => [reading.entry, reading])))
+  const rows = entries.flatMap((stored) => {
+    const { entry } = stored
+    if (entry.kind !== 'reading-taken') return []
+    const { body } = entry
+    const reading = folded.get(entry.id)
+    const limit = state.snapshot.cases.find(item => item.id === body.caseId)?.limit ?? null
+    const instrument = state.snapshot.instruments.find(item => item.id === body.instrumentId)?.name ?? null
+    return [csvRow([
+      stored.seq, body.round, caseName(state, body.caseId), localTime(happenedAt(entry), state.snapshot.site.timeZone), isoTime(happenedAt(entry)),
+      reading?.struck ? null : reading?.value ?? body.value, body.unit, body.value, limit?.value ?? null, limit?.unit ?? null, body.method, instrument, nameOf(state, entry.by),
+      verdictThen(state, entries, body.caseId, stored), stored.standing, reading?.correctedBy ? 'yes' : 'no', reading?.struck ? 'yes' : 'no', body.words,
+    ])]
+  })
+  return BYTE_ORDER_MARK + csvRow(HEAD) + rows.join('')
+}
+
+/** The verdict in force once a reading had been judged: the last one entered by the time it was received; null before control was lost. */
+function verdictThen(state: OutageState, entries: readonly StoredEntry[], caseId: string, reading: StoredEntry): string | null {
+  const last = acceptedOf(entries, 'verdict-changed').filter(({ stored, entry }) => entry.body.caseId === caseId && stored.receivedAt <= reading.receivedAt).at(-1)
+  if (last) return VERDICT_WORDS[last.entry.body.verdict]
+  const dark = state.darks[0]
+  return dark && happenedAt(reading.entry) >= dark.from ? VERDICT_WORDS.within : null
+}
