@@ -2,7 +2,7 @@
  * The network of steps: critical path and slack by the mean durations.
  * Three-time estimate of PERT (Malcolm, Roseboom, Clark, Fazar, Operations Research 7, 1959).
  */
-import type { DurationStep } from '../../../shared/schemas/plan-duration'
+import type { DurationStep } from '~~/shared/schemas/plan-duration'
 import { Graph } from '../order/graph'
 
 /** Times closer than this are the same, minutes: sums of fractions of minutes are not exact. */

@@ -1,5 +1,5 @@
-import { parseWith, type Parsed } from '../../../shared/schemas/parsed'
-import { planDurationSchema, type PlanDurationInput } from '../../../shared/schemas/plan-duration'
+import { parseWith, type Parsed } from '~~/shared/schemas/parsed'
+import { planDurationSchema, type PlanDurationInput } from '~~/shared/schemas/plan-duration'
 import { networkOf } from './network'
 
 /**

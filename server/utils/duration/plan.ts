@@ -1,4 +1,4 @@
-import type { PlanDurationInput } from '../../../shared/schemas/plan-duration'
+import type { PlanDurationInput } from '~~/shared/schemas/plan-duration'
 import { durationDrawer, uniformStream } from './draw'
 import { criticalPath, networkOf, SAME_MINUTES, slackOf, type Network } from './network'
 import { normalBelow, Z_19_IN_20 } from './normal'

@@ -1,6 +1,6 @@
 /** What the engines add to a record that its own log does not hold. */
-import type { OutageState } from '../../../shared/record/state'
-import type { RecordFacts } from '../../../shared/record/summary'
+import type { OutageState } from '~~/shared/record/state'
+import type { RecordFacts } from '~~/shared/record/summary'
 import { classById, rulebookById } from '../holding'
 import { lateReadings } from './for-outage'
 

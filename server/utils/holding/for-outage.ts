@@ -1,14 +1,18 @@
 /** The rule engine asked about a case of a real outage. */
-import { isoTime } from '../../../shared/record/entry'
-import { firstDarkAt, judgedReadings } from '../../../shared/record/select'
-import type { OutageState } from '../../../shared/record/state'
+import { isoTime } from '~~/shared/record/entry'
+import { firstDarkAt, judgedReadings } from '~~/shared/record/select'
+import type { SnapshotCase } from '~~/shared/record/snapshot'
+import type { OutageState } from '~~/shared/record/state'
 import { assess } from './judge'
 import { limitFor } from './rulebooks'
 import type { Assessment } from './types'
 
+/** Verdicts from the best to the worst. */
+const RANK: Record<Assessment['verdict'], number> = { within: 0, unknown: 1, above: 2, act: 3, discard: 4 }
+
 /**
  * The verdict on a case at a moment, or null while there is nothing to judge: no loss of control
- * yet, no reading, or nothing left in the case.
+ * yet, no reading, or nothing left in the case. A questioned reading can make it worse, never better.
  * @param now Unix ms
  */
 export function assessCase(state: OutageState, caseId: string, now: number): Assessment | null {
@@ -16,7 +20,15 @@ export function assessCase(state: OutageState, caseId: string, now: number): Ass
   const item = state.cases[caseId]
   const darkAt = firstDarkAt(state)
   if (!known || !item || darkAt === null || darkAt > now) return null
-  const readings = oneInstantEach(judgedReadings(item).filter(reading => reading.at <= now))
+  const readings = judgedReadings(item).filter(reading => reading.at <= now)
+  const firm = readings.filter(reading => !reading.questioned)
+  const all = assessReadings(state, known, darkAt, readings, now)
+  const without = firm.length < readings.length ? assessReadings(state, known, darkAt, firm, now) : all
+  return without && all && RANK[without.verdict] > RANK[all.verdict] ? without : all
+}
+
+function assessReadings(state: OutageState, known: SnapshotCase, darkAt: number, taken: Reading[], now: number): Assessment | null {
+  const readings = oneInstantEach(taken)
   if (readings.length === 0) return null
   const unit = state.snapshot.site.temperatureUnit
   return assess({

@@ -1,5 +1,5 @@
 /** A machine and its drives are dealt with in one go: a block of the order. */
-import type { OrderDirection } from '../../../shared/schemas/plan-order'
+import type { OrderDirection } from '~~/shared/schemas/plan-order'
 import { compareNaturally } from './compare'
 import { Graph } from './graph'
 import type { Placed } from './layout'

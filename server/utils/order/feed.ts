@@ -2,7 +2,7 @@
  * Which circuits feed a compressor: rule I1 asks for one whose liquid valves are open and whose
  * evaporator fans are on.
  */
-import type { PointKind } from '../../../shared/schemas/point-kinds'
+import type { PointKind } from '~~/shared/schemas/point-kinds'
 import { sharesGroup, type Placed } from './layout'
 
 export interface Circuit {

@@ -6,8 +6,8 @@
  * these is known share one unnamed rack. A point without a suction group takes those of its
  * circuit; without either it belongs to the whole rack.
  */
-import { isHandActive, isHandAtRest } from '../../../shared/schemas/point-kinds'
-import type { OrderPoint } from '../../../shared/schemas/plan-order'
+import { isHandActive, isHandAtRest } from '~~/shared/schemas/point-kinds'
+import type { OrderPoint } from '~~/shared/schemas/plan-order'
 
 /** The rack of points that name none. */
 export const UNNAMED_RACK = ''

@@ -1,5 +1,5 @@
-import { parseWith, type Parsed } from '../../../shared/schemas/parsed'
-import { planOrderSchema, type OrderPoint, type PlanOrderInput } from '../../../shared/schemas/plan-order'
+import { parseWith, type Parsed } from '~~/shared/schemas/parsed'
+import { planOrderSchema, type OrderPoint, type PlanOrderInput } from '~~/shared/schemas/plan-order'
 import { Graph } from './graph'
 import { circuitOnTwoRacks } from './layout'
 import { findRing, ringWords } from './plan'

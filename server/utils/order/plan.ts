@@ -1,4 +1,4 @@
-import type { PlanOrderInput } from '../../../shared/schemas/plan-order'
+import type { PlanOrderInput } from '~~/shared/schemas/plan-order'
 import { layOut } from './layout'
 import { findRefusals, type Refusal } from './refusals'
 import { arrange } from './sequence'

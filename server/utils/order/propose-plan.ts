@@ -1,6 +1,6 @@
-import type { Plan } from '../../../shared/record/plan'
-import type { Snapshot } from '../../../shared/record/snapshot'
-import type { StepPlan } from '../../../shared/schemas/work'
+import type { Plan } from '~~/shared/record/plan'
+import type { Snapshot } from '~~/shared/record/snapshot'
+import type { StepPlan } from '~~/shared/schemas/work'
 import { planDuration } from '../duration'
 import { inHandOrder, proposePoints } from './for-outage'
 

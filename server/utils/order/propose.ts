@@ -1,5 +1,5 @@
 /** The hand position that the product proposes for a point, before the technician changes it. */
-import { isAlarm, isHandActive, isHandAtRest, type HandPosition, type PointKind } from '../../../shared/schemas/point-kinds'
+import { isAlarm, isHandActive, isHandAtRest, type HandPosition, type PointKind } from '~~/shared/schemas/point-kinds'
 
 export interface ProposablePoint {
   kind: PointKind

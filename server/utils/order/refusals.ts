@@ -2,8 +2,8 @@
  * Which points may not be put in hand, or handed back, as asked: rules I1, I2, I3, I7, I9 and I12.
  * One refusal a point, by the first rule that it breaks.
  */
-import type { PlanOrderInput } from '../../../shared/schemas/plan-order'
-import { isAlarm } from '../../../shared/schemas/point-kinds'
+import type { PlanOrderInput } from '~~/shared/schemas/plan-order'
+import { isAlarm } from '~~/shared/schemas/point-kinds'
 import { circuitsOf, countsAsFed, feeding, isLiquidValve, type Circuit } from './feed'
 import { sharesScope, type Placed } from './layout'
 import { lastMediumFirst } from './stages'

@@ -2,7 +2,7 @@
  * The order of the points: a directed graph from the sequence of the trade, rule I12 and the
  * equipment's own links, sorted topologically; ties by place, then stage, then tag.
  */
-import type { OrderDirection, PlanOrderInput } from '../../../shared/schemas/plan-order'
+import type { OrderDirection, PlanOrderInput } from '~~/shared/schemas/plan-order'
 import { blocksOf, type Blocks } from './blocks'
 import { compareNaturally } from './compare'
 import { Graph } from './graph'

@@ -3,8 +3,8 @@
  * Common practice, no published source: loads that add heat first, then what carries heat away,
  * then what feeds the machines, then the machines; and the machines first on the way back.
  */
-import type { OrderDirection } from '../../../shared/schemas/plan-order'
-import { isAlarm, isHandAtRest, isValve, type PointKind } from '../../../shared/schemas/point-kinds'
+import type { OrderDirection } from '~~/shared/schemas/plan-order'
+import { isAlarm, isHandAtRest, isValve, type PointKind } from '~~/shared/schemas/point-kinds'
 import { compareNaturally } from './compare'
 import { sharesScope, type Placed } from './layout'
 

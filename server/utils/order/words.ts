@@ -1,5 +1,5 @@
 /** Why a point stands where it stands, in words for the person who goes there. */
-import type { PlanOrderInput } from '../../../shared/schemas/plan-order'
+import type { PlanOrderInput } from '~~/shared/schemas/plan-order'
 import { assumptions, circuitsOf, countsAsFed, feeding, isLiquidValve, type Circuit } from './feed'
 import type { Placed } from './layout'
 import { stageOf, type Stage } from './stages'

@@ -1,4 +1,4 @@
-import type { PlanWindowInput } from '../../../shared/schemas/plan-window'
+import type { PlanWindowInput } from '~~/shared/schemas/plan-window'
 import { DAY, localClock, MINUTE, wallWords, type LocalClock } from './local-time'
 import { avoidedBetween, defrostsBetween, type Defrost, type Stretch } from './schedule'
 

@@ -1,5 +1,5 @@
 /** What lies in the way of a window: defrosts of the circuits, and stretches that the site avoids. */
-import type { Avoid, WindowCircuit } from '../../../shared/schemas/plan-window'
+import type { Avoid, WindowCircuit } from '~~/shared/schemas/plan-window'
 import { DAY, midnightOf, MINUTE, minutesOfDay, weekdayOf, type LocalClock } from './local-time'
 
 export interface Defrost {
