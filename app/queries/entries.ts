@@ -25,6 +25,6 @@ export async function pushEntries(outage: string, entries: { entry: AnyEntry, si
 
 /** Puts a photo or drawing; false when it must be tried later. */
 export async function putFile(outage: string, sha256: string, blob: Blob): Promise<boolean> {
-  const answer = await $fetch.raw(`/api/outages/${outage}/files/${sha256}`, { method: 'PUT', body: blob, headers: { 'content-type': blob.type }, retry: 0, timeout: 60_000, ignoreResponseError: true }).catch(() => null)
+  const answer = await fetch(`/api/outages/${outage}/files/${sha256}`, { method: 'PUT', body: blob, headers: { 'content-type': blob.type }, signal: AbortSignal.timeout(60_000) }).catch(() => null)
   return answer !== null && (answer.ok || answer.status === 422 || answer.status === 413)
 }
