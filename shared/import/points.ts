@@ -6,9 +6,7 @@ import { parse } from 'csv-parse/sync'
 import { POINTS_MAX } from '../schemas/equipment'
 import type { PointCells, PointColumn } from './columns'
 import { POINT_COLUMNS, READ_CELL, REQUIRED_COLUMNS } from './columns'
-
-/** Bytes of a point list, as UTF-8. */
-export const FILE_MAX_BYTES = 2_000_000
+import { FILE_MAX_BYTES } from './limits'
 
 /** Why something cannot land. Rows count as a spreadsheet counts them: the header is row 1. Null: the whole file. */
 export interface ImportFault { row: number | null, column: string | null, reason: string }

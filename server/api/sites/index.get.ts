@@ -5,5 +5,5 @@ import { listSites } from '~~/server/utils/equipment/site-view'
 /** The sites that the person may see. */
 export default defineEventHandler(async (event) => {
   const person = requirePerson(event)
-  return { items: await listSites(useDatabase(), person) }
+  return listSites(useDatabase(), person)
 })
