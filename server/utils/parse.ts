@@ -17,7 +17,7 @@ export async function readJson(event: H3Event, maxBytes = BODY_MAX): Promise<unk
   if (declared > maxBytes) return tooLarge(`At most ${maxBytes} bytes`)
   const text = await readRawBody(event, 'utf8')
   if (!text) return unreadable('The body is empty; send JSON')
-  if (text.length > maxBytes) return tooLarge(`At most ${maxBytes} bytes`)
+  if (Buffer.byteLength(text) > maxBytes) return tooLarge(`At most ${maxBytes} bytes`)
   try {
     return JSON.parse(text)
   } catch {

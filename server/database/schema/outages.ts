@@ -66,6 +66,8 @@ export const refusals = pgTable('refusals', {
   n: integer().notNull(),
   id: uuid().notNull(),
   hash: text().notNull(),
+  code: integer().$type<403 | 409 | 413 | 422>().notNull(), // the answer's status and field, for replays
+  field: text(),
   reason: text().notNull(),
   seq: integer().notNull(), // of the server's entry that names it
 }, table => [

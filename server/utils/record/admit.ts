@@ -43,9 +43,9 @@ export async function admit(db: Queries, person: Person, state: OutageState, ite
   if (entry.by !== person.id) return wrong(403, 'An entry is sent by the person who signed it')
   const text = textOf(entry)
   if (text === null) return wrong(422, 'The entry has no canonical form', `${at}.entry`)
-  if (text.length > ENTRY_MAX_BYTES) return wrong(413, `An entry takes at most ${ENTRY_MAX_BYTES} bytes`)
+  if (Buffer.byteLength(text) > ENTRY_MAX_BYTES) return wrong(413, `An entry takes at most ${ENTRY_MAX_BYTES} bytes`)
 
-  const earlier = await earlierAnswer(db, entry, sha256Hex(text))
+  const earlier = await earlierAnswer(db, entry, sha256Hex(text), at)
   if (earlier) return { done: earlier }
 
   const [device] = await db.select().from(devices).where(and(eq(devices.id, entry.device), eq(devices.personId, person.id)))
@@ -65,6 +65,7 @@ function checkBody(entry: AnyEntry, signature: string, at: string): Admitted {
   const schema = schemaOf(entry.kind, entry.v)
   // A newer version than this server knows waits on the phone: nothing is recorded.
   if (!schema) return { done: refuse(entry.id, 422, `This server does not know version ${entry.v} of "${entry.kind}" yet`, `${at}.entry.v`) }
+  if (holdsNul(entry.body)) return faulty('A text holds the character NUL', `${at}.entry.body`)
   const body = schema.safeParse(entry.body)
   if (!body.success) {
     const { field, reason } = firstFault(body.error)
@@ -74,18 +75,24 @@ function checkBody(entry: AnyEntry, signature: string, at: string): Admitted {
   return { entry, signature }
 }
 
+/** NUL stands in no text that a person writes, and the database keeps none. */
+function holdsNul(value: unknown): boolean {
+  if (typeof value === 'string') return value.includes('\0')
+  return typeof value === 'object' && value !== null && Object.values(value).some(holdsNul)
+}
+
 function textOf(entry: AnyEntry): string | null {
   try { return canonicalText(entry) } catch { return null }
 }
 
 /** The first answer to the same bytes; 409 where the id came with other bytes. */
-async function earlierAnswer(db: Queries, entry: AnyEntry, hash: string): Promise<PushResult | null> {
+async function earlierAnswer(db: Queries, entry: AnyEntry, hash: string, at: string): Promise<PushResult | null> {
   const other = refuse(entry.id, 409, 'This id was used for another entry')
   const [row] = await db.select().from(entries).where(eq(entries.id, entry.id))
   if (row) return row.hash === hash && row.outageId === entry.outage ? { id: row.id, status: row.standing, seq: row.seq, receivedAt: row.receivedAt.toISOString(), why: row.why } : other
   const [refused] = await db.select().from(refusals).where(eq(refusals.id, entry.id))
   if (!refused) return null
-  return refused.hash === hash && refused.outageId === entry.outage ? { id: entry.id, status: 'refused', code: 422, field: null, reason: refused.reason, recorded: true } : other
+  return refused.hash === hash && refused.outageId === entry.outage ? { id: entry.id, status: 'refused', code: refused.code, field: refused.field === null ? null : `${at}.${refused.field}`, reason: refused.reason, recorded: true } : other
 }
 
 function idOf(item: unknown): string | null {

@@ -9,11 +9,12 @@ import { maySeeSite } from '../access'
 import type { Database, Queries } from '../database'
 import { notFound } from '../errors'
 import type { PushResult, Refusal } from './admit'
-import { admit } from './admit'
+import { admit, refuse } from './admit'
 import type { Draft } from './draft'
 import { addEntry, addServerEntry, saveProjection } from './draft'
 import { followUp } from './follow'
 import { readState } from './log'
+import type { OutageRow } from './log'
 import { serverSigner } from './server-signer'
 import { surroundingsOf } from './surroundings'
 
@@ -29,7 +30,7 @@ export interface PushAnswer { results: PushResult[], size: number, phase: string
 export async function appendEntries(db: Database, person: Person, outageId: string, items: unknown[], now: number): Promise<PushAnswer> {
   return db.transaction(async (tx) => {
     const signer = await serverSigner(tx)
-    const [row] = await tx.select().from(outages).where(eq(outages.id, outageId)).for('update')
+    const row = await lockOutage(tx, outageId)
     if (row && !await maySeeSite(person, row.siteId, tx)) notFound('outage')
     if (!row && !isOpening(items[0])) notFound('outage')
     const draft: Draft = { db: tx, signer, now, state: row ? await readState(tx, row) : emptyState(outageId) }
@@ -44,12 +45,25 @@ export async function appendEntries(db: Database, person: Person, outageId: stri
   })
 }
 
+/** The outage's row, locked; null where it is still to be opened, and then nobody else opens it meanwhile. */
+async function lockOutage(tx: Queries, id: string): Promise<OutageRow | null> {
+  const find = () => tx.select().from(outages).where(eq(outages.id, id)).for('update')
+  const [row] = await find()
+  if (row) return row
+  await tx.execute(sql`select pg_advisory_xact_lock(hashtextextended(${id}, 0))`)
+  const [opened] = await find()
+  return opened ?? null
+}
+
 async function appendOne(draft: Draft, person: Person, item: unknown, at: string): Promise<PushResult> {
   const admitted = await admit(draft.db, person, draft.state, item, at)
   if ('done' in admitted) return admitted.done
   if ('faulty' in admitted) return recordRefusal(draft, admitted.faulty, admitted.refusal)
   const { entry, signature } = admitted
   const { standing, why } = judge(draft.state, entry, person, await surroundingsOf(draft.db, draft.state, entry))
+  // There is no log yet to keep a questioned entry in, nor one that comes before the opening.
+  if (draft.state.opened === null && entry.kind !== 'outage-opened') return refuse(entry.id, 409, 'This outage is not open yet', `${at}.entry.outage`)
+  if (draft.state.opened === null && standing === 'questioned') return refuse(entry.id, 422, why.join('; '), `${at}.entry.body.lostAt`)
   if (standing === 'refused') return recordRefusal(draft, entry, { id: entry.id, status: 'refused', code: 403, field: null, reason: why.join('; '), recorded: true })
   if (entry.kind === 'outage-opened' && draft.state.opened === null) await openOutage(draft, person, entry)
   const stored = await addEntry(draft, entry, signature, standing, why)
@@ -63,8 +77,13 @@ async function recordRefusal(draft: Draft, entry: AnyEntry, refusal: Refusal): P
   const { device, n, id } = entry
   const hash = entryHash(entry)
   const stored = await addServerEntry(draft, 'entry-refused', { device, n, id, hash, reason: refusal.reason.slice(0, 1000) })
-  await draft.db.insert(refusals).values({ outageId: entry.outage, deviceId: device, n, id, hash, reason: refusal.reason, seq: stored.seq })
+  await draft.db.insert(refusals).values({ outageId: entry.outage, deviceId: device, n, id, hash, code: refusal.code, field: withinItem(refusal.field), reason: refusal.reason, seq: stored.seq })
   return refusal
+}
+
+/** A field without the item's place in this push, which another push need not share. */
+function withinItem(field: string | null): string | null {
+  return field?.replace(/^entries\[\d+\]\./, '') ?? null
 }
 
 async function openOutage(draft: Draft, person: Person, entry: Entry<'outage-opened'>): Promise<void> {

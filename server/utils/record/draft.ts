@@ -41,16 +41,19 @@ export async function addServerEntry<K extends ServerKind>(draft: Draft, kind: K
   return addEntry(draft, entry, signBytes(entryBytes(entry), draft.signer.key), 'accepted', [])
 }
 
-/** A signer's printed name, role and key enter the log before their first entry. */
+/** A signer's printed name, role and key enter the log before their first entry; the server, which names others, names itself first. */
 async function nameSigner(draft: Draft, entry: AnyEntry): Promise<void> {
-  if (entry.kind === 'signer-named' || draft.state.signers[entry.device]) return
   const { signer } = draft
-  if (entry.device === signer.device) {
+  if (!draft.state.signers[signer.device] && !namesDevice(entry, signer.device)) {
     await addServerEntry(draft, 'signer-named', { device: signer.device, deviceName: 'Holdover server', person: SERVER, name: 'Holdover', role: 'server', publicKey: signer.publicKey, enrolledAt: signer.enrolledAt.toISOString() })
-    return
   }
+  if (entry.device === signer.device || draft.state.signers[entry.device]) return
   const [row] = await draft.db.select({ device: devices, person: people }).from(devices).innerJoin(people, eq(people.id, devices.personId)).where(eq(devices.id, entry.device))
   await addServerEntry(draft, 'signer-named', { device: row!.device.id, deviceName: row!.device.name, person: row!.person.id, name: row!.person.name, role: row!.person.role, publicKey: row!.device.publicKey, enrolledAt: row!.device.enrolledAt.toISOString() })
+}
+
+function namesDevice(entry: AnyEntry, device: string): boolean {
+  return entry.kind === 'signer-named' && entry.body.device === device
 }
 
 /** Writes the projection that lists and screens read. */
