@@ -17,10 +17,10 @@ export function panelCaution(state: OutageState): Caution {
 }
 
 const FIXED = {
-  'leak': { hazard: 'warning', words: 'Refrigerant leak alarms may be silent while the controller is away. Carry a portable detector, or stay out of the machinery room.' },
-  'standstill': { hazard: 'warning', words: 'Carbon dioxide at a standstill: pressure rises towards that of the warmest wet place, and a relief valve may lift. Stay clear of its outlet.' },
-  'heater': { hazard: 'caution', words: 'Heaters and anti-sweat elements stay hot after they are switched off.' },
-  'food': { hazard: 'notice', words: 'Product over its limit is dealt with as the rulebook says. When in doubt, ask the authority.' },
+  leak: { hazard: 'warning', words: 'Refrigerant leak alarms may be silent while the controller is away. Carry a portable detector, or stay out of the machinery room.' },
+  standstill: { hazard: 'warning', words: 'Carbon dioxide at a standstill: pressure rises towards that of the warmest wet place, and a relief valve may lift. Stay clear of its outlet.' },
+  heater: { hazard: 'caution', words: 'Heaters and anti-sweat elements stay hot after they are switched off.' },
+  food: { hazard: 'notice', words: 'Product over its limit is dealt with as the rulebook says. When in doubt, ask the authority.' },
 } as const satisfies Record<string, Omit<Caution, 'id'>>
 
 /** Cautions that apply to an outage as a whole. */

@@ -58,12 +58,13 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     if (!point) return
     point.questionedHand = null
     if (point.kind === 'compressor') point.stoppedAt = body.seen === 'not-running' ? mark.at : null
-    if (body.seen !== expectedSeen(point.kind, body.hand)) { point.tried = { seen: body.seen, mark }; return }
+    if (body.seen !== expectedSeen(point.kind, body.hand)) { Object.assign(point, { tried: { seen: body.seen, mark }, exception: null }); return }
     Object.assign(point, { status: 'hand', hand: body.hand, seen: body.seen, value: body.value, until: Date.parse(body.until), reason: body.reason, words: body.words, photos: body.photos, mark, tried: null, excuse: null, exception: null, proof: null })
   },
   'point-excused': (state, { body }, mark) => {
     const point = state.points[body.tag]
-    if (point) Object.assign(point, { status: 'excused', hand: null, tried: null, excuse: { reason: body.reason, measure: body.measure }, photos: body.photos, mark })
+    // A try that did not come out may have left its selector in hand: it counts until it is seen back in auto.
+    if (point) Object.assign(point, { status: 'excused', hand: null, excuse: { reason: body.reason, measure: body.measure }, photos: body.photos, mark })
   },
   'point-in-auto': (state, { body }, mark) => {
     const point = state.points[body.tag]
@@ -108,8 +109,8 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     beginDark(state, correctedTime(entry, entry.body.lostAt), 'fact', entry.body.words, breach, mark)
   },
   'step-ticked': (state, { body }, mark) => {
-    const step = state.steps[body.step] ??= { begun: null, done: null }
-    step[body.state] = mark
+    const known = Object.hasOwn(state.steps, body.step) ? state.steps[body.step] : undefined
+    state.steps[body.step] = { begun: null, done: null, ...known, [body.state]: mark }
   },
   'turned-back': (state, { body }, mark) => { state.turnedBack = { reason: body.reason, mark } },
   'control-back': (state, entry) => {
@@ -128,15 +129,15 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
       const reading = item.readings.find(known => known.entry === body.corrects)
       if (!reading) continue
       reading.correctedBy = mark.entry
-      if (body.reading === 'struck') reading.struck = true
-      else reading.value = body.reading.value
+      reading.struck = body.reading === 'struck'
+      if (body.reading !== 'struck') reading.value = body.reading.value
     }
   },
   'questioned-settled': (state, { body }, mark) => {
     const item = state.questioned.find(known => known.entry === body.entry)
     if (!item) return
     item.settled = { words: body.words, mark }
-    for (const point of Object.values(state.points)) if (point.questionedHand === body.entry) point.questionedHand = null
+    for (const point of Object.values(state.points)) if (point.questionedHand === body.entry) point.questionedHand = otherClaim(state, point)
   },
   'question-asked': (state, { body }, mark) => { state.questions.push({ entry: mark.entry, ...body, mark, answer: null }) },
   'question-answered': (state, { body }, mark) => {
@@ -169,6 +170,12 @@ export function applyQuestioned(state: OutageState, stored: StoredEntry, mark: M
   }
   if (entry.kind === 'reading-taken') addReading(state, entry, mark, true)
   if (entry.kind === 'pressure-read') addPressure(state, entry.body, mark, true)
+}
+
+/** Another questioned entry, not dealt with, that says the point is in hand and that nobody has looked at since. */
+function otherClaim(state: OutageState, point: PointState): string | null {
+  const seen = Math.max(point.mark?.seq ?? 0, point.tried?.mark.seq ?? 0)
+  return state.questioned.find(item => item.kind === 'point-in-hand' && item.tag === point.tag && item.settled === null && item.seq > seen)?.entry ?? null
 }
 
 function addReading(state: OutageState, entry: Entry<'reading-taken'>, mark: Mark, questioned: boolean): void {

@@ -1,24 +1,25 @@
 import { z } from 'zod'
 import { canonicalBytes, sha256Hex } from './canonical'
 import type { BodyOf, EntryKind } from './kinds'
+import { time } from './kinds/common'
 
 /** The signer that stands for the server itself in `by`. */
 export const SERVER = 'server'
 
-const iso = z.string().regex(/^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}:\d{2}\.\d{3}Z$/, 'A time is UTC with milliseconds, such as 2026-03-03T02:24:00.000Z')
-  .refine(text => !Number.isNaN(Date.parse(text)), 'This is not a time')
+/** One spelling only: chains are looked up by device, and bytes are what is signed. */
+const id = z.string().uuid().regex(/^[0-9a-f-]+$/, 'An id is in lower case')
 
 /** What every entry carries beside its body; the body is checked by its own kind's schema. */
 export const envelopeSchema = z.object({
   v: z.number().int().min(1).max(1000),
-  id: z.string().uuid().toLowerCase(),
-  outage: z.string().uuid().toLowerCase(),
-  kind: z.string().min(1).max(40),
+  id,
+  outage: id,
+  kind: z.string().max(40).regex(/^[a-z]+(-[a-z]+)*$/, 'A kind is lower-case words with hyphens'),
   body: z.record(z.unknown()),
-  at: iso,
+  at: time,
   skew: z.number().int().min(-3_153_600_000_000).max(3_153_600_000_000),
-  by: z.union([z.string().uuid(), z.literal(SERVER)]),
-  device: z.string().uuid(),
+  by: z.union([id, z.literal(SERVER)]),
+  device: id,
   n: z.number().int().min(1).max(1_000_000),
   prev: z.string().regex(/^[0-9a-f]{64}$/).nullable(),
 }).strict()

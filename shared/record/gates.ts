@@ -1,6 +1,6 @@
 import { isHandActive } from '../schemas/point-kinds'
 import { BACK_CHECKS, BEFORE_CHECKS } from './checks'
-import { caseName, groupName, isOver, openDark, pointsInHand, pointsWaiting, productReadings, proofsDue, watchedCases } from './select'
+import { caseName, firmReadings, groupName, isOver, openDark, pointsInHand, pointsWaiting, productReadings, proofsDue, watchedCases } from './select'
 import type { OutageState, PressureState } from './state'
 
 /** Suction must stay within this of itself, psi, for this long, ms, before dark. Common practice, no source. */
@@ -39,6 +39,8 @@ export function planGate(state: OutageState, results: GateResults): string[] {
   const ordered = new Set(plan.order.map(line => line.tag))
   const unordered = plan.points.filter(point => !ordered.has(point.tag)).map(point => point.tag)
   if (unordered.length > 0) missing.push(`no place in the order for ${list(unordered)}`)
+  const unknown = plan.points.filter(point => !state.points[point.tag]).map(point => point.tag)
+  if (unknown.length > 0) missing.push(`this controller has no point ${list(unknown)}`)
   return [...missing, ...results.planRefusals]
 }
 
@@ -85,13 +87,13 @@ export function goDarkGate(state: OutageState, at: number, results: GateResults)
   const missing: string[] = []
   const unsigned = BEFORE_CHECKS.filter(check => !state.checks[check.id]).map(check => check.ask.toLowerCase())
   if (unsigned.length > 0) missing.push(`checks not signed: ${list(unsigned, 3)}`)
-  const unread = watchedCases(state).filter(item => !item.empty && productReadings(item).length === 0).map(item => caseName(state, item.id))
+  const unread = watchedCases(state).filter(item => !item.empty && firmReadings(item).length === 0).map(item => caseName(state, item.id))
   if (unread.length > 0) missing.push(`round 0 lacks ${list(unread)}`)
   const warm = watchedCases(state).filter(item => startedWarm(state, item.id) && !item.acceptedWarm && !item.empty).map(item => caseName(state, item.id))
   if (warm.length > 0) missing.push(`already warm, neither emptied nor accepted as started warm: ${list(warm)}`)
   const waiting = pointsWaiting(state).map(point => point.tag)
   if (waiting.length > 0) missing.push(`still in auto, not excused: ${list(waiting)}`)
-  const tried = Object.values(state.points).filter(point => point.tried !== null).map(point => point.tag)
+  const tried = Object.values(state.points).filter(point => point.tried !== null && point.status !== 'excused').map(point => point.tag)
   if (tried.length > 0) missing.push(`not seen as asked: ${list(tried)}`)
   for (const group of groupsHeldOn(state)) {
     const fault = steadyFault(state, group, at)
@@ -102,12 +104,13 @@ export function goDarkGate(state: OutageState, at: number, results: GateResults)
   return [...missing, ...results.margin]
 }
 
-/** The last product reading before dark was over the limit. */
+/** The last product reading before dark was over the limit; a questioned one counts only against it. */
 export function startedWarm(state: OutageState, caseId: string): boolean {
   const limit = state.snapshot.cases.find(item => item.id === caseId)?.limit
   const from = openDark(state)?.from ?? Infinity
-  const last = productReadings(state.cases[caseId]!).filter(reading => reading.at <= from).at(-1)
-  return limit !== undefined && last !== undefined && isOver(last, limit)
+  const before = productReadings(state.cases[caseId]!).filter(reading => reading.at <= from)
+  const last = [before.at(-1), before.filter(reading => !reading.questioned).at(-1)]
+  return limit !== undefined && last.some(reading => reading !== undefined && isOver(reading, limit))
 }
 
 /** What stands in the way of returning points: the controller is checked first. */
@@ -116,10 +119,10 @@ export function returnPointsGate(state: OutageState): string[] {
   return unsigned.length > 0 ? [`the controller is checked first; not signed: ${list(unsigned, 3)}`] : []
 }
 
-/** What stands in the way of closing hand back (I8). */
+/** What stands in the way of closing hand back (I8). An exception says nothing of what a questioned entry claims. */
 export function handBackGate(state: OutageState): string[] {
   const missing = returnPointsGate(state)
-  const inHand = pointsInHand(state).filter(point => point.exception === null).map(point => point.tag)
+  const inHand = pointsInHand(state).filter(point => point.exception === null || point.questionedHand !== null).map(point => point.tag)
   if (inHand.length > 0) missing.push(`still in hand: ${list(inHand)}`)
   const due = proofsDue(state).filter(point => point.exception === null).map(point => point.tag)
   if (due.length > 0) missing.push(`not yet proven: ${list(due)}`)
@@ -134,10 +137,12 @@ export function settledFaults(state: OutageState): string[] {
     if (item.empty) continue
     const name = caseName(state, item.id)
     const limit = state.snapshot.cases.find(known => known.id === item.id)!.limit
-    const readings = productReadings(item).filter(reading => reading.at >= since)
+    const readings = firmReadings(item).filter(reading => reading.at >= since)
     const [before, last] = [readings.at(-2), readings.at(-1)]
+    const newest = productReadings(item).at(-1)
     if (!last || !before) { faults.push(`${name}: ${2 - readings.length} more ${readings.length === 1 ? 'reading' : 'readings'} since control is back`); continue }
-    if (isOver(last, limit)) faults.push(`${name}: ${last.value} °${last.unit} is over its limit`)
+    const over = [last, newest!].find(reading => isOver(reading, limit))
+    if (over) faults.push(`${name}: ${over.value} °${over.unit} is over its limit`)
     else if (kelvin(last) > kelvin(before) + LAST_DIGIT_K) faults.push(`${name}: still rising`)
   }
   if (state.plan.watchDefrosts) {

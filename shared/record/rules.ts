@@ -1,5 +1,6 @@
 import type { Role } from '../schemas/people'
-import { handWords, isHandActive } from '../schemas/point-kinds'
+import { handWords, isAlarm, isHandActive, isHandAtRest } from '../schemas/point-kinds'
+import type { HandPosition } from '../schemas/point-kinds'
 import { BACK_CHECKS, checkById } from './checks'
 import type { AnyEntry, Entry } from './entry'
 import { correctedTime, happenedAt } from './entry'
@@ -7,6 +8,7 @@ import { callOffGate, goDarkGate, handBackGate, planGate, returnPointsGate, seal
 import type { EntryKind } from './kinds'
 import { PHASE_WORDS, PHASES } from './phases'
 import type { Phase } from './phases'
+import { turningBack } from './select'
 import type { OutageState } from './state'
 
 /** Who signs. */
@@ -75,7 +77,7 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
     return body.outcome === 'needless' && body.words === '' ? ['say why it is not needed'] : []
   } },
   'point-in-hand': { roles: HANDS, phases: RUN, unfit: pointInHandUnfit },
-  'point-excused': { roles: HANDS, phases: ['in-hand', 'dark'], unfit: (state, { body }) => knownPoint(state, body.tag) },
+  'point-excused': { roles: HANDS, phases: ['in-hand', 'dark'], unfit: (state, { body }) => state.points[body.tag]?.status === 'hand' ? [`${body.tag} is in hand; only what cannot be put in hand is excused`] : knownPoint(state, body.tag) },
   'point-in-auto': { roles: HANDS, phases: ['in-hand', 'hand-back', 'settle'], unfit: (state, { body }, around) => {
     const point = state.points[body.tag]
     if (!point) return knownPoint(state, body.tag)
@@ -85,7 +87,7 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
     return before.length > 0 ? [...gate, `goes back after ${before.join(', ')}`] : gate
   } },
   'point-proven': { roles: HANDS, phases: ['hand-back', 'settle'], unfit: (state, { body }) => state.points[body.tag]?.status === 'returned' ? [] : [`${body.tag} is not waiting for its proof`] },
-  'left-in-exception': { roles: SUPERVISOR, phases: ['hand-back', 'settle'], unfit: (state, { body }) => body.points.flatMap(left => knownPoint(state, left.tag)) },
+  'left-in-exception': { roles: SUPERVISOR, phases: ['hand-back', 'settle'], unfit: (state, { body }) => body.points.flatMap(left => exceptionUnfit(state, left.tag)) },
   'hand-back-closed': { roles: HANDS, phases: ['hand-back'], unfit: state => handBackGate(state) },
   'defrost-watched': { roles: HANDS, phases: ['hand-back', 'settle'], unfit: (state, { body }) => state.snapshot.circuits.some(circuit => circuit.id === body.circuitId) ? [] : ['there is no such circuit'] },
 
@@ -105,7 +107,7 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   } },
   'control-lost': { roles: HANDS, phases: ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], unfit: (_state, entry) => ahead(entry, entry.body.lostAt) },
   'step-ticked': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => [...state.plan.steps, ...state.plan.rollBack].some(step => step.id === body.step) ? [] : ['there is no such step'] },
-  'turned-back': { roles: HANDS, phases: ['dark'], unfit: state => state.turnedBack ? ['the way back has begun already'] : [] },
+  'turned-back': { roles: HANDS, phases: ['dark'], unfit: state => turningBack(state) ? ['the way back has begun already'] : [] },
   'control-back': { roles: HANDS, phases: ['dark'], unfit: (state, entry) => {
     const from = state.darks.at(-1)?.from ?? 0
     return correctedTime(entry, entry.body.backAt) < from ? ['control cannot be back before it was lost'] : ahead(entry, entry.body.backAt)
@@ -140,13 +142,29 @@ function stillHeld(state: OutageState, tag: string): boolean {
   return point !== undefined && point.status === 'hand' && point.exception === null
 }
 
+/** An exception names what is left in hand or unproven (I8); given beforehand it would cover what nobody has looked at. */
+function exceptionUnfit(state: OutageState, tag: string): string[] {
+  const point = state.points[tag]
+  if (!point) return knownPoint(state, tag)
+  const open = point.status === 'hand' || point.status === 'returned' || point.tried !== null
+  return open ? [] : [`${tag} is neither in hand nor waiting for its proof`]
+}
+
+/** What a compressor, a heater or a thing that keeps people safe may never do in hand (I2, I3, I9). */
+function neverUnfit(state: OutageState, tag: string, hand: HandPosition): string[] {
+  const { kind } = state.points[tag]!
+  if (isHandActive(hand) && (kind === 'defrost-heater' || kind === 'hot-gas-valve')) return ['a defrost heater or hot-gas valve is never in hand on (I2)']
+  if (isHandAtRest(hand) && (isAlarm(kind) || kind === 'machinery-room-ventilation' || kind === 'egress-light')) return ['it keeps people safe and is never off (I3)']
+  const guards = state.snapshot.points.find(item => item.tag === tag)?.guards ?? []
+  return isHandActive(hand) && kind === 'compressor' && guards.length === 0 ? ['no guard of this compressor works in hand (I9)'] : []
+}
+
 /** Order, minimum off time, and a reason for leaving the plan. */
 function pointInHandUnfit(state: OutageState, entry: Entry<'point-in-hand'>): string[] {
   const { tag, hand, reason } = entry.body
   const point = state.points[tag]
   if (!point) return knownPoint(state, tag)
-  const missing: string[] = []
-  if (isHandActive(hand) && (point.kind === 'defrost-heater' || point.kind === 'hot-gas-valve')) missing.push('a defrost heater or hot-gas valve is never in hand on (I2)')
+  const missing = neverUnfit(state, tag, hand)
   const planned = state.plan.points.find(item => item.tag === tag)
   if (reason === '' && (!planned || handWords(planned.hand) !== handWords(hand))) missing.push(planned ? `the plan says ${handWords(planned.hand)}: give a reason` : 'the plan does not touch this point: give a reason')
   const minOff = state.snapshot.points.find(item => item.tag === tag)?.minOffMin ?? DEFAULT_MIN_OFF
@@ -161,7 +179,7 @@ function pointInHandUnfit(state: OutageState, entry: Entry<'point-in-hand'>): st
 /** A point of the plan that is neither in hand nor excused. */
 export function isWaiting(state: OutageState, tag: string): boolean {
   const point = state.points[tag]
-  return point !== undefined && (point.status === 'auto' || point.tried !== null)
+  return point !== undefined && (point.status === 'auto' || (point.tried !== null && point.status !== 'excused'))
 }
 
 export type Judgement

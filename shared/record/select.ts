@@ -8,9 +8,10 @@ export function pointsInHand(state: OutageState): PointState[] {
   return Object.values(state.points).filter(point => point.status === 'hand' || point.tried !== null || point.questionedHand !== null)
 }
 
-/** Points of the plan that are neither in hand nor excused, in the order of the plan. */
+/** Points of the plan that are neither in hand nor excused, in the order of the plan; those without a place in it come last. */
 export function pointsWaiting(state: OutageState): PointState[] {
-  return state.plan.order.map(line => state.points[line.tag]).filter((point): point is PointState => point !== undefined && point.status === 'auto')
+  const tags = new Set([...state.plan.order, ...state.plan.points].map(line => line.tag))
+  return [...tags].map(tag => state.points[tag]).filter((point): point is PointState => point !== undefined && point.status === 'auto')
 }
 
 /** Points back in auto that nobody has yet seen to answer the controller. */
@@ -74,6 +75,11 @@ export function productReadings(item: CaseState): ReadingState[] {
   return judgedReadings(item).filter(reading => reading.method === 'product')
 }
 
+/** Product readings on which a gate may rest: a questioned one is judged, but opens nothing. */
+export function firmReadings(item: CaseState): ReadingState[] {
+  return productReadings(item).filter(reading => !reading.questioned)
+}
+
 export function celsius(value: number, unit: 'F' | 'C'): number {
   return unit === 'C' ? value : (value - 32) * 5 / 9
 }
@@ -98,9 +104,22 @@ export function firstDarkAt(state: OutageState): number | null {
   return state.darks[0]?.from ?? null
 }
 
-/** Time without control until now over all intervals, ms. */
+/** The way back that was begun in the dark interval that runs now, or null. */
+export function turningBack(state: OutageState): OutageState['turnedBack'] {
+  const dark = openDark(state)
+  return dark && state.turnedBack && state.turnedBack.mark.seq > dark.mark.seq ? state.turnedBack : null
+}
+
+/** Time without control until now over all intervals, ms; where signed times overlap, the time counts once. */
 export function darkMs(state: OutageState, now: number): number {
-  return state.darks.reduce((sum, dark) => sum + Math.max(0, (dark.to ?? now) - dark.from), 0)
+  const intervals = state.darks.map(dark => ({ from: dark.from, to: dark.to ?? now })).sort((a, b) => a.from - b.from)
+  let sum = 0
+  let counted = -Infinity
+  for (const { from, to } of intervals) {
+    sum += Math.max(0, to - Math.max(from, counted))
+    counted = Math.max(counted, to)
+  }
+  return sum
 }
 
 /** The number that the next round takes: the highest so far and one, 0 before any. */

@@ -110,12 +110,20 @@ function highestProduct(state: OutageState): RecordSummary['highest'] {
   return first ? { ...first, name: caseName(state, first.caseId) } : null
 }
 
-/** Names of cases that a reading or a verdict once put above their limit, in the order of the equipment. */
+/**
+ * Names of cases that were above their limit, in the order of the equipment: by a product reading, or by
+ * a verdict. Where a reading was corrected since, an earlier verdict may have come from the mistake, and
+ * only what stands now counts.
+ */
 function casesAbove(state: OutageState, verdicts: readonly VerdictLine[]): string[] {
-  const judged = new Set(verdicts.filter(line => line.verdict === 'above' || line.verdict === 'act' || line.verdict === 'discard').map(line => line.caseId))
-  return state.snapshot.cases
-    .filter(item => judged.has(item.id) || (state.cases[item.id] && productReadings(state.cases[item.id]!).some(reading => overLimit(state, item.id, reading) > 1e-6)))
-    .map(item => item.name)
+  const bad = (verdict: string) => verdict === 'above' || verdict === 'act' || verdict === 'discard'
+  return state.snapshot.cases.filter(({ id }) => {
+    const item = state.cases[id]
+    if (!item) return false
+    if (productReadings(item).some(reading => overLimit(state, id, reading) > 1e-6)) return true
+    if (item.readings.some(reading => reading.correctedBy !== null)) return item.verdict !== null && bad(item.verdict.verdict)
+    return verdicts.some(line => line.caseId === id && bad(line.verdict))
+  }).map(item => item.name)
 }
 
 function signatureLines(state: OutageState, entries: readonly StoredEntry[]): SignatureLine[] {
