@@ -31,6 +31,9 @@ export const signInSchema = z.object({
 
 /** Wrong passwords are counted over this many minutes; then the account may try again. */
 export const SIGN_IN_WINDOW_MINUTES = 15
+/** So many for one account from anywhere, and so many from one address for any account. */
+export const PER_ACCOUNT = 10
+export const PER_ADDRESS = 50
 
 /** The first administrator, made when nobody is there yet. */
 export const setupSchema = z.object({ email: emailSchema, name: personNameSchema, password: passwordSchema })

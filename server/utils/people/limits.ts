@@ -1,11 +1,8 @@
 import { RateLimiterDrizzle } from 'rate-limiter-flexible'
-import { SIGN_IN_WINDOW_MINUTES } from '../../../shared/schemas/people'
+import { PER_ACCOUNT, PER_ADDRESS, SIGN_IN_WINDOW_MINUTES } from '../../../shared/schemas/people'
 import { rateLimits } from '../../database/schema'
 import { useDatabase } from '../database'
 
-/** Wrong passwords for one account from anywhere, and from one address for any account, within the window. */
-export const PER_ACCOUNT = 10
-export const PER_ADDRESS = 50
 const SECONDS = SIGN_IN_WINDOW_MINUTES * 60
 
 const limiter = (keyPrefix: string, points: number) => new RateLimiterDrizzle({ storeClient: useDatabase(), schema: rateLimits, keyPrefix, points, duration: SECONDS, clearExpiredByTimeout: false })
