@@ -137,6 +137,6 @@ function drawAttention(sheet: Sheet, { state, summary }: RecordPaper): void {
   for (const { what, items } of points) {
     const shown = items.slice(0, 8)
     const more = items.length > shown.length ? `; and ${countWords(items.length - shown.length, 'more', 'more')}, further on` : ''
-    sheet.paragraph(`${what}: ${shown.join(' · ')}${more}`, { after: 3 })
+    sheet.labelled(what, `${shown.join(' · ')}${more}`)
   }
 }

@@ -26,18 +26,22 @@ export async function drawPoints(sheet: Sheet, { summary }: RecordPaper): Promis
   const clock = (line: { at: number } | null) => line ? clockWords(isoTime(line.at), timeZone, true) : ''
   sheet.begin('Points')
   await drawTable(sheet, [
-    { label: 'Point', width: 62 }, { label: 'Name', width: 0.34 }, { label: 'Held', width: 52 }, { label: 'Seen', width: 0.26 }, { label: 'In hand', width: 44 }, { label: 'By', width: 0.2 }, { label: 'In auto', width: 44 }, { label: 'Proven', width: 44 },
+    { label: 'Point', width: 58 }, { label: 'Name', width: 0.4 }, { label: 'Held', width: 52 }, { label: 'Seen', width: 0.32 }, { label: 'In hand', width: 42 }, { label: 'By', width: 0.28 }, { label: 'In auto', width: 42 }, { label: 'Proven', width: 42 },
   ], summary.pointLines.map((line): Row => [
     { text: line.tag, inset: 11, draw: (x, baseline) => drawMark(sheet.doc, markOf(line), x, baseline) },
     line.name,
     line.hand === null ? line.excused ? 'excused' : '' : handWords(line.hand),
-    [line.seen, line.excused && !line.inHand ? `${line.excused.reason}; instead: ${line.excused.measure}` : '', line.exception ? `left: ${line.exception.owner}, by ${fullStampWords(line.exception.until, timeZone)}: ${line.exception.reason}` : ''].filter(Boolean).join(' · '),
+    line.seen,
     clock(line.inHand ?? line.excused),
     (line.inHand ?? line.excused)?.by ?? '',
     clock(line.back),
     line.proven ? clock(line.proven) : line.back && line.backSeen !== 'answers' ? 'proof due' : '',
   ]))
-  sheet.y += 3
+  sheet.y += 6
+  for (const { tag, excused, exception, inHand } of summary.pointLines) {
+    if (excused && !inHand) sheet.labelled(`${tag}, excused`, `${excused.reason}; instead: ${excused.measure} (${excused.by}, ${clock(excused)})`)
+    if (exception) sheet.labelled(`${tag}, left`, `${exception.reason}; ${exception.owner} until ${fullStampWords(exception.until, timeZone)} (signed by ${exception.by}, ${clock(exception)})`)
+  }
   sheet.paragraph('Marks: ring = in auto, filled square = in hand, ring with a tick = back and proven, ring with a bar = excused.', { style: { size: 7.5 } })
 }
 

@@ -120,6 +120,29 @@ export class Sheet {
     this.y += after
   }
 
+  /** A label in the left column and words beside it, kept together on a page. */
+  labelled(label: string, text: string, column = 116): void {
+    const look = { size: 9, colour: COLOURS.ink }
+    const height = look.size * 1.38
+    const head = this.type.wrap(label, column - 8, { ...look, face: 'semibold' })
+    const lines = this.type.wrap(text, this.width - column, look)
+    const rows = Math.max(head.length, lines.length)
+    this.need(Math.min(rows, 40) * height)
+    const element = this.element('P')
+    for (let from = 0; from < rows;) {
+      const count = Math.max(1, Math.min(rows - from, Math.floor(this.room / height)))
+      this.content(element, 'P', () => {
+        head.slice(from, from + count).forEach((line, index) => this.type.draw(line, this.left, this.y + height * index + look.size, { ...look, face: 'semibold' }))
+        lines.slice(from, from + count).forEach((line, index) => this.type.draw(line, this.left + column, this.y + height * index + look.size, look))
+      })
+      this.y += height * count
+      from += count
+      if (from < rows) this.newPage()
+    }
+    element.end()
+    this.y += 3.5
+  }
+
   /** A smaller heading inside a part. */
   heading(title: string, keep = 84): void {
     this.y += 8

@@ -22,6 +22,8 @@ export interface Scenario {
   site?: Partial<Snapshot['site']>
   /** id of a rulebook with the class `tcs` or `chilled` */
   rulebook?: string
+  /** tags of points that cannot be put in hand */
+  excuse?: readonly string[]
   /** odd entries to sign as each phase is reached */
   during?: Partial<Record<RecordStage, (writer: RecordWriter) => void>>
   /** minutes without control between rounds; each adds a round */
@@ -117,8 +119,12 @@ export function takeRound(writer: RecordWriter, minutes: number, backAfter = 23.
   writer.sign(technician, 'pressure-read', { round, suctionGroupId: GROUP, suctionPsig: 47, dischargePsig: 228 })
 }
 
-function putInHand(writer: RecordWriter): void {
+function putInHand(writer: RecordWriter, excuse: readonly string[]): void {
   for (const { tag } of writer.state.plan.order) {
+    if (excuse.includes(tag)) {
+      writer.pass(0.8).sign(technician, 'point-excused', { tag, reason: 'switch broken', measure: 'left as it is' })
+      continue
+    }
     const { kind } = writer.state.points[tag]!
     const { hand } = writer.state.plan.points.find(planned => planned.tag === tag)!
     const running = hand === 'on' && (kind === 'compressor' || kind === 'condenser-fan')
@@ -133,10 +139,10 @@ const STEPS: Record<RecordStage, (writer: RecordWriter, scenario: Scenario) => v
     writer.pass(4).sign(technician, 'plan-submitted', { note: '' })
   },
   'approved': writer => void writer.pass(45).sign(supervisor, 'plan-approved', { note: '' }),
-  'in-hand': (writer) => {
+  'in-hand': (writer, { excuse = [] }) => {
     writer.pass(15 * 60).sign(technician, 'in-hand-begun', {})
     for (const check of BEFORE_CHECKS) writer.pass(1.2).sign(technician, 'check-signed', { check: check.id, outcome: 'done', words: check.id === 'settings-saved' ? 'file read back' : '' })
-    putInHand(writer)
+    putInHand(writer, excuse)
     takeRound(writer, 0)
     writer.pass(8.6)
     takeRound(writer, 0)
@@ -152,7 +158,7 @@ const STEPS: Record<RecordStage, (writer: RecordWriter, scenario: Scenario) => v
     writer.sign(technician, 'step-ticked', { step: 'load', state: 'done' })
   },
   'hand-back': (writer) => {
-    writer.now = writer.state.darks.at(-1)!.from + 23 * 60_000 + 10_000
+    writer.now = Math.max(writer.now + 20_000, writer.state.darks.at(-1)!.from + 23 * 60_000 + 10_000)
     writer.sign(technician, 'control-back', { backAt: isoTime(writer.now) })
     for (const check of BACK_CHECKS) writer.pass(0.4).sign(technician, 'check-signed', { check: check.id, outcome: 'done' })
   },
