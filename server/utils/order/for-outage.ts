@@ -2,7 +2,7 @@
 import type { Plan } from '~~/shared/record/plan'
 import type { OutageState } from '~~/shared/record/state'
 import type { Snapshot, SnapshotPoint } from '~~/shared/record/snapshot'
-import type { OrderPoint } from '~~/shared/schemas/plan-order'
+import type { OrderPoint, PlanOrderInput } from '~~/shared/schemas/plan-order'
 import { handWords } from '~~/shared/schemas/point-kinds'
 import type { HandPosition } from '~~/shared/schemas/point-kinds'
 import type { OrderStep, PlannedOrder } from './plan'
@@ -37,13 +37,23 @@ function withinList(points: OrderPoint[]): OrderPoint[] {
   return points.map(({ drives, ...point }) => drives && tags.has(drives) ? { ...point, drives } : point)
 }
 
+/** The order, or, where a snapshot's points wait for each other in a ring, none and the reason. */
+function orderOrRing(input: PlanOrderInput): PlannedOrder {
+  try {
+    return planOrder(input)
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error
+    return { order: [], refusals: [{ tag: input.points[0]!.tag, rule: 'ring', because: error.message }] }
+  }
+}
+
 /** Order in which the points of a plan go in hand, and those that may not. */
 export function inHandOrder(snapshot: Snapshot, points: Plan['points']): PlannedOrder {
   const known = points.flatMap((planned) => {
     const point = snapshot.points.find(item => item.tag === planned.tag)
     return point ? [orderPoint(snapshot, point, planned.hand)] : []
   })
-  return planOrder({ direction: 'in-hand', points: withinList(known) })
+  return orderOrRing({ direction: 'in-hand', points: withinList(known) })
 }
 
 /** What the rules say against a plan, in words; also where its order is not the one that the rules give. */
@@ -62,7 +72,7 @@ export function handBackOrder(state: OutageState): OrderStep[] {
     if (now?.status !== 'hand' || now.hand === null) return []
     return [{ ...orderPoint(state.snapshot, point, now.hand), ...(now.exception ? { stays: true } : {}) }]
   })
-  return planOrder({ direction: 'hand-back', points: withinList(held) }).order
+  return orderOrRing({ direction: 'hand-back', points: withinList(held) }).order
 }
 
 /** Tags that go back to auto before this one. */

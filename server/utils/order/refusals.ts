@@ -8,7 +8,8 @@ import { circuitsOf, countsAsFed, feeding, isLiquidValve, type Circuit } from '.
 import { sharesScope, type Placed } from './layout'
 import { lastMediumFirst } from './stages'
 
-export type OrderRule = 'I1' | 'I2' | 'I3' | 'I7' | 'I9' | 'I12'
+/** The rule that refuses a point; `ring` where the points wait for each other. */
+export type OrderRule = 'I1' | 'I2' | 'I3' | 'I7' | 'I9' | 'I12' | 'ring'
 
 export interface Refusal {
   tag: string

@@ -10,6 +10,7 @@ import type { Database, Queries } from '../database'
 import { notFound } from '../errors'
 import type { PushResult, Refusal } from './admit'
 import { admit, refuse } from './admit'
+import { openingFault } from './check-opening'
 import type { Draft } from './draft'
 import { addEntry, addServerEntry, saveProjection } from './draft'
 import { followUp } from './follow'
@@ -65,7 +66,11 @@ async function appendOne(draft: Draft, person: Person, item: unknown, at: string
   if (draft.state.opened === null && entry.kind !== 'outage-opened') return refuse(entry.id, 409, 'This outage is not open yet', `${at}.entry.outage`)
   if (draft.state.opened === null && standing === 'questioned') return refuse(entry.id, 422, why.join('; '), `${at}.entry.body.lostAt`)
   if (standing === 'refused') return recordRefusal(draft, entry, { id: entry.id, status: 'refused', code: 403, field: null, reason: why.join('; '), recorded: true })
-  if (entry.kind === 'outage-opened' && draft.state.opened === null) await openOutage(draft, person, entry)
+  if (entry.kind === 'outage-opened' && draft.state.opened === null) {
+    const fault = openingFault(entry.body)
+    if (fault) return refuse(entry.id, 422, fault.reason, `${at}.entry.body.${fault.field}`)
+    await openOutage(draft, person, entry)
+  }
   const stored = await addEntry(draft, entry, signature, standing, why)
   if (entry.kind === 'outage-opened' && standing === 'accepted') await numberOutage(draft, entry.body.snapshot.site.id)
   return { id: entry.id, status: standing, seq: stored.seq, receivedAt: stored.receivedAt, why }

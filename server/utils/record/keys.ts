@@ -5,6 +5,26 @@ import type { KeyObject } from 'node:crypto'
 const PRIVATE_PREFIX = Buffer.from('302e020100300506032b657004220420', 'hex')
 const PUBLIC_PREFIX = Buffer.from('302a300506032b6570032100', 'hex')
 
+/**
+ * Points of small order: under one of these as a public key a signature fits text that its owner never
+ * saw (RFC 8032, 5.1.7 does not exclude them). Little-endian y, the sign bit left out.
+ */
+const WEAK_KEYS = new Set([
+  '0000000000000000000000000000000000000000000000000000000000000000',
+  '0100000000000000000000000000000000000000000000000000000000000000',
+  'ecffffffffffffffffffffffffffffffffffffffffffffffffffffffffffff7f',
+  'edffffffffffffffffffffffffffffffffffffffffffffffffffffffffffff7f',
+  'eeffffffffffffffffffffffffffffffffffffffffffffffffffffffffffff7f',
+  '26e8958fc2b227b045c3f489f2ef98f0d5dfac05d3c63339b13802886d53fc05',
+  'c7176a703d4dd84fba3c0b760d10670f2a2053fa2c39ccc64ec7fd7792ac037a',
+])
+
+function isWeak(raw: Buffer): boolean {
+  const y = Buffer.from(raw)
+  y[31]! &= 0x7F
+  return WEAK_KEYS.has(y.toString('hex'))
+}
+
 /** A private key from its 32-byte seed (RFC 8032). */
 export function privateKeyOf(seed: Uint8Array): KeyObject {
   if (seed.length !== 32) throw new RangeError('An Ed25519 seed is 32 bytes')
@@ -21,11 +41,11 @@ export function signBytes(bytes: Uint8Array, key: KeyObject): string {
   return sign(null, bytes, key).toString('base64url')
 }
 
-/** Whether a signature over bytes is good; false for a malformed key or signature too. */
+/** Whether a signature over bytes is good; false for a malformed or weak key and a malformed signature too. */
 export function verifyBytes(bytes: Uint8Array, signature: string, publicKey: string): boolean {
   const raw = Buffer.from(publicKey, 'base64url')
   const mark = Buffer.from(signature, 'base64url')
-  if (raw.length !== 32 || mark.length !== 64) return false
+  if (raw.length !== 32 || mark.length !== 64 || isWeak(raw)) return false
   try {
     return verify(null, bytes, createPublicKey({ key: Buffer.concat([PUBLIC_PREFIX, raw]), format: 'der', type: 'spki' }), mark)
   } catch {
