@@ -53,16 +53,16 @@ const onThoseRacks = (scope: FieldScope) => {
 const classUnit = ({ site }: FieldScope) => `°${rulebookById(site?.rulebook ?? '')?.unit ?? 'C'}`
 
 export const SITE_FIELDS: FieldSpec[] = [
-  { name: 'code', label: 'Code', kind: 'text', hint: 'Begins the code of each of its outages, as Q027.', half: true },
-  { name: 'name', label: 'Name', kind: 'text', half: true },
+  { name: 'code', label: 'Code', kind: 'text', hint: 'As Q027; begins those of outages.', half: true },
+  { name: 'name', label: 'Name', kind: 'text', hint: 'As people call it.', half: true },
   { name: 'address', label: 'Address', kind: 'text', optional: true },
   { name: 'timeZone', label: 'Time zone', kind: 'text', hint: 'As America/Chicago.', half: true },
   { name: 'altitudeM', label: 'Altitude', kind: 'number', unit: 'm', hint: 'Above the sea.', half: true },
   { name: 'temperatureUnit', label: 'Temperatures in', kind: 'select', options: () => [{ value: 'F', label: '°F' }, { value: 'C', label: '°C' }], half: true },
   { name: 'pressureUnit', label: 'Pressures in', kind: 'select', options: () => PRESSURE_UNITS.map(value => ({ value, label: value })), half: true },
   { name: 'rulebook', label: 'Rulebook', kind: 'select', hint: 'What its product is judged by.', options: () => rulebooks.map(({ id, name }) => ({ value: id, label: name })) },
-  { name: 'intervalMinutes', label: 'Longest time between rounds at open cases', kind: 'number', unit: 'min', half: true },
-  { name: 'paper', label: 'Paper of the record', kind: 'select', options: () => PAPERS.map(value => ({ value, label: value })), half: true },
+  { name: 'intervalMinutes', label: 'Rounds at least every', kind: 'number', unit: 'min', hint: 'At open cases.', half: true },
+  { name: 'paper', label: 'Paper', kind: 'select', hint: 'Of the printed record.', options: () => PAPERS.map(value => ({ value, label: value })), half: true },
   { name: 'contactName', label: 'Contact at the site', kind: 'text', optional: true, half: true },
   { name: 'contactPhone', label: 'Contact\'s phone', kind: 'tel', optional: true, half: true },
   { name: 'contactEmail', label: 'Contact\'s e-mail', kind: 'email', optional: true, half: true },
@@ -106,8 +106,8 @@ export const RESOURCE_FIELDS: Record<ResourceName, FieldSpec[]> = {
     { name: 'circuitId', label: 'Circuit', kind: 'select', empty: 'None', optional: true, half: true, options: scope => named(scope.site?.circuits.filter(circuit => racksOf(scope).some(rack => rack.id === circuit.rackId))) },
     { name: 'foodClass', label: 'Food class', kind: 'select', hint: 'A class of the site\'s rulebook.', options: ({ site }) => rulebookById(site?.rulebook ?? '')?.classes.map(({ id, name, limit }) => ({ value: id, label: `${name}, limit ${limit} ${classUnit({ site, values: {} })}` })) ?? [] },
     { name: 'usualC', label: 'Usual product temperature', kind: 'number', quantity: 'temperature', half: true },
-    { name: 'limitStricter', label: 'Own limit', kind: 'number', unit: classUnit, hint: 'Only if stricter than the rulebook\'s.', optional: true, half: true },
-    { name: 'tauHours', label: 'Own time constant', kind: 'number', unit: 'h', hint: 'Fitted from its records; without one an estimate by kind is used.', optional: true, half: true },
+    { name: 'limitStricter', label: 'Own, stricter limit', kind: 'number', unit: classUnit, optional: true, half: true },
+    { name: 'tauHours', label: 'Own time constant', kind: 'number', unit: 'h', hint: 'Fitted from its records; without one an estimate by kind is used.', optional: true },
     { name: 'runsAlone', label: 'Its own controller keeps it going when this one is dark', kind: 'check' },
   ],
   'points': [
