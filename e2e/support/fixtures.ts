@@ -35,7 +35,7 @@ export const test = base.extend<TestFixtures, WorkerFixtures>({
     const server = await startTestServer({ demo: true })
     await use(server)
     await server.stop()
-  }, { scope: 'worker', timeout: 120_000 }],
+  }, { scope: 'worker', timeout: 180_000 }],
 
   baseURL: async ({ server }, use) => use(server.url),
 

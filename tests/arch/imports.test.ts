@@ -32,12 +32,12 @@ describe('importsOf', () => {
       'type D = import(\'#shared/d\').D',
     ].join('\n')
     const expected = [
-      { from: 'app/pages/near', local: true, typeOnly: false },
-      { from: 'shared/b', local: true, typeOnly: true },
-      { from: 'app/far', local: true, typeOnly: false },
-      { from: 'app/c', local: true, typeOnly: true },
-      { from: 'zod', local: false, typeOnly: false },
-      { from: 'shared/d', local: true, typeOnly: true },
+      { from: 'app/pages/near', local: true, relative: true, typeOnly: false },
+      { from: 'shared/b', local: true, relative: false, typeOnly: true },
+      { from: 'app/far', local: true, relative: true, typeOnly: false },
+      { from: 'app/c', local: true, relative: false, typeOnly: true },
+      { from: 'zod', local: false, relative: false, typeOnly: false },
+      { from: 'shared/d', local: true, relative: false, typeOnly: true },
     ]
     expect(importsOf('app/pages/one.ts', source)).toEqual(expected)
     expect(importsOf('app/pages/one.vue', `<script setup lang="ts">\n${source}\n</script>\n<template><p>import x from 'y'</p></template>`)).toEqual(expected)
@@ -53,6 +53,8 @@ describe('breachesOf', () => {
     ['shared/record/fold.ts', 'import { readFileSync } from \'node:fs\''],
     ['server/utils/hold/index.ts', 'import { db } from \'../database\''],
     ['server/utils/hold/index.ts', 'import { z } from \'zod\''],
+    ['server/utils/hold/index.ts', 'import { a } from \'../../../shared/schemas/a\''],
+    ['app/utils/names.ts', 'import { a } from \'../../shared/schemas/a\''],
     ['server/utils/window/rules/a.ts', 'import { x } from \'~~/app/utils/x\''],
     ['app/pages/index.vue', '<script setup>import { db } from \'~~/server/utils/database\'</script>'],
     ['app/pages/index.vue', '<script setup>import { outages } from \'~~/server/database/schema\'</script>'],
