@@ -43,7 +43,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await signChecks(page, 7)
     await page.getByRole('link', { name: 'Go on' }).click()
     await page.getByRole('link', { name: /^Take round 0/ }).click()
-    await takeRound(page, name => /freez|ice|frozen/i.test(name) ? -5.2 : 36.4)
+    await takeRound(page, name => /freez|ice cream|frozen/i.test(name) ? -5.2 : 36.4)
     await page.getByRole('link', { name: 'Go on' }).click()
     await page.getByRole('link', { name: /^Put points in hand:/ }).click()
     await putPointsInHand(page)
@@ -67,7 +67,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
   await test.step('dark: rounds, steps, a note, control back', async () => {
     await advance(9)
     await page.getByRole('link', { name: /^Take round/ }).click()
-    await takeRound(page, name => /freez|ice|frozen/i.test(name) ? -3.1 : 37.9)
+    await takeRound(page, name => /freez|ice cream|frozen/i.test(name) ? -3.1 : 37.9)
     await page.goto(`/outages/${id}/note`)
     await page.getByLabel('Note').fill('Night covers drawn on the dairy wall')
     await sign(page, 'Sign the note')
@@ -100,7 +100,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
   await test.step('settle and submit', async () => {
     for (const fall of [0.2, 0.8]) {
       await page.goto(`/outages/${id}/round`)
-      await takeRound(page, name => /freez|ice|frozen/i.test(name) ? -3.4 - fall : 37.8 - fall)
+      await takeRound(page, name => /freez|ice cream|frozen/i.test(name) ? -3.4 - fall : 37.8 - fall)
       await advance(10)
     }
     await page.goto(`/outages/${id}/submit`)

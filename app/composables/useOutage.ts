@@ -90,14 +90,25 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
     return answers
   }
 
-  /** Signs an entry. It is on this device before anything else happens; then it is sent. */
-  async function sign<K extends EntryKind>(kind: K, body: BodyInput<K>): Promise<Signed> {
+  /**
+   * Signs an entry. Resolves once it is on this device, with the standing that this device foresees;
+   * `receipt` resolves with the server's answer, or with `kept` when none came in good time.
+   */
+  async function sign<K extends EntryKind>(kind: K, body: BodyInput<K>): Promise<{ foreseen: Signed, receipt: Promise<Signed> }> {
     if (!signer.key) throw new Error('This device is not enrolled for signing')
     const entry = await keepSigned(signer.key, id, kind, body, skew.value, base.value.chain[signer.key.device] ?? null)
     kept.value = await keptEntries(id)
-    const answer = (await Promise.race([sync(), new Promise<null>(resolve => setTimeout(resolve, RECEIPT_MS, null))]))?.get(entry.id)
-    if (!answer) return { status: 'kept', why: [] }
-    return { status: answer.status, why: answer.status === 'refused' ? [answer.reason ?? 'Refused'] : answer.why ?? [] }
+    const doubt = state.value.questioned.find(item => item.entry === entry.id)
+    return { foreseen: doubt ? { status: 'questioned', why: doubt.why } : { status: 'accepted', why: [] }, receipt: receiptOf(entry.id) }
+  }
+
+  async function receiptOf(entry: string): Promise<Signed> {
+    const late = new Promise<null>(resolve => setTimeout(resolve, RECEIPT_MS, null))
+    const answer = (await Promise.race([sync(), late]))?.get(entry)
+    if (answer) return { status: answer.status, why: answer.status === 'refused' ? [answer.reason ?? 'Refused'] : answer.why ?? [] }
+    // Another sync may have carried it: then the log has it.
+    const stored = entries.value.find(item => item.entry.id === entry)
+    return stored ? { status: stored.standing, why: stored.why } : { status: 'kept', why: [] }
   }
 
   /** Keeps a photo or drawing to be sent after the entry that names it. */

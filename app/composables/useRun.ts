@@ -3,7 +3,7 @@ import { inject, provide, ref } from 'vue'
 import { navigateTo } from '#imports'
 import { clockWords } from '~~/shared/charts/words'
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
-import type { OutageHandle } from '~/composables/useOutage'
+import type { OutageHandle, Signed } from '~/composables/useOutage'
 import { encodePhoto } from '~/utils/photos'
 
 export interface Run extends OutageHandle { now: Readonly<Ref<number>> }
@@ -27,6 +27,12 @@ export function useSiteClock() {
   return (ms: number, seconds = false) => clockWords(new Date(ms).toISOString(), state.value.snapshot.site.timeZone, seconds)
 }
 
+/** Acts that end a screen or open a gate: the screen waits for the server's answer; all others go on once kept. */
+const WAITED_FOR: ReadonlySet<EntryKind> = new Set([
+  'plan-changed', 'plan-submitted', 'plan-approved', 'plan-returned', 'in-hand-begun', 'called-off',
+  'went-dark', 'control-back', 'hand-back-closed', 'submitted', 'returned', 'sealed', 'left-in-exception', 'decided-otherwise',
+])
+
 /** Signing from a screen: what is under way, and what came of it in words. */
 export function useSigning() {
   const run = useRun()
@@ -43,9 +49,10 @@ export function useSigning() {
     busy.value = true
     trouble.value = []
     try {
-      const { status, why } = await run.sign(kind, body)
-      if (status === 'refused') trouble.value = [`Not taken into the record: ${why.join('; ')}.`]
-      if (status === 'questioned') trouble.value = [`In the record, but questioned: ${why.join('; ')}.`]
+      const { foreseen, receipt } = await run.sign(kind, body)
+      const { status, why } = WAITED_FOR.has(kind) ? await receipt : foreseen
+      if (!WAITED_FOR.has(kind)) void receipt.then(late => tell(late.status === foreseen.status ? 'kept' : late.status, late.why))
+      tell(status, why)
       const good = status === 'accepted' || status === 'kept'
       if (good && then !== undefined) await navigateTo(then)
       return good
@@ -55,6 +62,11 @@ export function useSigning() {
     } finally {
       busy.value = false
     }
+  }
+
+  function tell(status: Signed['status'], why: string[]): void {
+    if (status === 'refused') trouble.value = [`Not taken into the record: ${why.join('; ')}.`]
+    if (status === 'questioned') trouble.value = [`In the record, but questioned: ${why.join('; ')}.`]
   }
 
   /** Strips and keeps photos; their hashes go into the entry. */
