@@ -33,6 +33,11 @@ export function waitsForSupervisor({ phase, planSubmitted }: OutageItem): boolea
   return phase === 'submitted' || (phase === 'plan' && planSubmitted)
 }
 
+/** The work, and whether nobody planned it. An unplanned outage that names no work is just that. */
+export function workWords({ workKind, planned }: Pick<OutageItem, 'workKind' | 'planned'>): string {
+  return planned || workKind.toLowerCase() === 'unplanned' ? workKind : `${workKind}, unplanned`
+}
+
 /** Where an outage stands, in words. Times are the site's. */
 export function standing(item: OutageItem): string {
   const at = (iso: string | null) => iso ? dayClockWords(iso, item.site.timeZone) : ''

@@ -2,7 +2,7 @@
 import { describe, expect, it } from 'vitest'
 import { PHASES } from '~~/shared/record/phases'
 import type { OutageItem } from '~~/shared/schemas/outage-list'
-import { byUrgency, outagePath, standing, waitsForSupervisor } from '~/utils/outage-list'
+import { byUrgency, outagePath, standing, waitsForSupervisor, workWords } from '~/utils/outage-list'
 
 const item = (more: Partial<OutageItem>): OutageItem => ({
   id: 'b', code: 'Q027-0041', phase: 'plan', planned: true,
@@ -50,6 +50,14 @@ describe('waitsForSupervisor', () => {
     expect(waitsForSupervisor(item({ planSubmitted: false }))).toBe(false)
     expect(waitsForSupervisor(item({ phase: 'submitted' }))).toBe(true)
     expect(waitsForSupervisor(item({ phase: 'dark', planSubmitted: true }))).toBe(false)
+  })
+})
+
+describe('workWords', () => {
+  it('says once that nobody planned it', () => {
+    expect(workWords({ workKind: 'Software update', planned: true })).toBe('Software update')
+    expect(workWords({ workKind: 'Controller swap', planned: false })).toBe('Controller swap, unplanned')
+    expect(workWords({ workKind: 'Unplanned', planned: false })).toBe('Unplanned')
   })
 })
 
