@@ -36,14 +36,14 @@ const PARTS = {
     await phase('Unit', () => vitest('unit', extra))
   },
   async api(extra) {
-    const url = await phase('Set-up of API tests', setUpServing)
-    await phase('API', () => vitest('api', extra, { TEST_DATABASE_ADMIN_URL: url }))
+    const serving = await phase('Set-up of API tests', setUpServing)
+    await phase('API', () => vitest('api', extra, serving))
   },
   async e2e(extra) {
-    const url = await phase('Set-up of end-to-end tests', setUpServing)
+    const serving = await phase('Set-up of end-to-end tests', setUpServing)
     await phase('End to end', async () => {
       await counted('reports/e2e.json', countPlaywright, () => mustRun(bin('playwright'), ['test', ...extra], {
-        cwd: root, env: { ...env, TEST_DATABASE_ADMIN_URL: url }, sentence: 'End-to-end tests failed.',
+        cwd: root, env: { ...env, ...serving }, sentence: 'End-to-end tests failed.',
       }))
     })
   },
@@ -87,12 +87,16 @@ async function installTools() {
   if (missing.length > 0) await installSystemPackages(missing, `The tests need ${missing.join(', ')}`)
 }
 
-let adminUrl = null
+let serving = null
 
-/** The built server and a PostgreSQL of the tests' own, which leaves nothing behind. @returns {Promise<string>} its address */
+/**
+ * The built server and a PostgreSQL of the tests' own. What the tests write goes into the same room: nothing is left behind,
+ * even of a test that was interrupted.
+ * @returns {Promise<{ TEST_DATABASE_ADMIN_URL: string, TMPDIR: string }>} for their environment
+ */
 async function setUpServing() {
   await buildServer(root)
-  if (adminUrl) return adminUrl
+  if (serving) return serving
   const room = await mkdtemp(join(tmpdir(), 'holdover-test-'))
   onClose(() => rm(room, { recursive: true, force: true }))
   await chmod(room, 0o711)
@@ -101,8 +105,8 @@ async function setUpServing() {
     settings: { fsync: 'off', synchronous_commit: 'off', full_page_writes: 'off', max_connections: '300' },
     beforeStart: place => onClose(() => rm(place, { recursive: true, force: true })),
   })
-  adminUrl = urlOf('postgres')
-  return adminUrl
+  serving = { TEST_DATABASE_ADMIN_URL: urlOf('postgres'), TMPDIR: room }
+  return serving
 }
 
 async function vitest(project, extra, more = {}) {
