@@ -31,6 +31,17 @@ describe('who may manage people', () => {
     expect((await client.send<Account>('GET', '/api/account')).body).toMatchObject({ email: `${role}@quillfeather.example`, role, sites: [] })
   })
 
+  // An error page is rendered without a session: guarded, it would lead to the sign-in page and back for ever.
+  it('is told on a page, without being led in circles', async () => {
+    const page = async (client: Client, path: string) => (await client.fetch(path, { headers: { accept: 'text/html' } })).status
+    await addPerson(administrator, 'curious@quillfeather.example', 'technician')
+    const client = await signIn(server.url, 'curious@quillfeather.example', OWN_PASSWORD)
+    expect(await page(client, '/people')).toBe(403)
+    expect(await page(administrator, '/people')).toBe(200)
+    expect(await page(administrator, '/people/0190a6f0-0000-7000-8000-000000000001')).toBe(404)
+    expect(await page(visitor(server.url), '/people')).toBe(302)
+  })
+
   it('nobody without a session', async () => {
     for (const [method, path] of [['GET', '/api/people'], ['POST', '/api/people'], ['PATCH', `/api/people/${first.id}`], ['GET', '/api/account']] as const) {
       expect((await visitor(server.url).send(method, path, method === 'GET' ? undefined : {})).status).toBe(401)
