@@ -31,6 +31,12 @@ export async function signChecks(story: Story, teller: Teller, checks: readonly 
   await story.send()
 }
 
+/** Ticks a step of the work as begun or done, and sends it at once. @param after minutes since the entry before */
+export async function tickStep(story: Story, teller: Teller, step: string, state: 'begun' | 'done', after: number): Promise<void> {
+  story.pass(after).sign(teller, 'step-ticked', { step, state })
+  await story.send()
+}
+
 export interface InHand {
   tags: readonly string[]
   /** by when the points must be off again, Unix ms */

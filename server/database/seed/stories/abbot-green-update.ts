@@ -2,7 +2,7 @@
 import { BEFORE_CHECKS } from '../../../../shared/record/checks'
 import { proposePlan } from '../../../utils/order/propose-plan'
 import { MINUTE } from '../../../utils/window/local-time'
-import { equipmentOf, putInHand, readPressure, signChecks, takeRound } from '../chapters'
+import { equipmentOf, putInHand, readPressure, signChecks, takeRound, tickStep } from '../chapters'
 import type { Round } from '../chapters'
 import type { Stage } from '../stage'
 import { Story } from '../storyteller'
@@ -43,10 +43,13 @@ export async function tellAbbotGreenUpdate(stage: Stage): Promise<void> {
       'alarms-alive': 'Carbon dioxide alarm has its own supply; portable meter on the belt',
       'second-contact': 'Tamsin Wray calls after 15 minutes of silence',
     }, 0.7)
+    await tickStep(story, technician, 'save-settings', 'done', 0.1)
     const usual = usualCourse(story.state.snapshot)
     await takeRound(story, technician, roundOf(0, usual))
     await putInHand(story, technician, { tags: story.state.plan.order.map(line => line.tag), until: lostAt + 2 * HOUR, minutesEach: 0.7 })
     for (const minutes of [0.6, 5, 5]) pressures(minutes)
+    await tickStep(story, technician, 'load-stage', 'begun', 0.3)
+    await tickStep(story, technician, 'load-stage', 'done', 1.1)
     await takeRound(story, technician, roundOf(1, usual))
     story.goTo(lostAt).sign(technician, 'went-dark', { lostAt: story.told(technician) })
     await story.send()
@@ -61,18 +64,13 @@ export async function tellAbbotGreenUpdate(stage: Stage): Promise<void> {
 
   async function dark() {
     const course = productCourse(story.state.snapshot, { lostAt, backAt: Infinity, slower: 2.4, slowerOf: { 'Dairy wall': 1.35 } })
-    await tick('update-state', 'begun', 0.2)
-    await tick('update-state', 'done', 1.7)
-    await tick('load-program', 'begun', 0.3)
+    await tickStep(story, technician, 'update-state', 'begun', 0.2)
+    await tickStep(story, technician, 'update-state', 'done', 1.7)
+    await tickStep(story, technician, 'load-program', 'begun', 0.3)
     await takeRound(story.goTo(lostAt + 4.8 * MINUTE), technician, roundOf(2, course))
     story.pass(1.2).sign(technician, 'note-added', { words: 'Package at 14 %, no errors shown. Cover drawn over the dairy wall.', photos: [] })
     await story.send()
     await takeRound(story.goTo(lostAt + 10.4 * MINUTE), technician, roundOf(3, course))
-  }
-
-  async function tick(step: string, state: 'begun' | 'done', after: number) {
-    story.pass(after).sign(technician, 'step-ticked', { step, state })
-    await story.send()
   }
 
   function roundOf(round: number, product: Round['product']): Round {

@@ -6,7 +6,7 @@ import { handBackOrder } from '../../../utils/order/for-outage'
 import { proposePlan } from '../../../utils/order/propose-plan'
 import { readEntries } from '../../../utils/record/log'
 import { DAY, localClock, MINUTE } from '../../../utils/window/local-time'
-import { draw, equipmentOf, putInHand, readPressure, returnPoints, signChecks, takeRound } from '../chapters'
+import { draw, equipmentOf, putInHand, readPressure, returnPoints, signChecks, takeRound, tickStep } from '../chapters'
 import type { Round } from '../chapters'
 import type { Stage } from '../stage'
 import { Story } from '../storyteller'
@@ -59,6 +59,7 @@ export async function tellQuarryStreetUpdate(stage: Stage): Promise<void> {
       'alarms-alive': 'Leak panel has its own supply; portable detector carried',
       'second-contact': 'Radio channel 4; duty manager calls after 20 minutes of silence',
     }, 1.1)
+    await tickStep(story, technician, 'save-settings', 'done', 0.1)
     await takeRound(story, technician, roundOf(0, usualCourse(story.state.snapshot)))
     const tags = story.state.plan.order.map(line => line.tag).filter(tag => tag !== 'LT-1')
     const loose = tags.indexOf('C-5')
@@ -67,6 +68,8 @@ export async function tellQuarryStreetUpdate(stage: Stage): Promise<void> {
     story.pass(1.2).sign(technician, 'point-excused', { tag: 'LT-1', reason: 'Selector 2 of the bottom row turns loose on its shaft', measure: 'Case lights stay on as found; the store has its own switch for them', photos: [] })
     await putInHand(story, technician, { tags: tags.slice(loose), until, minutesEach: 0.9 })
     for (const minutes of [1, 4.5, 4.5]) pressures(1, minutes)
+    await tickStep(story, technician, 'load-stage', 'begun', 0.3)
+    await tickStep(story, technician, 'load-stage', 'done', 1.2)
     await takeRound(story, technician, roundOf(1, usualCourse(story.state.snapshot)))
     story.pass(0.6).sign(technician, 'went-dark', { lostAt: story.told(technician) })
     await story.send()
@@ -80,26 +83,22 @@ export async function tellQuarryStreetUpdate(stage: Stage): Promise<void> {
   }
 
   async function dark() {
-    await tick('update-state', 'begun', 0.2)
-    await tick('update-state', 'done', 1.3)
-    await tick('load-program', 'begun', 0.2)
+    await tickStep(story, technician, 'update-state', 'begun', 0.2)
+    await tickStep(story, technician, 'update-state', 'done', 1.3)
+    await tickStep(story, technician, 'load-program', 'begun', 0.2)
     await takeRound(story.goTo(lostAt + 4.5 * MINUTE), technician, roundOf(2, course))
     const slip = { name: 'Deli service 3', typed: 53.8, reason: 'Two digits changed places while typing' }
     await takeRound(story.goTo(lostAt + 10.5 * MINUTE), technician, { ...roundOf(3, course), slip })
     await takeRound(story.goTo(lostAt + 17.5 * MINUTE), technician, roundOf(4, course))
-    await tick('load-program', 'done', 1.8)
-    await tick('restart', 'begun', 0.2)
-    await tick('restart', 'done', lostAt / MINUTE + DARK_MINUTES - story.now / MINUTE)
+    await tickStep(story, technician, 'load-program', 'done', 1.8)
+    await tickStep(story, technician, 'restart', 'begun', 0.2)
+    await tickStep(story, technician, 'restart', 'done', lostAt / MINUTE + DARK_MINUTES - story.now / MINUTE)
     story.sign(technician, 'control-back', { backAt: story.told(technician), words: 'Start screen up, outputs still masked' })
     await story.send()
   }
 
-  async function tick(step: string, state: 'begun' | 'done', after: number) {
-    story.pass(after).sign(technician, 'step-ticked', { step, state })
-    await story.send()
-  }
-
   async function handBack() {
+    await tickStep(story, technician, 'check', 'begun', 0.1)
     await signChecks(story, technician, BACK_CHECKS, {
       'version': 'As on the approval',
       'clock': 'Ran 41 s slow after the restart, set',
@@ -121,7 +120,7 @@ export async function tellQuarryStreetUpdate(stage: Stage): Promise<void> {
   async function settle() {
     await takeRound(story, technician, roundOf(8, course))
     await takeRound(story.pass(6), technician, roundOf(9, course))
-    await tick('check', 'done', 1)
+    await tickStep(story, technician, 'check', 'done', 1)
     const drawing = await draw(story, stage, technician, 'technician')
     story.pass(3).sign(technician, 'submitted', { statement: SUBMIT_STATEMENT, drawing, words: 'Selector 2 of panel C needs a new shaft; told the store.' })
     await story.send()
