@@ -36,7 +36,7 @@ export function databaseUrl(): string {
 export function isDatabaseAway(error: unknown): boolean {
   for (let current = error; current instanceof Error; current = current.cause) {
     const code = (current as { code?: unknown }).code
-    if (typeof code === 'string' && /^(ECONNREFUSED|ECONNRESET|ENOTFOUND|ETIMEDOUT|EPIPE|CONNECT_TIMEOUT|CONNECTION_(CLOSED|ENDED|DESTROYED)|57P0[1-3]|53300|08\d{3})$/.test(code)) return true
+    if (typeof code === 'string' && /^(ECONNREFUSED|ECONNRESET|ENOTFOUND|ETIMEDOUT|EPIPE|CONNECT_TIMEOUT|CONNECTION_(CLOSED|ENDED|DESTROYED)|57P0[1-3]|55000|53300|08\d{3})$/.test(code)) return true
   }
   return false
 }
