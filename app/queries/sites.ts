@@ -2,8 +2,6 @@ import type { ImportPreview } from '~~/shared/import/preview'
 import type { ResourceItem, ResourceName, SiteItem, SiteLine, SiteView } from '~~/shared/schemas/site-view'
 import { readFault } from '~/utils/api-error'
 
-const siteKey = (id: string) => `site-${id}`
-
 /** The sites that the person may see, by name. */
 export function useSites() {
   const request = useRequestFetch()
@@ -14,7 +12,8 @@ export function useSites() {
 export async function useSite(id: string) {
   const request = useRequestFetch()
   const path: string = `/api/sites/${id}`
-  const answer = await useAsyncData(siteKey(id), () => request<SiteView>(path), { lazy: true })
+  // A key a page: one shared by two pages would show on the second what the first was rendered with.
+  const answer = await useAsyncData(`site-${id}:${useRoute().path}`, () => request<SiteView>(path), { lazy: true })
   const missing = () => readFault(answer.error.value).status === 404
   const gone = () => createError({ status: 404, statusText: 'Not Found', message: 'There is no such site', fatal: true })
   if (answer.error.value && missing()) throw gone()

@@ -3,7 +3,8 @@ import type { WorkKindItem } from '~~/shared/schemas/site-view'
 /** All kinds of work with their steps, by name. */
 export function useWorkKinds() {
   const request = useRequestFetch()
-  return useAsyncData('work-kinds', () => request<WorkKindItem[]>('/api/work-kinds'), { lazy: true })
+  // A key a page: one shared by two pages would show on the second what the first was rendered with.
+  return useAsyncData(`work-kinds:${useRoute().path}`, () => request<WorkKindItem[]>('/api/work-kinds'), { lazy: true })
 }
 
 /** Makes a kind of work, or changes it where it has an id. */
