@@ -7,11 +7,12 @@ import { hashWords } from '../../shared/record/summary-words'
 import { temperatureWords } from '../../shared/charts/words'
 import { drawTemperatures } from './charts'
 import { drawEntries, drawLooseEnds, drawProof } from './entry-sections'
+import { Feet } from './foot'
 import type { FontBytes } from './fonts'
 import { drawFront } from './front'
 import { drawChecks, drawDarks, drawPlan } from './plan-sections'
 import { drawPoints, drawRounds, drawVerdicts } from './run-sections'
-import { COLOURS, MARGIN, paperSize, Sheet } from './sheet'
+import { paperSize, Sheet } from './sheet'
 import { Typesetter } from './typesetter'
 
 /** All that the paper is made from; the same input makes the same bytes. */
@@ -42,7 +43,7 @@ export function openRecordPdf(paper: RecordPaper, fonts: FontBytes): { doc: PDFK
   const date = new Date(paper.now)
   const title = `Record of a controller outage${heading.code ? ` ${heading.code}` : ''}: ${heading.site}, ${heading.controller}`
   const doc = new PDFDocument({
-    autoFirstPage: false, bufferPages: true, size: paperSize(paper.state.snapshot.site.paper), margin: 0, pdfVersion: '1.7', tagged: true, lang: 'en', displayTitle: true,
+    autoFirstPage: false, size: paperSize(paper.state.snapshot.site.paper), margin: 0, pdfVersion: '1.7', tagged: true, lang: 'en', displayTitle: true,
     // Without a font of its own the constructor would load a standard one that the paper does not use.
     font: null as never,
     info: { Title: title, Author: 'Holdover', Subject: `${heading.work}, ${heading.site}`, Creator: 'Holdover', Producer: 'Holdover', CreationDate: date, ModDate: date },
@@ -54,7 +55,9 @@ export function openRecordPdf(paper: RecordPaper, fonts: FontBytes): { doc: PDFK
 
 async function draw(doc: PDFKit.PDFDocument, paper: RecordPaper, fonts: FontBytes): Promise<void> {
   const type = new Typesetter(doc, fonts)
-  const sheet = new Sheet(doc, type, paper.state.snapshot.site.paper)
+  const root = paper.state.sealed ? `seal ${hashWords(paper.state.sealed.root)}` : 'not sealed'
+  const feet = new Feet(doc, type, `${paper.summary.heading.code ?? 'not numbered'} · ${root}`)
+  const sheet = new Sheet(doc, type, paper.state.snapshot.site.paper, feet)
   drawFront(sheet, paper)
   drawCharts(sheet, paper)
   await drawPlan(sheet, paper)
@@ -67,7 +70,7 @@ async function draw(doc: PDFKit.PDFDocument, paper: RecordPaper, fonts: FontByte
   await drawEntries(sheet, paper)
   await drawProof(sheet, paper)
   sheet.end()
-  drawFeet(sheet, paper)
+  feet.end()
   doc.end()
 }
 
@@ -76,20 +79,5 @@ function drawCharts(sheet: Sheet, { state, summary, now }: RecordPaper): void {
     sheet.begin(`Product temperatures, °${chart.unit}`, CHART_HEIGHT, `Product temperatures, limit ${temperatureWords(chart.limit, chart.unit)}`)
     drawTemperatures(sheet, chart, summary.heading.timeZone, CHART_HEIGHT)
     if (chart.left > 0) sheet.paragraph(`Drawn: the ${chart.cases.length} cases that came nearest to their limit; ${chart.left} more stand in the tables.`, { style: { size: 7.5 } })
-  }
-}
-
-/** Code, root and page number at the foot of every page. */
-function drawFeet({ doc, type, left, right, bottom }: Sheet, { state, summary }: RecordPaper): void {
-  const { start, count } = doc.bufferedPageRange()
-  const y = bottom + MARGIN.foot - 30
-  for (let page = start; page < start + count; page++) {
-    doc.switchToPage(page)
-    doc.markContent('Artifact', { type: 'Pagination' })
-    doc.moveTo(left, y - 12).lineTo(right, y - 12).lineWidth(0.9).stroke(COLOURS.ink)
-    const root = state.sealed ? `seal ${hashWords(state.sealed.root)}` : 'not sealed'
-    type.draw(`${summary.heading.code ?? 'not numbered'} · ${root}`, left, y, { face: 'mono', size: 7.5, colour: COLOURS['ink-2'] })
-    type.drawRight(`page ${page - start + 1} of ${count}`, right, y, { size: 8.5, colour: COLOURS['ink-2'] })
-    doc.endMarkedContent()
   }
 }

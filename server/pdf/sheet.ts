@@ -25,7 +25,8 @@ export class Sheet {
   private readonly root: Element
   private section: Element
 
-  constructor(readonly doc: Document, readonly type: Typesetter, paper: Paper) {
+  /** @param foot draws the foot of the page that was begun just now */
+  constructor(readonly doc: Document, readonly type: Typesetter, paper: Paper, private readonly foot: { draw: (left: number, right: number, bottom: number) => void }) {
     const [width, height] = PAPERS[paper]
     this.right = width - MARGIN.side
     this.width = this.right - this.left
@@ -33,7 +34,7 @@ export class Sheet {
     this.root = doc.struct('Document')
     doc.addStructure(this.root)
     this.section = this.root
-    doc.addPage()
+    this.newPage()
   }
 
   /** Room left on this page. */
@@ -43,6 +44,7 @@ export class Sheet {
 
   newPage(): void {
     this.doc.addPage()
+    this.foot.draw(this.left, this.right, this.bottom)
     this.y = MARGIN.top
   }
 

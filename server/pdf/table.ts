@@ -22,7 +22,7 @@ const PAD = 4.2
 const GAP = 8
 
 /** Gives the event loop to others after so many rows. */
-const ROWS_AT_ONCE = 100
+const ROWS_AT_ONCE = 20
 
 interface Placed { x: number, width: number, column: Column }
 

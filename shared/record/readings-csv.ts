@@ -1,6 +1,7 @@
 import { happenedAt, isoTime } from './entry'
 import type { StoredEntry } from './entry'
 import { VERDICT_WORDS } from './kinds/server'
+import type { Verdict } from './kinds/server'
 import { acceptedOf } from './record-lines'
 import { caseName, nameOf } from './select'
 import type { OutageState, ReadingState } from './state'
@@ -26,9 +27,17 @@ export function csvRow(cells: readonly (string | number | null)[]): string {
 
 /** A time at the site with its offset: 2026-03-03T02:24:00-06:00. @param at Unix ms, cut to seconds */
 export function localTime(at: number, timeZone: string): string {
-  const second = Math.floor(at / 1000) * 1000
-  const parts = new Intl.DateTimeFormat('en-GB', { timeZone, timeZoneName: 'longOffset', year: 'numeric' }).formatToParts(new Date(second))
-  const name = (parts.find(part => part.type === 'timeZoneName')?.value ?? 'GMT').replace('GMT', '')
+  return localTimes(timeZone)(at)
+}
+
+/** The same for many times of one zone; a formatter is made once. */
+export function localTimes(timeZone: string): (at: number) => string {
+  const format = new Intl.DateTimeFormat('en-GB', { timeZone, timeZoneName: 'longOffset', year: 'numeric' })
+  return at => withOffset(Math.floor(at / 1000) * 1000, format)
+}
+
+function withOffset(second: number, format: Intl.DateTimeFormat): string {
+  const name = (format.formatToParts(new Date(second)).find(part => part.type === 'timeZoneName')?.value ?? 'GMT').replace('GMT', '')
   const [, sign = '+', hours = '00', minutes = '00'] = /^([+-])(\d{2}):(\d{2})/.exec(name) ?? []
   const offset = (sign === '-' ? -1 : 1) * (Number(hours) * 60 + Number(minutes))
   return `${isoTime(second + offset * 60_000).slice(0, 19)}${sign}${hours}:${minutes}`
@@ -37,6 +46,8 @@ export function localTime(at: number, timeZone: string): string {
 /** Every reading of a record, in the order of the log, as CSV with a head. */
 export function readingsCsv(state: OutageState, entries: readonly StoredEntry[]): string {
   const folded = new Map<string, ReadingState>(Object.values(state.cases).flatMap(item => item.readings.map(reading => [reading.entry, reading])))
+  const verdictThen = verdictsThen(state, entries)
+  const local = localTimes(state.snapshot.site.timeZone)
   const rows = entries.flatMap((stored) => {
     const { entry } = stored
     if (entry.kind !== 'reading-taken') return []
@@ -45,18 +56,22 @@ export function readingsCsv(state: OutageState, entries: readonly StoredEntry[])
     const limit = state.snapshot.cases.find(item => item.id === body.caseId)?.limit ?? null
     const instrument = state.snapshot.instruments.find(item => item.id === body.instrumentId)?.name ?? null
     return [csvRow([
-      stored.seq, body.round, caseName(state, body.caseId), localTime(happenedAt(entry), state.snapshot.site.timeZone), isoTime(happenedAt(entry)),
+      stored.seq, body.round, caseName(state, body.caseId), local(happenedAt(entry)), isoTime(happenedAt(entry)),
       reading?.struck ? null : reading?.value ?? body.value, body.unit, body.value, limit?.value ?? null, limit?.unit ?? null, body.method, instrument, nameOf(state, entry.by),
-      verdictThen(state, entries, body.caseId, stored), stored.standing, reading?.correctedBy ? 'yes' : 'no', reading?.struck ? 'yes' : 'no', body.words,
+      verdictThen(body.caseId, stored), stored.standing, reading?.correctedBy ? 'yes' : 'no', reading?.struck ? 'yes' : 'no', body.words,
     ])]
   })
   return BYTE_ORDER_MARK + csvRow(HEAD) + rows.join('')
 }
 
-/** The verdict in force once a reading had been judged: the last one entered by the time it was received; null before control was lost. */
-function verdictThen(state: OutageState, entries: readonly StoredEntry[], caseId: string, reading: StoredEntry): string | null {
-  const last = acceptedOf(entries, 'verdict-changed').filter(({ stored, entry }) => entry.body.caseId === caseId && stored.receivedAt <= reading.receivedAt).at(-1)
-  if (last) return VERDICT_WORDS[last.entry.body.verdict]
-  const dark = state.darks[0]
-  return dark && happenedAt(reading.entry) >= dark.from ? VERDICT_WORDS.within : null
+/** Gives the verdict in force once a reading had been judged: the last one entered by the time it was received; null before control was lost. */
+function verdictsThen(state: OutageState, entries: readonly StoredEntry[]): (caseId: string, reading: StoredEntry) => string | null {
+  const byCase = new Map<string, { receivedAt: string, verdict: Verdict }[]>()
+  for (const { stored: { receivedAt }, entry: { body } } of acceptedOf(entries, 'verdict-changed')) byCase.set(body.caseId, [...byCase.get(body.caseId) ?? [], { receivedAt, verdict: body.verdict }])
+  const darkAt = state.darks[0]?.from ?? Infinity
+  return (caseId, reading) => {
+    const last = byCase.get(caseId)?.findLast(line => line.receivedAt <= reading.receivedAt)
+    if (last) return VERDICT_WORDS[last.verdict]
+    return happenedAt(reading.entry) >= darkAt ? VERDICT_WORDS.within : null
+  }
 }

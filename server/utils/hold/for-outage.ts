@@ -7,7 +7,7 @@ import type { SnapshotCase } from '~~/shared/record/snapshot'
 import { DEFAULT_TAU_HOURS, holdInputOf } from './defaults'
 import { fitHold } from './fit'
 import { holdTime } from './hold-time'
-import { roundDueMinutes } from './rounds'
+import { roundDueMinutes, SHORTEST_MINUTES } from './rounds'
 
 /** Air around the product of a shop whose air nobody measured, °C: an estimate. */
 export const SHOP_AIR_C = 24
@@ -89,19 +89,24 @@ export function forecastCases(state: OutageState, now: number): CaseForecast[] {
 /** Readings taken later than they were due by more than two minutes, with how late, minutes. */
 export function lateReadings(state: OutageState, until: number): { caseId: string, seq: number | null, minutes: number }[] {
   const late: { caseId: string, seq: number | null, minutes: number }[] = []
+  const soonest = Math.min(SHORTEST_MINUTES, state.snapshot.site.intervalMinutes) * MINUTE
   for (const known of state.snapshot.cases) {
     const item = state.cases[known.id]
     if (!item?.touched || known.runsAlone) continue
     for (const dark of state.darks) {
       const to = dark.to ?? until
       const inDark = productReadings(item).filter(reading => reading.at > dark.from && reading.at <= to)
-      let dueAt = forecastCase(state, known, dark.from).dueAt
+      let last = dark.from
       for (const reading of inDark) {
+        // A forecast is dear, so none is made where the reading came before any case could be due.
+        const dueAt = last > dark.from && reading.at <= last + soonest ? reading.at : forecastCase(state, known, last).dueAt
         if (reading.at > dueAt + 2 * MINUTE) late.push({ caseId: known.id, seq: reading.seq, minutes: (reading.at - dueAt) / MINUTE })
-        dueAt = forecastCase(state, known, reading.at).dueAt
+        last = reading.at
       }
+      if (dark.to !== null) continue
+      const dueAt = forecastCase(state, known, last).dueAt
       const emptied = item.empty ? item.acts.at(-1)?.mark.at ?? Infinity : Infinity
-      if (dark.to === null && Math.min(to, emptied) > dueAt + 2 * MINUTE) late.push({ caseId: known.id, seq: null, minutes: (Math.min(to, emptied) - dueAt) / MINUTE })
+      if (Math.min(to, emptied) > dueAt + 2 * MINUTE) late.push({ caseId: known.id, seq: null, minutes: (Math.min(to, emptied) - dueAt) / MINUTE })
     }
   }
   return late.sort((a, b) => (a.seq ?? Infinity) - (b.seq ?? Infinity) || a.caseId.localeCompare(b.caseId))

@@ -1,4 +1,5 @@
-const SHORTEST_MINUTES = 5
+/** No case is due again sooner, unless its site's interval is shorter. */
+export const SHORTEST_MINUTES = 5
 const LONGEST_MINUTES = 30
 const LONGEST_SLOW_MINUTES = 60
 

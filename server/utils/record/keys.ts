@@ -41,14 +41,30 @@ export function signBytes(bytes: Uint8Array, key: KeyObject): string {
   return sign(null, bytes, key).toString('base64url')
 }
 
+/**
+ * A check of signatures by one key; for many entries of one signer the key is read once.
+ * @param publicKey 32 bytes in base64url; nothing fits a malformed or weak one
+ */
+export function verifierOf(publicKey: string): (bytes: Uint8Array, signature: string) => boolean {
+  const raw = Buffer.from(publicKey, 'base64url')
+  let key: KeyObject | null = null
+  try {
+    key = raw.length === 32 && !isWeak(raw) ? createPublicKey({ key: Buffer.concat([PUBLIC_PREFIX, raw]), format: 'der', type: 'spki' }) : null
+  } catch {
+    key = null
+  }
+  return (bytes, signature) => {
+    const mark = Buffer.from(signature, 'base64url')
+    if (!key || mark.length !== 64) return false
+    try {
+      return verify(null, bytes, key, mark)
+    } catch {
+      return false
+    }
+  }
+}
+
 /** Whether a signature over bytes is good; false for a malformed or weak key and a malformed signature too. */
 export function verifyBytes(bytes: Uint8Array, signature: string, publicKey: string): boolean {
-  const raw = Buffer.from(publicKey, 'base64url')
-  const mark = Buffer.from(signature, 'base64url')
-  if (raw.length !== 32 || mark.length !== 64 || isWeak(raw)) return false
-  try {
-    return verify(null, bytes, createPublicKey({ key: Buffer.concat([PUBLIC_PREFIX, raw]), format: 'der', type: 'spki' }), mark)
-  } catch {
-    return false
-  }
+  return verifierOf(publicKey)(bytes, signature)
 }
