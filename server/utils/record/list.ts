@@ -1,4 +1,6 @@
 import { and, desc, eq, inArray, sql } from 'drizzle-orm'
+import { z } from 'zod'
+import { time } from '../../../shared/record/kinds/common'
 import type { Phase } from '../../../shared/record/phases'
 import type { OutagePage } from '../../../shared/schemas/outage-list'
 import { controllers, outages, sites } from '../../database/schema'
@@ -39,9 +41,12 @@ export async function listOutages(person: Person, filter: OutageFilter): Promise
 
 const iso = (date: Date | null) => date?.toISOString() ?? null
 
+const placeSchema = z.tuple([time, z.string().uuid()])
+
 /** Rows after a place that an earlier page ended at. */
 function beyond(place: string) {
-  const [at = '', id = ''] = place.split('_')
-  if (Number.isNaN(Date.parse(at)) || !/^[0-9a-f-]{36}$/.test(id)) return unprocessable('after', 'Give the "next" of an earlier page')
+  const parsed = placeSchema.safeParse(place.split('_'))
+  if (!parsed.success) return unprocessable('after', 'Give the "next" of an earlier page')
+  const [at, id] = parsed.data
   return sql`(date_trunc('milliseconds', ${outages.openedAt}), ${outages.id}) < (${at}::timestamptz, ${id}::uuid)`
 }
