@@ -8,7 +8,8 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { connect } from '../../server/utils/database'
 import { openStorage } from '../../server/utils/files/storage'
 import { seedDemo } from '../../server/database/seed'
-import type { AnyEntry, StoredEntry } from '../../shared/record/entry'
+import type { StoredEntry } from '../../shared/record/entry'
+import type { BodyOf, EntryKind } from '../../shared/record/kinds'
 import type { OutageState } from '../../shared/record/state'
 import type { OutageItem, OutagePage } from '../../shared/schemas/outage-list'
 import type { Client } from '../support/client'
@@ -55,7 +56,7 @@ describe('the demo', () => {
   const codeOf = (site: string, phase: string) => items.find(item => item.site.name === site && item.phase === phase)!.id
   const stateOf = async (id: string) => (await supervisor.send<OutageState>('GET', `/api/outages/${id}`)).body
   const logOf = async (id: string) => (await supervisor.send<{ entries: StoredEntry[] }>('GET', `/api/outages/${id}/entries?after=0`)).body.entries
-  const bodiesOf = <K extends AnyEntry['kind']>(log: StoredEntry[], kind: K) => log.map(stored => stored.entry).filter((entry): entry is Extract<AnyEntry, { kind: K }> => entry.kind === kind).map(entry => entry.body)
+  const bodiesOf = <K extends EntryKind>(log: StoredEntry[], kind: K) => log.filter(stored => stored.entry.kind === kind).map(stored => stored.entry.body as BodyOf<K>)
 
   it('shows an outage of each sort, newest first', () => {
     expect(items.map(item => [item.code, item.site.name, item.phase, item.planned, item.planSubmitted])).toEqual([
