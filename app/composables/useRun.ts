@@ -1,6 +1,6 @@
 import type { InjectionKey, Ref } from 'vue'
 import { inject, provide, ref } from 'vue'
-import { navigateTo } from '#imports'
+import { navigateTo, useRouter } from '#imports'
 import { clockWords } from '~~/shared/charts/words'
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
 import type { OutageHandle, Signed } from '~/composables/useOutage'
@@ -36,6 +36,7 @@ const WAITED_FOR: ReadonlySet<EntryKind> = new Set([
 /** Signing from a screen: what is under way, and what came of it in words. */
 export function useSigning() {
   const run = useRun()
+  const router = useRouter()
   const busy = ref(false)
   const trouble = ref<string[]>([])
 
@@ -48,13 +49,15 @@ export function useSigning() {
     if (busy.value) return false
     busy.value = true
     trouble.value = []
+    const here = router.currentRoute.value.fullPath
     try {
       const { foreseen, receipt } = await run.sign(kind, body)
       const { status, why } = WAITED_FOR.has(kind) ? await receipt : foreseen
       if (!WAITED_FOR.has(kind)) void receipt.then(late => tell(late.status === foreseen.status ? 'kept' : late.status, late.why))
       tell(status, why)
       const good = status === 'accepted' || status === 'kept'
-      if (good && then !== undefined) await navigateTo(then)
+      // Who has gone on to another screen meanwhile is left there.
+      if (good && then !== undefined && router.currentRoute.value.fullPath === here) await navigateTo(then)
       return good
     } catch (error) {
       trouble.value = [error instanceof Error && error.name === 'ZodError' ? faultOf(error) : `This could not be signed: ${error instanceof Error ? error.message : String(error)}`]
