@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest'
 import { BACK_CHECKS } from '../../../shared/record/checks'
 import { isoTime } from '../../../shared/record/entry'
 import { applyStored, filesOf, fold, foldLog } from '../../../shared/record/fold'
+import type { BodyOf } from '../../../shared/record/kinds'
 import { darkMs, nextRound, pointsInHand, proofsDue, roundsTaken } from '../../../shared/record/select'
 import { emptyState } from '../../../shared/record/state'
 import { secondTechnician, server, supervisor, technician } from '../../support/record'
@@ -143,7 +144,7 @@ describe('rounds', () => {
 })
 
 describe('verdicts and acts', () => {
-  const verdict = { caseId: DAIRY, verdict: 'act', deadline: isoTime(BEGAN), minutesAbove: 3, clause: '3-501.16', source: 'FDA', act: 'Cool it', why: [], judgedAt: isoTime(BEGAN) } as const
+  const verdict: BodyOf<'verdict-changed'> = { caseId: DAIRY, verdict: 'act', deadline: isoTime(BEGAN), minutesAbove: 3, clause: '3-501.16', source: 'FDA', act: 'Cool it', why: [], judgedAt: isoTime(BEGAN) }
 
   it('a verdict that demands an act stays open until one is signed', () => {
     const writer = storyTo('dark')
