@@ -1,0 +1,54 @@
+import { axe, expect, hydrated, signInAs, test } from './support/fixtures'
+import { enrol } from './support/run'
+
+const people = {
+  technician: 'technician@quillfeather.example',
+  supervisor: 'supervisor@quillfeather.example',
+  auditor: 'auditor@quillfeather.example',
+  administrator: 'admin@quillfeather.example',
+}
+
+interface Item { id: string, phase: string, planSubmitted: boolean }
+
+/** Every screen, for the people who use it: nothing wider than the screen, and no accessibility fault. */
+async function look(page: import('@playwright/test').Page, path: string, enhanced: boolean) {
+  await test.step(path, async () => {
+    await page.goto(path)
+    await hydrated(page)
+    await expect(page.getByRole('heading', { level: 1 })).toBeVisible()
+    await expect(page.getByText('Reading the log…')).toHaveCount(0)
+    expect(await page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth), `${path} is wider than the screen`).toBeLessThanOrEqual(0)
+    await axe(page, { enhanced })
+  })
+}
+
+test('the technician\'s screens', async ({ page }) => {
+  test.setTimeout(300_000)
+  await signInAs(page, people.technician)
+  await look(page, '/account/device', true)
+  await enrol(page)
+  const { items } = await (await page.request.get('/api/outages')).json() as { items: Item[] }
+  const dark = items.find(item => item.phase === 'dark')!
+  const caseId = Object.keys((await (await page.request.get(`/api/outages/${dark.id}`)).json()).cases)[0]
+  const tag = Object.keys((await (await page.request.get(`/api/outages/${dark.id}`)).json()).points)[0]
+  for (const path of ['/', '/outages/new', '/outages/lost', '/account', '/rulebooks']) await look(page, path, true)
+  for (const path of ['', '/round', '/points', `/points/${encodeURIComponent(tag!)}`, '/pressures', '/steps', '/act', `/act/${caseId}`, '/turn-back', '/back', '/note', '/plan', '/questioned', '/correct', '/questions']) await look(page, `/outages/${dark.id}${path}`, true)
+  const planned = items.find(item => item.phase === 'plan')!
+  for (const path of ['', '/plan-edit', '/call-off', '/lost', '/checks', '/go-dark', '/return', '/proofs', '/exception', '/defrost', '/submit']) await look(page, `/outages/${planned.id}${path}`, true)
+})
+
+test('the screens of the others', async ({ page, open }) => {
+  test.setTimeout(300_000)
+  await signInAs(page, people.supervisor)
+  const { items } = await (await page.request.get('/api/outages')).json() as { items: Item[] }
+  const submitted = items.find(item => item.phase === 'submitted')!
+  const sealed = items.find(item => item.phase === 'sealed')!
+  for (const path of ['/', '/records', `/records/${submitted.id}`, `/outages/${submitted.id}`, `/outages/${submitted.id}/review`]) await look(page, path, false)
+  const desk = await open('desk')
+  await signInAs(desk, people.auditor)
+  for (const path of ['/', '/records', `/records/${sealed.id}`]) await look(desk, path, false)
+  const admin = await open('desk')
+  await signInAs(admin, people.administrator)
+  const sites = await (await admin.request.get('/api/sites')).json() as { id: string }[]
+  for (const path of ['/', '/people', '/people/new', '/sites', `/sites/${sites[0]!.id}`, '/work-kinds', '/account']) await look(admin, path, false)
+})

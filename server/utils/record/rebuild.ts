@@ -1,0 +1,28 @@
+import { asc, gt } from 'drizzle-orm'
+import { foldLog } from '../../../shared/record/fold'
+import { outages } from '../../database/schema'
+import type { Database } from '../database'
+import { saveProjection } from './draft'
+import { readEntries } from './log'
+import { serverSigner } from './server-signer'
+
+/**
+ * Folds every log anew and writes the projection that lists and screens read; the logs are not touched.
+ * @returns how many outages there are, and the codes of those whose projection had differed
+ */
+export async function rebuildProjections(db: Database): Promise<{ count: number, differed: string[] }> {
+  const signer = await serverSigner(db)
+  const differed: string[] = []
+  let count = 0
+  for (let after = '00000000-0000-0000-0000-000000000000'; ;) {
+    const [row] = await db.select().from(outages).where(gt(outages.id, after)).orderBy(asc(outages.id)).limit(1)
+    if (!row) return { count, differed }
+    after = row.id
+    count++
+    await db.transaction(async (tx) => {
+      const state = foldLog(row.id, await readEntries(tx, row.id))
+      if (row.size !== state.size || row.phase !== state.phase) differed.push(row.code)
+      await saveProjection({ db: tx, state, signer, now: row.updatedAt.getTime() })
+    })
+  }
+}
