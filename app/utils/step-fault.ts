@@ -1,10 +1,12 @@
 import type { StepPlan } from '~~/shared/schemas/work'
+import { workKindSchema } from '~~/shared/schemas/work'
+import { formErrorMap } from '~/utils/form-errors'
 
-/** The first fault of a list of steps, with the step that it is in. @param errors by path, as steps[2].likely */
-export function stepFault(steps: readonly StepPlan[], errors: Partial<Record<string, string>>, field: 'steps' | 'rollBack'): string | undefined {
-  const path = Object.keys(errors).find(one => one === field || one.startsWith(`${field}[`))
-  const index = /\[(\d+)\]/.exec(path ?? '')?.[1]
-  if (!path || !errors[path]) return undefined
-  if (index === undefined) return errors[path]
-  return `${steps[Number(index)]?.name || `Step ${Number(index) + 1}`}: ${errors[path]}`
+/** What is wrong with a list of steps, with the step that it is in. @param message what the form says of the whole list */
+export function stepFault(steps: readonly StepPlan[], message: string | undefined, field: 'steps' | 'rollBack'): string | undefined {
+  if (!message) return undefined
+  const parsed = workKindSchema.shape[field].safeParse(steps, { errorMap: formErrorMap })
+  const [issue] = parsed.success ? [] : parsed.error.issues
+  const index = issue?.path[0]
+  return issue && typeof index === 'number' ? `${steps[index]?.name || `Step ${index + 1}`}: ${issue.message}` : message
 }
