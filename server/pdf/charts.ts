@@ -68,10 +68,8 @@ export function drawTemperatures(sheet: Sheet, chart: LimitChart, timeZone: stri
     for (const line of drawn.lines) {
       if (line.path) doc.save().translate(sheet.left, sheet.y).scale(SCALE).path(line.path).lineJoin('round').lineWidth(2).stroke(COLOURS.trace).restore()
       for (const dot of line.dots) doc.circle(x(dot.x), y(dot.y), 1.7).fill(COLOURS.trace)
-      // Names stand in one column; where they had to be moved apart a thin line leads to each.
-      const [last, from] = [line.dots.at(-1)!, x(plot.right) + 14]
-      doc.moveTo(x(last.x) + 3, y(last.y)).lineTo(x(plot.right) + 4, y(last.y)).lineTo(from - 2, y(line.label.y)).lineWidth(0.5).stroke(COLOURS.field)
-      type.draw(type.fit(line.name, sheet.right - from, { size: 7.5 }), from, y(line.label.y) + 2.6, { size: 7.5, colour: COLOURS.ink })
+      doc.save().translate(sheet.left, sheet.y).scale(SCALE).path(line.leader).lineWidth(0.9).stroke(COLOURS.field).restore()
+      type.draw(type.fit(line.name, sheet.right - x(line.label.x), { size: 7.5 }), x(line.label.x), y(line.label.y) + 2.6, { size: 7.5, colour: COLOURS.ink })
     }
   })
   figure.end()

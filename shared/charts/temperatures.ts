@@ -19,10 +19,13 @@ export interface TemperatureGeometry {
   xTicks: { minute: number, x: number }[]
   dark: { x: number, width: number }[]
   limits: { value: number, label: string, y: number }[]
-  lines: { id: string, name: string, path: string, dots: (DrawnPoint & ChartReading)[], label: DrawnPoint }[]
+  /** Names stand in one column at the right; `leader` leads from the last reading of a line to its name. */
+  lines: { id: string, name: string, path: string, dots: (DrawnPoint & ChartReading)[], label: DrawnPoint, leader: string }[]
 }
 
-const margin = { left: 44, right: 132, top: 12, bottom: 30 } as const
+const margin = { left: 44, right: 148, top: 12, bottom: 30 } as const
+/** Between the plot and the names: room for the leaders. */
+const labelGap = 24
 
 /** Pushes labels apart until they stand at least `gap` from each other, from the top down, then back inside `bottom`. */
 export function spreadLabels(wanted: readonly number[], gap: number, bottom: number): number[] {
@@ -44,7 +47,7 @@ export function temperatures({ width, height, dark, limits, cases }: Temperature
   const readings = cases.flatMap(item => item.readings)
   const minutes = [...readings.map(reading => reading.minute), ...dark.flatMap(span => [span.from, span.to ?? span.from])]
   const values = [...readings.map(reading => reading.value), ...limits.map(limit => limit.value)]
-  const plot = { left: margin.left, right: width - margin.right, top: margin.top, bottom: height - margin.bottom }
+  const plot = { left: margin.left, right: Math.max(margin.left + 40, width - margin.right), top: margin.top, bottom: height - margin.bottom }
   const firstMinute = Math.min(0, ...minutes)
   const lastMinute = Math.max(firstMinute + 10, ...minutes)
   const x = scaleLinear([firstMinute - (lastMinute - firstMinute) * 0.04, lastMinute], [plot.left, plot.right]).clamp(true)
@@ -68,6 +71,10 @@ export function temperatures({ width, height, dark, limits, cases }: Temperature
     })),
     dark: dark.map(span => ({ x: x(span.from), width: x(span.to ?? lastMinute) - x(span.from) })),
     limits: limits.map(limit => ({ ...limit, y: y(limit.value) })),
-    lines: lines.map((line, index) => ({ ...line, label: { x: line.dots.at(-1)!.x + 9, y: labels[index]! } })),
+    lines: lines.map((line, index) => {
+      const last = line.dots.at(-1)!
+      const label = { x: plot.right + labelGap, y: labels[index]! }
+      return { ...line, label, leader: polyline([{ x: last.x + 5, y: last.y }, { x: plot.right + 5, y: last.y }, { x: label.x - 3, y: label.y }]) }
+    }),
   }
 }

@@ -20,7 +20,12 @@ export function limitSources(state: OutageState): string[] {
   const sources = watched.flatMap((item) => {
     const within = rulebook && classById(rulebook, item.foodClass)?.within
     const own = item.stricter ? [`the site's own ${item.limit.value} °${item.limit.unit} for ${item.name}`] : []
-    return [within ? `${within.source}, ${within.clause}` : name, ...own]
+    return [within ? authorityWords(within) : name, ...own]
   })
   return [...new Set(sources)]
+}
+
+/** Source first; where there is none, what is asked comes first. */
+function authorityWords({ clause, source }: { clause: string, source: string }): string {
+  return source.startsWith('common practice') ? `${clause}: ${source}` : `${source}, ${clause}`
 }
