@@ -77,9 +77,9 @@ const NEVER: Record<string, (happening: Happening) => void> = {
   },
   'a questioned entry moves no phase, lowers no count, lifts no verdict and says why': ({ before, after, judgement }) => {
     if (judgement.standing !== 'questioned') return
-    expect([after.phase, Object.values(after.cases).map(item => item.openAct)]).toEqual([before.phase, before.openActs])
-    expect(pointsInHand(after).length).toBeGreaterThanOrEqual(before.inHand)
-    expect(judgement.why.length).toBeGreaterThan(0)
+    const openActs = Object.values(after.cases).map(item => item.openAct)
+    const kept = after.phase === before.phase && pointsInHand(after).length >= before.inHand && openActs.join() === before.openActs.join() && judgement.why.length > 0
+    if (!kept) expect({ phase: after.phase, inHand: pointsInHand(after).length, openActs, why: judgement.why }).toEqual(before)
   },
   'nobody approves or seals what they planned or submitted (I10)': ({ entry, before, judgement }) => {
     if (judgement.standing !== 'accepted') return
@@ -105,9 +105,11 @@ describe('whatever is signed', () => {
         note(happening)
         for (const [promise, check] of Object.entries(NEVER)) keeping(promise, () => check(happening))
         hands.follow(happening)
-        expect(pointsInHand(happening.after).map(point => point.tag).sort()).toEqual(hands.tags)
+        // Compared as text first: asking expect() ten thousand times takes most of the run.
+        const counted = pointsInHand(happening.after).map(point => point.tag).sort()
+        if (counted.join() !== hands.tags.join()) expect(counted).toEqual(hands.tags)
       })
-    }), { ...RUNS, numRuns: 450 })
+    }), { ...RUNS, numRuns: 700 })
 
     expect([...seen.phases].sort()).toEqual([...PHASES].sort())
     expect(DRAWN.filter(kind => kind !== 'outage-opened' && !seen.accepted.get(kind)), 'never accepted').toEqual([])

@@ -18,7 +18,7 @@ import type { OutageState } from '../../../shared/record/state'
 import type { Role } from '../../../shared/schemas/people'
 import type { RecordWriter } from '../../support/record'
 import { secondTechnician, supervisor, technician, uuidFor } from '../../support/record'
-import { BEGAN, CIRCUIT, DRAWING, opening, PHASES_TOLD, planOf, pressure, readAll, reading, readyForDark, returnAll, signChecks, snapshot, storyTo, submission } from './store'
+import { BEGAN, CIRCUIT, DRAWING, inHand, opening, PHASES_TOLD, planOf, pressure, readAll, reading, readyForDark, returnAll, signChecks, snapshot, steadySuction, storyTo, submission } from './store'
 
 /** One thing that somebody does; `draws` choose what its body says. */
 export interface Deed { kind: PersonKind, /** chooses an apt kind instead, where it is odd */ apt: number, who: number, minutes: number, late: boolean, draws: [number, number, number] }
@@ -95,7 +95,7 @@ const APT: Partial<Record<Phase, PersonKind[]>> = {
   'dark': ['control-back', 'control-back', 'turned-back', 'point-in-hand', 'point-excused', 'act-signed', 'decided-otherwise'],
   'hand-back': ['hand-back-closed', 'hand-back-closed', 'left-in-exception', 'point-in-auto', 'point-in-auto', 'point-proven', 'check-signed', 'control-lost'],
   'settle': ['submitted', 'submitted', 'reading-taken', 'point-in-hand', 'point-in-auto', 'left-in-exception', 'questioned-settled', 'question-answered', 'control-lost'],
-  'submitted': ['sealed', 'sealed', 'returned', 'question-asked', 'question-answered', 'questioned-settled', 'point-in-hand'],
+  'submitted': ['sealed', 'sealed', 'sealed', 'returned', 'question-asked', 'question-answered', 'questioned-settled', 'point-in-hand'],
 }
 
 const deed: fc.Arbitrary<Deed> = fc.record({
@@ -113,20 +113,38 @@ function startOf(name: string, writer: RecordWriter): Start {
   return { name, entries: writer.entries, state: writer.state, now: writer.now }
 }
 
-function prepared(phase: 'in-hand' | 'hand-back' | 'settle', prepare: (writer: RecordWriter) => void): RecordWriter {
+function prepared(phase: 'plan' | 'approved' | 'in-hand' | 'hand-back' | 'settle', prepare: (writer: RecordWriter) => unknown): RecordWriter {
   const writer = storyTo(phase)
   prepare(writer)
   return writer
 }
 
-/** Every phase as it was just reached, and others part-way; more often than others ready for dark, since much can shut that gate. */
+function settle(writer: RecordWriter): void {
+  readAll(writer, 39)
+  writer.pass(8)
+  readAll(writer, 38)
+}
+
+/** Ready for dark but for the last point of the order. */
+function allButOne(writer: RecordWriter): void {
+  signChecks(writer, BEFORE_CHECKS)
+  for (const { tag } of writer.state.plan.order.slice(0, -1)) writer.pass(0.5).sign(technician, 'point-in-hand', inHand(tag))
+  readAll(writer, 37)
+  steadySuction(writer)
+}
+
+/** Every phase as it was just reached, and others part-way; those more often whose next gate much can shut, or should. */
 export const STARTS: Start[] = [
   ...PHASES_TOLD.map(phase => startOf(phase, storyTo(phase))),
   ...[1, 2, 3, 4].map(() => startOf('ready for dark', prepared('in-hand', readyForDark))),
   startOf('checks signed', prepared('in-hand', writer => signChecks(writer, BEFORE_CHECKS))),
   startOf('controller checked', prepared('hand-back', writer => signChecks(writer, BACK_CHECKS))),
   startOf('all returned', prepared('hand-back', (writer) => { signChecks(writer, BACK_CHECKS); returnAll(writer) })),
-  startOf('settled', prepared('settle', (writer) => { readAll(writer, 39); writer.pass(8); readAll(writer, 38) })),
+  ...[1, 2, 3].map(() => startOf('all but one in hand', prepared('in-hand', allButOne))),
+  ...[1, 2].map(() => startOf('sent', prepared('plan', writer => writer.sign(technician, 'plan-submitted', {})))),
+  ...[1, 2].map(() => startOf('two claims', prepared('approved', writer => SIGNERS.slice(0, 2).forEach(signer => writer.pass(1).sign(signer, 'point-in-hand', inHand('DH-1'), { expect: 'questioned' }))))),
+  ...[1, 2].map(() => startOf('in hand again', prepared('settle', (writer) => { settle(writer); writer.sign(technician, 'point-in-hand', inHand('EF-1')) }))),
+  startOf('settled', prepared('settle', settle)),
 ]
 
 export const walks = fc.record({ start: fc.nat(STARTS.length - 1), deeds: fc.array(deed, { minLength: 1, maxLength: 24 }) })
