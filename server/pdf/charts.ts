@@ -51,7 +51,7 @@ export function drawTemperatures(sheet: Sheet, chart: LimitChart, timeZone: stri
   sheet.content(figure, 'Figure', () => {
     for (const span of drawn.dark) {
       doc.rect(x(span.x), y(plot.top), span.width * SCALE, (plot.bottom - plot.top) * SCALE).fillOpacity(0.08).fill(COLOURS.ink).fillOpacity(1)
-      if (span.width * SCALE > 62) type.draw('without control', x(span.x) + 4, y(plot.top) + 9, small)
+      if (span.width * SCALE > 62) type.draw('without control', x(span.x) + 4, y(span.wordsY), small)
     }
     for (const tick of drawn.yTicks) {
       doc.moveTo(x(plot.left), y(tick.y)).lineTo(x(plot.right), y(tick.y)).lineWidth(0.6).stroke(COLOURS.grid)
@@ -63,7 +63,7 @@ export function drawTemperatures(sheet: Sheet, chart: LimitChart, timeZone: stri
     })
     for (const limit of drawn.limits) {
       doc.moveTo(x(plot.left), y(limit.y)).lineTo(x(plot.right), y(limit.y)).lineWidth(1.2).stroke(COLOURS.limit)
-      type.drawRight(limit.label, x(plot.right) - 2, y(limit.y) - 3, { size: 7.5, colour: COLOURS.limit })
+      type.draw(limit.label, x(plot.left) + 3, y(limit.y) - 3, { size: 7.5, colour: COLOURS.limit })
     }
     for (const line of drawn.lines) {
       if (line.path) doc.save().translate(sheet.left, sheet.y).scale(SCALE).path(line.path).lineJoin('round').lineWidth(2).stroke(COLOURS.trace).restore()

@@ -36,7 +36,7 @@ function drawTitle(sheet: Sheet, summary: RecordSummary): void {
   const title = sheet.element('H1')
   sheet.content(title, 'H1', () => type.draw('Record of a controller outage', sheet.left, sheet.y + 17, { face: 'bold', size: 19, colour: ink }))
   title.end()
-  const what = `${heading.site}, ${heading.controller} · ${heading.planned ? heading.work : `unplanned${heading.work === '-' ? '' : ` · ${heading.work}`}`}`
+  const what = `${heading.site}, ${heading.controller} · ${heading.planned ? heading.work : 'unplanned outage'}`
   const subtitle = sheet.element('P')
   const lines = type.wrap(what, sheet.width - aside - 12, { size: 11 }, 2)
   sheet.content(subtitle, 'P', () => lines.forEach((line, index) => type.draw(line, sheet.left, sheet.y + 36 + index * 14, { size: 11, colour: ink })))

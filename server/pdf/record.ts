@@ -46,7 +46,7 @@ export function openRecordPdf(paper: RecordPaper, fonts: FontBytes): { doc: PDFK
     autoFirstPage: false, size: paperSize(paper.state.snapshot.site.paper), margin: 0, pdfVersion: '1.7', tagged: true, lang: 'en', displayTitle: true,
     // Without a font of its own the constructor would load a standard one that the paper does not use.
     font: null as never,
-    info: { Title: title, Author: 'Holdover', Subject: `${heading.work}, ${heading.site}`, Creator: 'Holdover', Producer: 'Holdover', CreationDate: date, ModDate: date },
+    info: { Title: title, Author: 'Holdover', Subject: `${heading.planned ? heading.work : 'unplanned outage'}, ${heading.site}`, Creator: 'Holdover', Producer: 'Holdover', CreationDate: date, ModDate: date },
   })
   const written = draw(doc, paper, fonts)
   written.catch((error: unknown) => doc.destroy(error instanceof Error ? error : new Error(String(error))))

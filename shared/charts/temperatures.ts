@@ -17,7 +17,8 @@ export interface TemperatureGeometry {
   plot: { left: number, right: number, top: number, bottom: number }
   yTicks: { value: number, y: number }[]
   xTicks: { minute: number, x: number }[]
-  dark: { x: number, width: number }[]
+  /** `wordsY` is the baseline of the words in a span: at the top, or at the bottom where a limit runs through the top */
+  dark: { x: number, width: number, wordsY: number }[]
   limits: { value: number, label: string, y: number }[]
   /** Names stand in one column at the right; `leader` leads from the last reading of a line to its name. */
   lines: { id: string, name: string, path: string, dots: (DrawnPoint & ChartReading)[], label: DrawnPoint, leader: string }[]
@@ -69,7 +70,7 @@ export function temperatures({ width, height, dark, limits, cases }: Temperature
       minute: firstTick + index * step,
       x: x(firstTick + index * step),
     })),
-    dark: dark.map(span => ({ x: x(span.from), width: x(span.to ?? lastMinute) - x(span.from) })),
+    dark: dark.map(span => ({ x: x(span.from), width: x(span.to ?? lastMinute) - x(span.from), wordsY: limits.some(limit => Math.abs(y(limit.value) - plot.top - 14) < 16) ? plot.bottom - 8 : plot.top + 18 })),
     limits: limits.map(limit => ({ ...limit, y: y(limit.value) })),
     lines: lines.map((line, index) => {
       const last = line.dots.at(-1)!
