@@ -23,6 +23,6 @@ export function revokeDevice(id: string): Promise<{ id: string, revokedAt: strin
   return $fetch<{ id: string, revokedAt: string }>(path, { method: 'DELETE' })
 }
 
-export function changePassword(current: string, next: string): Promise<unknown> {
-  return $fetch('/api/account/password', { method: 'POST', body: { current, next } })
+export function changePassword(current: string, next: string): Promise<{ changed: boolean }> {
+  return $fetch<{ changed: boolean }>('/api/account/password', { method: 'POST', body: { current, next } })
 }

@@ -6,6 +6,6 @@ export function useSetup() {
   return useAsyncData('setup', () => $fetch('/api/setup'))
 }
 
-export function makeFirstAdministrator(body: z.output<typeof setupSchema>): Promise<unknown> {
-  return $fetch('/api/setup', { method: 'POST', body })
+export function makeFirstAdministrator(body: z.output<typeof setupSchema>): Promise<{ email: string }> {
+  return $fetch<{ email: string }>('/api/setup', { method: 'POST', body })
 }
