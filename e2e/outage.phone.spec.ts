@@ -72,7 +72,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await page.getByLabel('Note').fill('Night covers drawn on the dairy wall')
     await sign(page, 'Sign the note')
     await page.goto(`/outages/${id}/steps`)
-    await sign(page, 'Sign: begun')
+    await sign(page, /^Sign: begun, Load the program/)
     await advance(14)
     await page.goto(`/outages/${id}`)
     await page.getByRole('link', { name: 'Control is back…' }).click()

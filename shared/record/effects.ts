@@ -149,6 +149,7 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     addOnce(state.submitters, mark.by)
     state.phase = 'submitted'
   },
+  'review-begun': (state, _entry, mark) => { state.reviewed = mark },
   'returned': (state, { body }, mark) => { state.returned.push({ reason: body.reason, mark }); state.phase = 'settle' },
   'sealed': (state, { body }, mark) => {
     state.sealed = { drawing: body.drawing, size: body.size, root: body.root, words: body.words, mark }

@@ -119,13 +119,15 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   'question-asked': { roles: SUPERVISOR, phases: [...RUN, 'submitted'] },
   'question-answered': { roles: HANDS, phases: BEFORE_SEAL, unfit: (state, { body }) => state.questions.some(question => question.entry === body.question && question.answer === null) ? [] : ['no such question is open'] },
   'submitted': { roles: HANDS, phases: ['settle'], unfit: state => submitGate(state) },
+  'review-begun': { roles: SUPERVISOR, phases: ['submitted'] },
   'returned': { roles: SUPERVISOR, phases: ['submitted'] },
   'sealed': {
     roles: SUPERVISOR,
     phases: ['submitted'],
     forbids: (state, _entry, actor) => own(state, actor) || state.submitters.includes(actor.id) ? 'nobody seals what they planned or submitted themselves (I10)' : null,
-    unfit: (state, { body }, around) => {
+    unfit: (state, { body, device }, around) => {
       const missing = sealGate(state, around.filesAwaited(state))
+      if (!state.signers[device]) missing.push('the review is not begun: the countersigner is not named in the record yet')
       if (body.size !== state.size) missing.push(`the record has ${state.size} entries, the seal says ${body.size}: read it again`)
       else if (around.root !== null && body.root !== around.root) missing.push('the root of the seal is not that of the record')
       return missing

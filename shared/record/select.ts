@@ -162,5 +162,7 @@ export function caseName(state: OutageState, id: string): string {
 export function groupName(state: OutageState, id: string): string {
   const group = state.snapshot.suctionGroups.find(item => item.id === id)
   const rack = state.snapshot.racks.find(item => item.id === group?.rackId)
-  return group ? `${rack?.name ?? ''} ${group.name}`.trim() : 'Unknown suction group'
+  if (!group || !rack) return group?.name ?? 'Unknown suction group'
+  const alone = state.snapshot.suctionGroups.filter(item => item.rackId === rack.id).length === 1
+  return alone ? rack.name : `${rack.name}, ${group.name}`
 }

@@ -124,6 +124,7 @@ export interface OutageState {
   calledOff: { reason: string, mark: Mark } | null
   submitted: { drawing: string, words: string, mark: Mark } | null
   submitters: string[]
+  reviewed: Mark | null
   returned: { reason: string, mark: Mark }[]
   sealed: { drawing: string, size: number, root: string, words: string, mark: Mark } | null
   signers: Record<string, Signer>
@@ -168,7 +169,7 @@ export function emptyState(id: string): OutageState {
     authors: [], planSubmitted: null, planReturned: null, approved: null, inHandBegun: null,
     checks: {}, points: {}, cases: {}, pressures: [], darks: [], turnedBack: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
-    calledOff: null, submitted: null, submitters: [], returned: [], sealed: null, signers: {}, files: [],
+    calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],
     refusals: [], chain: {}, largestSkew: null,
   }
 }

@@ -51,6 +51,7 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'question-asked': (_state, { body }) => tell('Question', body.words),
   'question-answered': (_state, { body }) => tell('Answer', body.words),
   'submitted': (_state, { body }) => tell('Record submitted', body.words),
+  'review-begun': () => tell('Review begun'),
   'returned': (_state, { body }) => tell('Record returned', body.reason),
   'sealed': (_state, { body }) => tell('Record countersigned and sealed', join(`${body.size} entries`, body.words)),
 }

@@ -1,5 +1,6 @@
 import { isoTime } from '../../../shared/record/entry'
 import { watchedCases } from '../../../shared/record/select'
+import { forecastCase } from '../hold/for-outage'
 import { assessCase } from '../holding/for-outage'
 import type { Draft } from './draft'
 import { addServerEntry } from './draft'
@@ -12,6 +13,8 @@ export async function followUp(draft: Draft): Promise<void> {
     if (item.empty) continue
     const judged = assessCase(state, item.id, draft.now)
     if (!judged || judged.verdict === (item.verdict?.verdict ?? 'within')) continue
+    // A case with a longer interval of its own is no news while it isn't due.
+    if (judged.verdict === 'unknown' && forecastCase(state, state.snapshot.cases.find(known => known.id === item.id)!, draft.now).dueAt >= draft.now) continue
     await addServerEntry(draft, 'verdict-changed', {
       caseId: item.id,
       verdict: judged.verdict,

@@ -15,6 +15,8 @@ export const reviewKinds = {
   'questioned-settled': { 1: z.object({ entry: uuid, words: saying('Say what you looked at and found') }).strict() },
   'question-asked': { 1: z.object({ about: uuid.nullable(), words: saying('Write the question') }).strict() },
   'question-answered': { 1: z.object({ question: uuid, words: saying('Write the answer') }).strict() },
+  /** names the reviewer in the log, so that the seal's root covers their key too */
+  'review-begun': { 1: z.object({}).strict() },
   'submitted': { 1: z.object({ statement: z.literal(SUBMIT_STATEMENT), drawing: fileHash, words }).strict() },
   'returned': { 1: z.object({ reason: saying('Say what is missing') }).strict() },
   'sealed': { 1: z.object({

@@ -40,6 +40,7 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'question-asked': { about: entryId, words },
   'question-answered': { question: entryId, words },
   'submitted': { statement: SUBMIT_STATEMENT, drawing: DRAWING, words },
+  'review-begun': {},
   'returned': { reason: words },
   'sealed': { statement: SEAL_STATEMENT, drawing: DRAWING, size: 12, root: 'e'.repeat(64), words },
   'signer-named': { device: entryId, deviceName: 'Phone', person: entryId, name: 'Ada Quill', role: 'technician', publicKey: 'k'.repeat(43), enrolledAt: isoTime(BEGAN) },

@@ -126,14 +126,14 @@ describe('steady suction', () => {
     ['over target and 10', [[0, 58.1], [10, 58.1]], 'suction 58.1 psig is more than 10 psi above its target'],
   ])('%s', (_name, steps, words) => {
     const fault = read(begin(), ...steps)
-    expect(fault).toBe(words === null ? null : `Rack A medium: ${words}`)
+    expect(fault).toBe(words === null ? null : `Rack A: ${words}`)
   })
 
   it('is stale after a quarter of an hour', () => {
     const writer = begin()
     read(writer, [0, 47], [10, 47])
     expect(steadyFault(writer.state, GROUP, writer.now + 15 * 60_000)).toBeNull()
-    expect(steadyFault(writer.state, GROUP, writer.now + 15 * 60_000 + 1)).toBe('Rack A medium: suction last read more than 15 minutes ago')
+    expect(steadyFault(writer.state, GROUP, writer.now + 15 * 60_000 + 1)).toBe('Rack A: suction last read more than 15 minutes ago')
   })
 
   it('begins anew when a compressor is put in hand, and rests on no questioned reading', () => {
@@ -150,7 +150,7 @@ describe('steady suction', () => {
     signChecks(writer, BEFORE_CHECKS)
     putAllInHand(writer)
     readAll(writer, 37)
-    expect(goDarkGate(writer.state, writer.now, NO_RESULTS)).toEqual(['Rack A medium: suction not read since its compressors were put in hand'])
+    expect(goDarkGate(writer.state, writer.now, NO_RESULTS)).toEqual(['Rack A: suction not read since its compressors were put in hand'])
     expect(goDarkGate(but(writer, (state) => { state.points['C-1']!.hand = 'off' }), writer.now, NO_RESULTS)).toEqual([])
     steadySuction(writer)
     expect(goDarkGate(writer.state, writer.now, NO_RESULTS)).toEqual([])

@@ -82,6 +82,7 @@ const DRAW: { [K in EntryKind]?: (state: OutageState, draws: Deed['draws'], now:
   'question-asked': () => ({ about: null, words: 'why?' }),
   'question-answered': (state, [a]) => ({ question: of([...state.questions.map(item => item.entry), uuidFor('none')], a), words: 'so' }),
   'submitted': () => submission(),
+  'review-begun': () => ({}),
   'returned': () => ({ reason: 'more' }),
   'sealed': (state, [a]) => ({ statement: SEAL_STATEMENT, drawing: DRAWING, size: state.size + (a % 3 === 0 ? 1 : 0), root: 'e'.repeat(64) }),
 }
@@ -95,7 +96,7 @@ const APT: Partial<Record<Phase, PersonKind[]>> = {
   'dark': ['control-back', 'control-back', 'turned-back', 'point-in-hand', 'point-excused', 'act-signed', 'decided-otherwise'],
   'hand-back': ['hand-back-closed', 'hand-back-closed', 'left-in-exception', 'point-in-auto', 'point-in-auto', 'point-proven', 'check-signed', 'control-lost'],
   'settle': ['submitted', 'submitted', 'reading-taken', 'point-in-hand', 'point-in-auto', 'left-in-exception', 'questioned-settled', 'question-answered', 'control-lost'],
-  'submitted': ['sealed', 'sealed', 'sealed', 'returned', 'question-asked', 'question-answered', 'questioned-settled', 'point-in-hand'],
+  'submitted': ['review-begun', 'sealed', 'sealed', 'sealed', 'returned', 'question-asked', 'question-answered', 'questioned-settled', 'point-in-hand'],
 }
 
 const deed: fc.Arbitrary<Deed> = fc.record({

@@ -12,7 +12,7 @@ import type { PhaseTold } from './store'
 
 const kinds = Object.keys(KINDS) as EntryKind[]
 const HANDS: Role[] = ['technician', 'supervisor']
-const BY_SUPERVISOR: EntryKind[] = ['plan-approved', 'plan-returned', 'left-in-exception', 'decided-otherwise', 'question-asked', 'returned', 'sealed']
+const BY_SUPERVISOR: EntryKind[] = ['plan-approved', 'plan-returned', 'left-in-exception', 'decided-otherwise', 'question-asked', 'review-begun', 'returned', 'sealed']
 const stories = Object.fromEntries(PHASES_TOLD.map(phase => [phase, storyTo(phase)])) as Record<PhaseTold, RecordWriter>
 
 /** Judges a kind without its body being typed. */
@@ -44,7 +44,7 @@ describe('phases', () => {
     'reading-taken': ['approved', ...RUN], 'pressure-read': ['approved', ...RUN], 'act-signed': ['approved', ...RUN, 'submitted'], 'decided-otherwise': [...RUN, 'submitted'],
     'went-dark': ['in-hand'], 'control-lost': ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], 'step-ticked': ['approved', ...RUN], 'turned-back': ['dark'], 'control-back': ['dark'],
     'note-added': BEFORE_SEAL, 'correction': BEFORE_SEAL, 'questioned-settled': BEFORE_SEAL, 'question-asked': [...RUN, 'submitted'], 'question-answered': BEFORE_SEAL,
-    'submitted': ['settle'], 'returned': ['submitted'], 'sealed': ['submitted'],
+    'submitted': ['settle'], 'review-begun': ['submitted'], 'returned': ['submitted'], 'sealed': ['submitted'],
   }
   it.each(kinds.filter(kind => !isServerKind(kind)).map(kind => [kind] as const))('%s belongs in its phases', (kind) => {
     const misplaced = (phase: PhaseTold) => judgeAny(phase, supervisor, kind).why.some(why => why.startsWith('does not belong in the phase'))

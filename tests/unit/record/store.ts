@@ -143,7 +143,10 @@ const CHAPTERS: Record<PhaseTold, (writer: RecordWriter) => void> = {
     writer.files.set(DRAWING, new Uint8Array())
     writer.pass(1).sign(technician, 'submitted', submission())
   },
-  'sealed': writer => void writer.pass(30).sign(supervisor, 'sealed', seal(writer)),
+  'sealed': (writer) => {
+    writer.pass(30).sign(supervisor, 'review-begun', {})
+    writer.pass(1).sign(supervisor, 'sealed', seal(writer))
+  },
 }
 
 /** In hand, with nothing missing that going dark asks for. */
