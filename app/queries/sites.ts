@@ -36,9 +36,9 @@ export function saveItem(site: string, resource: ResourceName, id: string | null
   return $fetch<ResourceItem>(path, { method: id === null ? 'POST' : 'PATCH', body })
 }
 
-export function deleteItem(site: string, resource: ResourceName, id: string): Promise<unknown> {
+export function deleteItem(site: string, resource: ResourceName, id: string): Promise<null> {
   const path: string = `/api/sites/${site}/${resource}/${id}`
-  return $fetch(path, { method: 'DELETE' })
+  return $fetch<null>(path, { method: 'DELETE' })
 }
 
 export function previewPoints(controller: string, text: string): Promise<ImportPreview> {

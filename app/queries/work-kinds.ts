@@ -13,7 +13,7 @@ export function saveWorkKind(id: string | null, body: object): Promise<WorkKindI
   return $fetch<WorkKindItem>(path, { method: id === null ? 'POST' : 'PATCH', body })
 }
 
-export function deleteWorkKind(id: string): Promise<unknown> {
+export function deleteWorkKind(id: string): Promise<null> {
   const path: string = `/api/work-kinds/${id}`
-  return $fetch(path, { method: 'DELETE' })
+  return $fetch<null>(path, { method: 'DELETE' })
 }
