@@ -95,7 +95,7 @@ function pointCounts(state: OutageState, lines: readonly PointLine[]): RecordSum
   return {
     set: set.size,
     back: [...set].filter(tag => !held.has(tag)).length,
-    proven: statuses.filter(point => point.status === 'proven').length,
+    proven: [...set].filter(tag => state.points[tag]?.status === 'proven').length,
     excused: statuses.filter(point => point.status === 'excused').length,
     inHand: held.size,
     proofsDue: proofsDue(state).length,
