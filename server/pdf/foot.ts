@@ -47,8 +47,7 @@ export class Feet {
       const text = `page ${index + 1} of ${this.pages.length}`
       const x = (WIDTH - font.widthOfString(text, SIZE)).toFixed(2)
       Object.assign(reference.data, { Resources: { ProcSet: ['PDF', 'Text'], Font: { [font.id]: font.ref() } } })
-      reference.write(`${red} ${green} ${blue} rg BT /${font.id} ${SIZE} Tf ${x} 0 Td <${font.encode(text)[0].join('')}> Tj ET`)
-      reference.end()
+      reference.end(`${red} ${green} ${blue} rg BT /${font.id} ${SIZE} Tf ${x} 0 Td <${font.encode(text)[0].join('')}> Tj ET`)
     })
   }
 }
