@@ -25,7 +25,7 @@ beforeAll(async () => {
   world = await startWorld()
   phone = await world.phoneOf('technician')
   outage = await world.open(phone, world.server.now() - 5 * 60_000)
-  const [{ id: caseId }] = world.snapshot.cases as [{ id: string }]
+  const caseId = world.snapshot.cases[0]!.id
   const { result } = await phone.act(outage, 'reading-taken', { round: 0, caseId, value: 36.4, unit: 'F', method: 'product', instrumentId: null, words: '=1+1' })
   expect(result.status).toBe('accepted')
 }, 120_000)
