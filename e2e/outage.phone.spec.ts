@@ -71,6 +71,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await page.goto(`/outages/${id}/note`)
     await page.getByLabel('Note').fill('Night covers drawn on the dairy wall')
     await sign(page, 'Sign the note')
+    await expect(page.getByRole('heading', { level: 1, name: 'Without control' })).toBeVisible()
     await page.goto(`/outages/${id}/steps`)
     await sign(page, /^Sign: begun, Load the program/)
     await advance(14)

@@ -41,17 +41,17 @@ export function useSigning() {
   const trouble = ref<string[]>([])
 
   /**
-   * Signs an entry with its photo, then goes where `then` says. A questioned entry is in the record, and its
+   * Signs an entry, then goes where `then` says. A body whose photos are still to be drawn anew comes as a function. A questioned entry is in the record, and its
    * reason is shown; a refused one is not, and the screen stays.
    * @returns whether it is signed and kept or in the record as accepted
    */
-  async function act<K extends EntryKind>(kind: K, body: BodyInput<K>, then?: string): Promise<boolean> {
+  async function act<K extends EntryKind>(kind: K, body: BodyInput<K> | (() => Promise<BodyInput<K>>), then?: string): Promise<boolean> {
     if (busy.value) return false
     busy.value = true
     trouble.value = []
     const here = router.currentRoute.value.fullPath
     try {
-      const { foreseen, receipt } = await run.sign(kind, body)
+      const { foreseen, receipt } = await run.sign(kind, typeof body === 'function' ? await body() : body)
       const { status, why } = WAITED_FOR.has(kind) ? await receipt : foreseen
       if (!WAITED_FOR.has(kind)) void receipt.then(late => tell(late.status === foreseen.status ? 'kept' : late.status, late.why))
       tell(status, why)
