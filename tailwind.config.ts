@@ -46,6 +46,7 @@ export default {
     boxShadow: { none: 'none' },
     extend: {
       spacing: { touch: '3.75rem', act: '4.5rem', glove: '7.5rem' },
+      width: { phone: '30rem' },
       maxWidth: { phone: '30rem', page: '80rem', prose: '42rem' },
       borderWidth: { 3: '3px' },
     },

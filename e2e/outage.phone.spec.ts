@@ -73,7 +73,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await sign(page, 'Sign the note')
     await expect(page.getByRole('heading', { level: 1, name: 'Without control' })).toBeVisible()
     await page.goto(`/outages/${id}/steps`)
-    await sign(page, /^Sign: begun, Load the program/)
+    await sign(page, /^Sign: begun.*Load the program/)
     await advance(14)
     await page.goto(`/outages/${id}`)
     await page.getByRole('link', { name: 'Control is back…' }).click()

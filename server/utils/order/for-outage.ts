@@ -11,6 +11,18 @@ import { proposeHand } from './propose'
 
 const PLACE_MAX = 200
 
+/** The engine's reasons are read by people and signed, so it is given names; a rack's is its own within a controller. */
+function rackName(snapshot: Snapshot, id: string): string {
+  return snapshot.racks.find(rack => rack.id === id)?.name ?? id
+}
+
+/** Name of a circuit or suction group, with its rack's where two racks have one of that name. */
+function nameWithin(snapshot: Snapshot, all: readonly { id: string, rackId: string, name: string }[], id: string): string {
+  const known = all.find(item => item.id === id)
+  if (!known) return id
+  return all.some(item => item.id !== id && item.name === known.name) ? `${rackName(snapshot, known.rackId)} ${known.name}` : known.name
+}
+
 /** A point of the equipment as the order engine takes it. */
 export function orderPoint(snapshot: Snapshot, point: SnapshotPoint, hand: HandPosition): OrderPoint {
   const group = snapshot.suctionGroups.find(item => item.id === point.suctionGroupId)
@@ -20,10 +32,10 @@ export function orderPoint(snapshot: Snapshot, point: SnapshotPoint, hand: HandP
     tag: point.tag,
     kind: point.kind,
     hand,
-    ...(point.rackId ? { rack: point.rackId } : {}),
-    ...(point.suctionGroupId ? { suctionGroup: point.suctionGroupId } : {}),
+    ...(point.rackId ? { rack: rackName(snapshot, point.rackId) } : {}),
+    ...(point.suctionGroupId ? { suctionGroup: nameWithin(snapshot, snapshot.suctionGroups, point.suctionGroupId) } : {}),
     ...(staged ? { stage: group.stage } : {}),
-    ...(point.circuitId ? { circuit: point.circuitId } : {}),
+    ...(point.circuitId ? { circuit: nameWithin(snapshot, snapshot.circuits, point.circuitId) } : {}),
     ...(point.place ? { place: point.place.slice(0, PLACE_MAX) } : {}),
     ...(point.drives ? { drives: point.drives } : {}),
     // Without a guard named that works in hand, a compressor may not be held on (I9).
