@@ -5,6 +5,9 @@ import { assessCase } from '../holding/for-outage'
 import type { Draft } from './draft'
 import { addServerEntry } from './draft'
 
+/** A round may be this much over its time before it counts as late, ms; as lateReadings has it. */
+const LATE_MS = 2 * 60_000
+
 /** Entries of the server's own after others were added: a verdict where it changed. */
 export async function followUp(draft: Draft): Promise<void> {
   const { state } = draft
@@ -13,8 +16,7 @@ export async function followUp(draft: Draft): Promise<void> {
     if (item.empty) continue
     const judged = assessCase(state, item.id, draft.now)
     if (!judged || judged.verdict === (item.verdict?.verdict ?? 'within')) continue
-    // A case with a longer interval of its own is no news while it isn't due.
-    if (judged.verdict === 'unknown' && forecastCase(state, state.snapshot.cases.find(known => known.id === item.id)!, draft.now).dueAt >= draft.now) continue
+    if (judged.verdict === 'unknown' && !isLate(draft, item.id)) continue
     await addServerEntry(draft, 'verdict-changed', {
       caseId: item.id,
       verdict: judged.verdict,
@@ -27,4 +29,10 @@ export async function followUp(draft: Draft): Promise<void> {
       judgedAt: isoTime(draft.now),
     })
   }
+}
+
+/** A reading that is missing is news only without control, and once the case's own time for it is over. */
+function isLate({ state, now }: Draft, caseId: string): boolean {
+  const known = state.snapshot.cases.find(item => item.id === caseId)
+  return state.phase === 'dark' && known !== undefined && forecastCase(state, known, now).dueAt + LATE_MS < now
 }
