@@ -2,16 +2,11 @@ import { cp } from 'node:fs/promises'
 import { join } from 'node:path'
 
 export default defineNuxtConfig({
-  compatibilityDate: '2026-01-01',
   modules: ['@nuxt/eslint', '@nuxtjs/tailwindcss', '@pinia/nuxt', '@sidebase/nuxt-auth'],
-  devtools: { enabled: false },
-  // One style sheet holds Tailwind's layers; without this the module would add its own beside it.
-  tailwindcss: { cssPath: '~/assets/css/main.css', viewer: false },
-  telemetry: false,
-  css: ['~/assets/css/main.css'],
   // Component names follow their file, not their folder: <UiButton> lives in components/ui/UiButton.vue.
   components: [{ path: '~/components', pathPrefix: false }],
   imports: { dirs: ['queries', 'stores', 'offline'] },
+  devtools: { enabled: false },
   app: {
     head: {
       htmlAttrs: { lang: 'en' },
@@ -24,13 +19,7 @@ export default defineNuxtConfig({
       link: [{ rel: 'icon', type: 'image/svg+xml', href: '/mark.svg' }],
     },
   },
-  auth: {
-    originEnvKey: 'AUTH_ORIGIN',
-    provider: { type: 'authjs', defaultProvider: 'credentials', addDefaultCallbackUrl: true },
-    // Every page is closed unless it says `auth: false`; the API guards itself again (server/middleware).
-    globalAppMiddleware: { isEnabled: true, allow404WithoutAuth: true, addDefaultCallbackUrl: true },
-    sessionRefresh: { enablePeriodically: false, enableOnWindowFocus: false },
-  },
+  css: ['~/assets/css/main.css'],
   runtimeConfig: {
     authSecret: '', // NUXT_AUTH_SECRET
     databaseUrl: '', // NUXT_DATABASE_URL, set from DATABASE_URL by the start command
@@ -40,6 +29,7 @@ export default defineNuxtConfig({
     // The run is a shell without data; it folds the log that it fetches (and, later, the one kept on the phone).
     '/outages/**': { ssr: false },
   },
+  compatibilityDate: '2026-01-01',
   nitro: {
     // pdfkit reads .woff; only the files that the record's PDF is set in.
     serverAssets: [
@@ -55,5 +45,15 @@ export default defineNuxtConfig({
     experimental: { asyncContext: true },
   },
   typescript: { strict: true },
+  telemetry: false,
+  auth: {
+    originEnvKey: 'AUTH_ORIGIN',
+    provider: { type: 'authjs', defaultProvider: 'credentials', addDefaultCallbackUrl: true },
+    // Every page is closed unless it says `auth: false`; the API guards itself again (server/middleware).
+    globalAppMiddleware: { isEnabled: true, allow404WithoutAuth: true, addDefaultCallbackUrl: true },
+    sessionRefresh: { enablePeriodically: false, enableOnWindowFocus: false },
+  },
   eslint: { config: { stylistic: { semi: false, quotes: 'single', commaDangle: 'always-multiline', braceStyle: '1tbs' } } },
+  // One style sheet holds Tailwind's layers; without this the module would add its own beside it.
+  tailwindcss: { cssPath: '~/assets/css/main.css', viewer: false },
 })

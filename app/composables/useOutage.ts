@@ -14,7 +14,7 @@ import type { KeptEntry } from '~/offline/database'
 import { drainFiles, keepFile } from '~/offline/files'
 import { dismissRefused, drain, keepSigned, keptEntries, Unreachable } from '~/offline/outbox'
 import type { PushResult } from '~/offline/outbox'
-import { fetchEntries, pushEntries, putFile } from '~/queries/entries'
+import { fetchEntries, fetchServerTime, pushEntries, putFile } from '~/queries/entries'
 import { useSigner } from '~/stores/signer'
 
 const POLL_MS = 5000
@@ -47,12 +47,19 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
   const refused = computed(() => kept.value.filter(item => item.refusal !== null && item.person === person.id))
   const state = computed(() => withPending(base.value, pending.value, person))
 
+  /** Measures this device's clock against the server's before there is a log to ask for; without an answer it stays as it was. */
+  async function measure(): Promise<void> {
+    const before = Date.now()
+    const time = await fetchServerTime().catch(() => null)
+    if (time) skew.value = skewOf(before, time)
+  }
+
   async function pull(): Promise<void> {
     try {
       for (;;) {
         const before = Date.now()
         const page = await fetchEntries(id, base.value.size)
-        skew.value = Math.round((before + Date.now()) / 2 - Date.parse(page.now))
+        skew.value = skewOf(before, page.now)
         const fresh = page.entries.filter(stored => stored.seq > base.value.size)
         if (fresh.length > 0) {
           base.value = fold(fresh, base.value)
@@ -144,10 +151,15 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
     if (import.meta.client) window.removeEventListener('online', online)
   })
 
-  return { id, person, signer, state, entries, base, pending, refused, loaded, failure, heardAt, skew, open, sync, sign, attach, dismiss, root }
+  return { id, person, signer, state, entries, base, pending, refused, loaded, failure, heardAt, skew, measure, open, sync, sign, attach, dismiss, root }
 }
 
 export type OutageHandle = ReturnType<typeof useOutage>
+
+/** This device's time less the server's, ms, taking the answer to lie midway. @param asked Unix ms by this device */
+function skewOf(asked: number, serverTime: string): number {
+  return Math.round((asked + Date.now()) / 2 - Date.parse(serverTime))
+}
 
 /** The state with what is kept here on top, each judged as the server will. */
 function withPending(base: OutageState, pending: KeptEntry[], person: { id: string, role: Role }): OutageState {

@@ -28,3 +28,8 @@ export async function putFile(outage: string, sha256: string, blob: Blob): Promi
   const answer = await fetch(`/api/outages/${outage}/files/${sha256}`, { method: 'PUT', body: blob, headers: { 'content-type': blob.type }, signal: AbortSignal.timeout(60_000) }).catch(() => null)
   return answer !== null && (answer.ok || answer.status === 422 || answer.status === 413)
 }
+
+/** The server's time, ISO 8601 UTC. */
+export async function fetchServerTime(): Promise<string> {
+  return (await $fetch<{ time: string }>('/api/health', { retry: 0, timeout: 5000 })).time
+}
