@@ -1,7 +1,7 @@
 import type { AnyEntry } from '~~/shared/record/entry'
 import { entryBytes, entryHash, isoTime } from '~~/shared/record/entry'
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
-import { KINDS, newestVersion } from '~~/shared/record/kinds'
+import { newestSchema, newestVersion } from '~~/shared/record/kinds'
 import { uuidv7 } from '~~/shared/record/uuid'
 import type { KeptEntry, KeptKey } from './database'
 import { chainKey, openKept, STRICT } from './database'
@@ -20,7 +20,7 @@ export class Unreachable extends Error {}
  * @param known the chain's end as the log says it, for a device that has no chain of its own kept here
  */
 export async function keepSigned<K extends EntryKind>(key: KeptKey, outage: string, kind: K, input: BodyInput<K>, skew: number, known: { n: number, hash: string } | null): Promise<KeptEntry> {
-  const body = KINDS[kind][1].parse(input)
+  const body = newestSchema(kind).parse(input)
   return navigator.locks.request(`holdover-sign-${outage}`, async () => {
     const database = await openKept()
     const end = await database.get('chains', chainKey(key.device, outage)) ?? known

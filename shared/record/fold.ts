@@ -2,6 +2,7 @@ import { EFFECTS, applyQuestioned } from './effects'
 import type { AnyEntry, Entry, StoredEntry } from './entry'
 import { entryHash, happenedAt } from './entry'
 import type { EntryKind } from './kinds'
+import { asNewest } from './newest'
 import type { Mark, OutageState } from './state'
 import { emptyState } from './state'
 
@@ -28,8 +29,9 @@ export function applyStored(state: OutageState, stored: StoredEntry): void {
   const { entry } = stored
   state.size = stored.seq
   const mark: Mark = { by: entry.by, at: happenedAt(entry), seq: stored.seq, entry: entry.id }
-  if (stored.standing === 'accepted') applyAccepted(state, entry, mark)
-  else applyQuestioned(state, stored, mark)
+  const read = asNewest(entry)
+  if (stored.standing === 'accepted') applyAccepted(state, read, mark)
+  else applyQuestioned(state, { ...stored, entry: read }, mark)
   state.chain[entry.device] = { n: entry.n, hash: entryHash(entry) }
   for (const file of filesOf(entry)) if (!state.files.includes(file)) state.files.push(file)
   if (Math.abs(entry.skew) > (state.largestSkew?.ms ?? 0)) state.largestSkew = { ms: Math.abs(entry.skew), device: entry.device }

@@ -4,6 +4,7 @@ import type { AnyEntry, Entry, StoredEntry } from './entry'
 import { happenedAt } from './entry'
 import type { EntryKind } from './kinds'
 import type { Verdict } from './kinds/server'
+import { asNewest } from './newest'
 import { caseName, expectedSeen, judgedReadings, nameOf, pointName, roundsTaken, SEEN_WORDS } from './select'
 import type { Mark, OutageState } from './state'
 import { told } from './words'
@@ -16,7 +17,7 @@ export function acceptedOf<K extends EntryKind>(entries: readonly StoredEntry[],
   const wanted: readonly string[] = kinds
   return entries
     .filter(stored => stored.standing === 'accepted' && wanted.includes(stored.entry.kind))
-    .map(stored => ({ stored, entry: stored.entry as Extract<AnyEntry, { kind: K }> }))
+    .map(stored => ({ stored, entry: asNewest(stored.entry) as Extract<AnyEntry, { kind: K }> }))
 }
 
 export function lineOf(state: OutageState, stored: StoredEntry): Line {

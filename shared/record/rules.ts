@@ -6,6 +6,7 @@ import type { AnyEntry, Entry } from './entry'
 import { correctedTime, happenedAt } from './entry'
 import { callOffGate, goDarkGate, handBackGate, planGate, returnPointsGate, sealGate, submitGate } from './gates'
 import type { EntryKind } from './kinds'
+import { asNewest } from './newest'
 import { PHASE_WORDS, PHASES } from './phases'
 import type { Phase } from './phases'
 import { turningBack } from './select'
@@ -192,7 +193,8 @@ export type Judgement
  * Whether a validly signed entry of a known kind may be stored, and how it stands.
  * Refused: this person may never sign it. Questioned: it is kept, but does not fit.
  */
-export function judge(state: OutageState, entry: AnyEntry, actor: Actor, around: Surroundings): Judgement {
+export function judge(state: OutageState, signed: AnyEntry, actor: Actor, around: Surroundings): Judgement {
+  const entry = asNewest(signed)
   const rule = RULES[entry.kind] as Rule<EntryKind>
   if (!rule.roles.includes(actor.role)) return { standing: 'refused', why: [rule.roles.length === 0 ? 'only Holdover itself signs this' : `this is signed by a ${rule.roles.join(' or a ')}, not by ${actor.role === 'auditor' || actor.role === 'administrator' ? 'an' : 'a'} ${actor.role}`] }
   const forbidden = rule.forbids?.(state, entry, actor)

@@ -2,6 +2,7 @@ import { handWords } from '../schemas/point-kinds'
 import { checkById } from './checks'
 import type { AnyEntry, Entry } from './entry'
 import type { EntryKind } from './kinds'
+import { asNewest } from './newest'
 import { ACT_WORDS } from './kinds/rounds'
 import { VERDICT_WORDS } from './kinds/server'
 import { caseName, groupName, pointName, SEEN_WORDS } from './select'
@@ -59,5 +60,5 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
 /** @param state the folded outage, for names of points, cases and steps */
 export function told(state: OutageState, entry: AnyEntry): Told {
   const teller = TOLD[entry.kind] as (state: OutageState, entry: Entry<EntryKind>) => Told
-  return teller(state, entry)
+  return teller(state, asNewest(entry))
 }

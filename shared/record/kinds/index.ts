@@ -14,10 +14,12 @@ import { serverKinds } from './server'
 export const KINDS = { ...planKinds, ...handKinds, ...roundKinds, ...darkKinds, ...reviewKinds, ...serverKinds }
 
 export type EntryKind = keyof typeof KINDS
-/** The body of a kind as it is signed (its newest version). */
-export type BodyOf<K extends EntryKind> = z.output<(typeof KINDS)[K][1]>
+type NewestOf<Versions> = Versions extends { 3: infer S } ? S : Versions extends { 2: infer S } ? S : Versions extends { 1: infer S } ? S : never
+type NewestSchema<K extends EntryKind> = NewestOf<(typeof KINDS)[K]> & z.ZodTypeAny
+/** The body of a kind as it is signed now (its newest version); older ones are read through ../newest. */
+export type BodyOf<K extends EntryKind> = z.output<NewestSchema<K>>
 /** The body as a form may give it: defaults may be left out. */
-export type BodyInput<K extends EntryKind> = z.input<(typeof KINDS)[K][1]>
+export type BodyInput<K extends EntryKind> = z.input<NewestSchema<K>>
 export type ServerKind = keyof typeof serverKinds
 
 export function isEntryKind(kind: string): kind is EntryKind {
@@ -32,6 +34,11 @@ export function isServerKind(kind: EntryKind): kind is ServerKind {
 export function schemaOf(kind: EntryKind, version: number): z.ZodTypeAny | null {
   const versions: Record<number, z.ZodTypeAny> = KINDS[kind]
   return versions[version] ?? null
+}
+
+/** The schema in which new entries of a kind are written. */
+export function newestSchema<K extends EntryKind>(kind: K): NewestSchema<K> {
+  return schemaOf(kind, newestVersion(kind)) as NewestSchema<K>
 }
 
 /** The version in which new entries of a kind are written. */

@@ -1,0 +1,25 @@
+import type { AnyEntry } from './entry'
+import { newestVersion } from './kinds'
+import type { EntryKind } from './kinds'
+
+type Body = Record<string, unknown>
+/** For each kind that has several versions: what a body of version n is in version n + 1. */
+type Upgrades = { [K in EntryKind]?: Record<number, (body: Body) => Body> }
+
+/**
+ * How older bodies are read. A kind's schema never changes once it has landed; a further version
+ * stands beside it, with its step here, so that every record stays readable.
+ */
+export const UPGRADES: Upgrades = {}
+
+/**
+ * An entry as the newest version of its kind would say it, for reading only: what is hashed and
+ * verified is the entry as it was signed. An entry of the newest version comes back as it is.
+ */
+export function asNewest(entry: AnyEntry): AnyEntry {
+  const newest = newestVersion(entry.kind)
+  if (entry.v >= newest) return entry
+  let body = entry.body as Body
+  for (let v = entry.v; v < newest; v++) body = UPGRADES[entry.kind]?.[v]?.(body) ?? body
+  return { ...entry, v: newest, body } as AnyEntry
+}
