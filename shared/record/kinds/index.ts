@@ -14,8 +14,9 @@ import { serverKinds } from './server'
 export const KINDS = { ...planKinds, ...handKinds, ...roundKinds, ...darkKinds, ...reviewKinds, ...serverKinds }
 
 export type EntryKind = keyof typeof KINDS
-type NewestOf<Versions> = Versions extends { 3: infer S } ? S : Versions extends { 2: infer S } ? S : Versions extends { 1: infer S } ? S : never
-type NewestSchema<K extends EntryKind> = NewestOf<(typeof KINDS)[K]> & z.ZodTypeAny
+type Schema = z.ZodTypeAny
+type NewestOf<Versions> = Versions extends { 3: infer S extends Schema } ? S : Versions extends { 2: infer S extends Schema } ? S : Versions extends { 1: infer S extends Schema } ? S : never
+type NewestSchema<K extends EntryKind> = NewestOf<(typeof KINDS)[K]>
 /** The body of a kind as it is signed now (its newest version); older ones are read through ../newest. */
 export type BodyOf<K extends EntryKind> = z.output<NewestSchema<K>>
 /** The body as a form may give it: defaults may be left out. */
