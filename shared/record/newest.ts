@@ -1,3 +1,4 @@
+import { INSTRUMENT_CHECK_DAYS, PLAIN_HOLDING } from '../schemas/equipment'
 import type { AnyEntry } from './entry'
 import { newestVersion } from './kinds'
 import type { EntryKind } from './kinds'
@@ -10,7 +11,14 @@ type Upgrades = { [K in EntryKind]?: Record<number, (body: Body) => Body> }
  * How older bodies are read. A kind's schema never changes once it has landed; a further version
  * stands beside it, with its step here, so that every record stays readable.
  */
-export const UPGRADES: Upgrades = {}
+export const UPGRADES: Upgrades = {
+  // Before version 2 no site judged otherwise than its rulebook, but for single cases, and a check lasted 90 days everywhere.
+  'outage-opened': { 1: body => ({ ...body, snapshot: withSite(body.snapshot as { site: object }, { holding: PLAIN_HOLDING, instrumentCheckDays: INSTRUMENT_CHECK_DAYS }) }) },
+}
+
+function withSite(snapshot: { site: object }, more: object): object {
+  return { ...snapshot, site: { ...snapshot.site, ...more } }
+}
 
 /**
  * An entry as the newest version of its kind would say it, for reading only: what is hashed and

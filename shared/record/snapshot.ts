@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { CASE_KINDS } from '../schemas/case-kinds'
-import { DEFROST_KINDS, defrostScheduleSchema, INSTRUMENT_KINDS, ON_LOSS, PAPERS, PRESSURE_UNITS, quietHoursSchema, STAGES, TEMPERATURE_UNITS } from '../schemas/equipment'
+import { DEFROST_KINDS, defrostScheduleSchema, INSTRUMENT_KINDS, ON_LOSS, PAPERS, PRESSURE_UNITS, quietHoursSchema, siteHoldingSchema, STAGES, TEMPERATURE_UNITS } from '../schemas/equipment'
 import { handPositionSchema, POINT_KINDS } from '../schemas/point-kinds'
 import { tag, uuid } from './kinds/common'
 
@@ -41,26 +41,23 @@ export const snapshotCaseSchema = z.object({
   circuitId: uuid.nullable(),
 }).strict()
 
-/**
- * The equipment as it stood when the outage was opened: the record needs nothing else to be read.
- * Temperatures in °C unless a unit stands beside them, pressures in psig, times in minutes.
- */
-export const snapshotSchema = z.object({
-  site: z.object({
-    id: uuid,
-    code: text,
-    name: text,
-    address: text,
-    timeZone: text,
-    temperatureUnit: z.enum(TEMPERATURE_UNITS),
-    pressureUnit: z.enum(PRESSURE_UNITS),
-    altitudeM: z.number(),
-    intervalMinutes: z.number().int().positive(),
-    paper: z.enum(PAPERS),
-    contactName: text,
-    contactPhone: text,
-    quietHours: z.array(quietHoursSchema).max(20),
-  }).strict(),
+const siteShape = {
+  id: uuid,
+  code: text,
+  name: text,
+  address: text,
+  timeZone: text,
+  temperatureUnit: z.enum(TEMPERATURE_UNITS),
+  pressureUnit: z.enum(PRESSURE_UNITS),
+  altitudeM: z.number(),
+  intervalMinutes: z.number().int().positive(),
+  paper: z.enum(PAPERS),
+  contactName: text,
+  contactPhone: text,
+  quietHours: z.array(quietHoursSchema).max(20),
+}
+
+const equipmentShape = {
   controller: z.object({ id: uuid, name: text, place: text, panelVolts: z.number().nullable() }).strict(),
   rulebook: z.object({ id: text, version: text, name: text }).strict(),
   racks: z.array(z.object({ id: uuid, name: text, refrigerant: text, highCutOutPsig: z.number().nullable() }).strict()).max(50),
@@ -85,6 +82,23 @@ export const snapshotSchema = z.object({
   cases: z.array(snapshotCaseSchema).max(400),
   points: z.array(snapshotPointSchema).max(2000),
   instruments: z.array(z.object({ id: uuid, name: text, kind: z.enum(INSTRUMENT_KINDS), accuracyC: z.number(), lastCheckOn: text.nullable() }).strict()).max(100),
+}
+
+/** The equipment as openings of version 1 hold it: without the site's own way of judging. */
+export const snapshotSchemaV1 = z.object({ site: z.object(siteShape).strict(), ...equipmentShape }).strict()
+
+/**
+ * The equipment as it stood when the outage was opened: the record needs nothing else to be read.
+ * Temperatures in °C unless a unit stands beside them, pressures in psig, times in minutes. A case's
+ * limit is the one that counts: the strictest of the rulebook's, the site's for its class and its own.
+ */
+export const snapshotSchema = z.object({
+  site: z.object({
+    ...siteShape,
+    holding: siteHoldingSchema,
+    instrumentCheckDays: z.number().int().positive(), // a last check that is older is pointed out
+  }).strict(),
+  ...equipmentShape,
 }).strict()
 
 export type Snapshot = z.output<typeof snapshotSchema>

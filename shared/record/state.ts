@@ -1,3 +1,4 @@
+import { INSTRUMENT_CHECK_DAYS, PLAIN_HOLDING } from '../schemas/equipment'
 import type { Role } from '../schemas/people'
 import type { HandPosition, PointKind } from '../schemas/point-kinds'
 import type { CheckId } from './checks'
@@ -9,7 +10,7 @@ import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 2
+export const FOLD_VERSION = 3
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
@@ -155,7 +156,7 @@ export const EMPTY_PLAN: Plan = {
 }
 
 const EMPTY_SNAPSHOT: Snapshot = {
-  site: { id: NO_ID, code: '', name: '', address: '', timeZone: 'UTC', temperatureUnit: 'C', pressureUnit: 'psig', altitudeM: 0, intervalMinutes: 10, paper: 'A4', contactName: '', contactPhone: '', quietHours: [] },
+  site: { id: NO_ID, code: '', name: '', address: '', timeZone: 'UTC', temperatureUnit: 'C', pressureUnit: 'psig', altitudeM: 0, intervalMinutes: 10, paper: 'A4', contactName: '', contactPhone: '', quietHours: [], holding: structuredClone(PLAIN_HOLDING), instrumentCheckDays: INSTRUMENT_CHECK_DAYS },
   controller: { id: NO_ID, name: '', place: '', panelVolts: null },
   rulebook: { id: '', version: '', name: '' },
   racks: [], suctionGroups: [], circuits: [], cases: [], points: [], instruments: [],

@@ -57,6 +57,37 @@ export const siteSchema = z.object({
   quietHours: z.array(quietHoursSchema).max(20).default([]),
 })
 
+/** Days after which an instrument's last check counts as overdue, where a site says nothing else. */
+export const INSTRUMENT_CHECK_DAYS = 90
+export const CHECK_DAYS_MAX = 730
+/** No time that a rulebook allows is longer, minutes. */
+export const STRICTER_MINUTES_MAX = 1440
+
+/** What a site holds stricter for one class of its rulebook; null: as the rulebook has it. */
+export const stricterClassSchema = z.object({
+  foodClass: z.string().min(1, 'Choose a food class').max(SHORT_MAX),
+  limit: z.number({ invalid_type_error: 'Enter a number' }).finite().min(-76, 'At least −76').max(140, 'At most 140').nullable(), // in the rulebook's own unit
+  minutes: z.number({ invalid_type_error: 'Enter a number' }).int('Whole minutes').min(1, 'At least 1 minute').max(STRICTER_MINUTES_MAX, `At most ${STRICTER_MINUTES_MAX} minutes`).nullable(),
+}).strict()
+export type StricterClass = z.output<typeof stricterClassSchema>
+
+/** How a site judges more strictly than its rulebook, and the choice that the law itself leaves to it. */
+export const siteHoldingSchema = z.object({
+  addAccuracy: z.boolean(), // each reading counts with its thermometer's accuracy added
+  allowsMinus12: z.boolean(),
+  classes: z.array(stricterClassSchema).max(40),
+}).strict()
+export type SiteHolding = z.output<typeof siteHoldingSchema>
+
+/** A site that judges as its rulebook does. */
+export const PLAIN_HOLDING: SiteHolding = { addAccuracy: false, allowsMinus12: false, classes: [] }
+
+export const siteLimitsSchema = z.object({
+  holding: siteHoldingSchema,
+  instrumentCheckDays: z.number({ invalid_type_error: 'Enter a number' }).int('Whole days').min(1, 'At least 1 day').max(CHECK_DAYS_MAX, `At most ${CHECK_DAYS_MAX} days`),
+}).strict()
+export type SiteLimits = z.output<typeof siteLimitsSchema>
+
 export const controllerSchema = z.object({
   name: short('a name'),
   place: words,

@@ -1,6 +1,6 @@
 import type { z } from 'zod'
 import { caseSchema, circuitSchema, controllerSchema, instrumentSchema, pointSchema, rackSchema, suctionGroupSchema } from './equipment'
-import type { siteSchema } from './equipment'
+import type { SiteLimits, siteSchema } from './equipment'
 import type { workKindSchema } from './work'
 
 /** The lists of a site's equipment, as routes name them. */
@@ -37,7 +37,7 @@ export type SiteItem = SiteValue & { id: string }
 export interface SiteLine { id: string, code: string, name: string, address: string, timeZone: string, rulebook: string, controllers: number, cases: number, points: number }
 
 /** A site with all its equipment, each list by name. */
-export interface SiteView extends SiteItem {
+export interface SiteView extends SiteItem, SiteLimits {
   controllers: ResourceItem<'controllers'>[]
   racks: ResourceItem<'racks'>[]
   suctionGroups: ResourceItem<'suction-groups'>[]

@@ -67,6 +67,8 @@ export const MATRIX: Row[] = [
   { route: 'POST /api/sites', expected: ADMIN(422), path: () => '/api/sites', body: () => ({}) },
   { route: 'GET /api/sites/[siteId]', expected: SITE(200), path: ids => `/api/sites/${ids.site}`, unknown: `/api/sites/${NOTHING}` },
   { route: 'PATCH /api/sites/[siteId]', expected: SITE_ADMIN(200), path: ids => `/api/sites/${ids.site}`, body: () => ({}), unknown: `/api/sites/${NOTHING}` },
+  { route: 'GET /api/sites/[siteId]/limits', expected: SITE(200), path: ids => `/api/sites/${ids.site}/limits`, unknown: `/api/sites/${NOTHING}/limits` },
+  { route: 'PUT /api/sites/[siteId]/limits', expected: SITE_ADMIN(200), path: ids => `/api/sites/${ids.site}/limits`, body: () => ({ holding: { addAccuracy: false, allowsMinus12: false, classes: [] }, instrumentCheckDays: 90 }), unknown: `/api/sites/${NOTHING}/limits` },
   { route: 'POST /api/sites/[siteId]/[resource]', expected: SITE_ADMIN(422), path: ids => `/api/sites/${ids.site}/racks`, body: () => ({}), unknown: `/api/sites/${NOTHING}/racks` },
   { route: 'PATCH /api/sites/[siteId]/[resource]/[id]', expected: SITE_ADMIN(200), path: (ids, asker) => `/api/sites/${ids.site}/racks/${ids.rack(asker)}`, body: () => ({}), unknown: `/api/sites/${NOTHING}/racks/${NOTHING}` },
   { route: 'DELETE /api/sites/[siteId]/[resource]/[id]', expected: SITE_ADMIN(204), path: (ids, asker) => `/api/sites/${ids.site}/racks/${ids.rack(asker)}`, unknown: `/api/sites/${NOTHING}/racks/${NOTHING}` },

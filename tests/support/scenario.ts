@@ -8,6 +8,7 @@ import { logRoot } from '../../shared/record/merkle'
 import type { Plan } from '../../shared/record/plan'
 import { expectedSeen, inUnit, nextRound, watchedCases } from '../../shared/record/select'
 import type { Snapshot, SnapshotCase, SnapshotPoint } from '../../shared/record/snapshot'
+import { PLAIN_HOLDING } from '../../shared/schemas/equipment'
 import type { CaseKind } from '../../shared/schemas/case-kinds'
 import type { HandPosition, PointKind } from '../../shared/schemas/point-kinds'
 import { drawnSignature } from './png'
@@ -75,7 +76,7 @@ export function quarryStreet(site: Scenario['site'] = {}, rulebookId = 'us-food-
   const foodClass = id === 'uk-england-2013' ? 'chilled' : 'tcs'
   const cases = CASES.map(([name, kind, on, usualC]): SnapshotCase => ({ id: caseId(name), name, kind, foodClass, usualC, limit: limitFor(rulebook.id, foodClass), stricter: false, tauHours: 6, tauIsOwn: false, runsAlone: name === 'Juice doors', circuitId: circuit(on) }))
   return {
-    site: { id: uuidFor('site Quarry Street'), code: 'Q027', name: 'Quarry Street', address: '27 Quarry Street', timeZone: 'America/Chicago', temperatureUnit: 'F', pressureUnit: 'psig', altitudeM: 180, intervalMinutes: 10, paper: 'Letter', contactName: 'Piet Harrow', contactPhone: '555 0127', quietHours: [], ...site },
+    site: { id: uuidFor('site Quarry Street'), code: 'Q027', name: 'Quarry Street', address: '27 Quarry Street', timeZone: 'America/Chicago', temperatureUnit: 'F', pressureUnit: 'psig', altitudeM: 180, intervalMinutes: 10, paper: 'Letter', contactName: 'Piet Harrow', contactPhone: '555 0127', quietHours: [], holding: PLAIN_HOLDING, instrumentCheckDays: 90, ...site },
     controller: { id: uuidFor('controller A'), name: 'rack A controller', place: 'Machine room', panelVolts: 460 },
     rulebook,
     racks: [{ id: RACK, name: 'Rack A', refrigerant: 'R-448A', highCutOutPsig: 395 }],

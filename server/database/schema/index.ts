@@ -1,3 +1,4 @@
+export * from './changes'
 export * from './outages'
 export * from './people'
 export * from './sites'

@@ -1,8 +1,8 @@
 import { sql } from 'drizzle-orm'
 import { boolean, check, date, doublePrecision, index, integer, jsonb, pgTable, text, timestamp, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
 import { CASE_KINDS } from '../../../shared/schemas/case-kinds'
-import type { DefrostSchedule, QuietHours } from '../../../shared/schemas/equipment'
-import { DEFROST_KINDS, INSTRUMENT_KINDS, ON_LOSS, PAPERS, PRESSURE_UNITS, STAGES, TEMPERATURE_UNITS } from '../../../shared/schemas/equipment'
+import type { DefrostSchedule, QuietHours, SiteHolding } from '../../../shared/schemas/equipment'
+import { DEFROST_KINDS, INSTRUMENT_CHECK_DAYS, INSTRUMENT_KINDS, ON_LOSS, PAPERS, PLAIN_HOLDING, PRESSURE_UNITS, STAGES, TEMPERATURE_UNITS } from '../../../shared/schemas/equipment'
 import { POINT_KINDS } from '../../../shared/schemas/point-kinds'
 import type { HandPosition } from '../../../shared/schemas/point-kinds'
 import type { StepPlan } from '../../../shared/schemas/work'
@@ -29,11 +29,14 @@ export const sites = pgTable('sites', {
   contactPhone: text().notNull().default(''),
   monitoringEmail: text().notNull().default(''),
   quietHours: jsonb().$type<QuietHours[]>().notNull().default([]),
+  holding: jsonb().$type<SiteHolding>().notNull().default(PLAIN_HOLDING), // stricter than the rulebook; set by its own route, which keeps its history
+  instrumentCheckDays: integer().notNull().default(INSTRUMENT_CHECK_DAYS),
   outageCount: integer().notNull().default(0), // the last number given to an outage here
   ...stamps(),
 }, table => [
   uniqueIndex('sites_code').on(table.code),
   check('sites_interval', sql`${table.intervalMinutes} between 1 and 60`),
+  check('sites_instrument_check', sql`${table.instrumentCheckDays} > 0`),
 ])
 
 /** A controller: it may serve several racks. Its own removal is refused while anything hangs on it. */

@@ -68,9 +68,21 @@ export const CHECKS: { [R in ResourceName]: Check<R> } = {
   'instruments': checkInstrument,
 }
 
-/** A site's own fields: a known rulebook that its cases can be judged by. @param cases those that stand in it */
-export function checkSite(site: SiteValue, cases: readonly ResourceValue<'cases'>[]): Fault[] {
+/**
+ * A site's own fields: a known rulebook that its cases can be judged by, and no setting left over from another.
+ * @param cases those that stand in it
+ * @param before the site as it is stored; undefined: a new one
+ */
+export function checkSite(site: SiteValue, cases: readonly ResourceValue<'cases'>[], before?: SiteView): Fault[] {
   if (!rulebookById(site.rulebook)) return [{ field: 'rulebook', reason: `Choose one of ${[...new Set(rulebooks.map(({ id }) => id))].join(', ')}` }]
   const strange = cases.filter(item => classFaults(item, site.rulebook).length > 0).map(item => item.name)
-  return strange.length > 0 ? [{ field: 'rulebook', reason: `This rulebook does not hold the food class or the stricter limit of ${strange.join(', ')}: change those cases first` }] : []
+  if (strange.length > 0) return [{ field: 'rulebook', reason: `This rulebook does not hold the food class or the stricter limit of ${strange.join(', ')}: change those cases first` }]
+  return before && before.rulebook !== site.rulebook ? leftOver(before) : []
+}
+
+/** Stricter limits are written in the unit and for the classes of the rulebook that they were set under. */
+function leftOver({ holding, cases }: SiteView): Fault[] {
+  if (holding.classes.length > 0 || holding.allowsMinus12) return [{ field: 'rulebook', reason: 'The site\'s stricter limits are written for the present rulebook: take them back on its page of limits first' }]
+  const own = cases.filter(item => item.limitStricter !== null).map(item => item.name)
+  return own.length > 0 ? [{ field: 'rulebook', reason: `The own limit of ${own.join(', ')} is written for the present rulebook: take it back first` }] : []
 }

@@ -24,7 +24,7 @@ export async function updateSite(id: string, change: Partial<SiteValue>): Promis
     return await withSite(id, async (tx, site) => {
       const given = Object.fromEntries(Object.entries(change).filter(([, value]) => value !== undefined))
       const value = siteSchema.parse({ ...site, ...given })
-      refuseFault(checkSite(value, site.cases)[0])
+      refuseFault(checkSite(value, site.cases, site)[0])
       await tx.update(sites).set(value).where(eq(sites.id, id))
       return { ...value, id }
     })

@@ -3,9 +3,12 @@ import { isoTime } from '~~/shared/record/entry'
 import { firstDarkAt, judgedReadings } from '~~/shared/record/select'
 import type { SnapshotCase } from '~~/shared/record/snapshot'
 import type { OutageState } from '~~/shared/record/state'
+import type { TemperatureUnit } from '~~/shared/schemas/assess'
 import { assess } from './judge'
-import { limitFor } from './rulebooks'
+import { rulebookById } from './rulebooks'
+import { siteFor } from './site-settings'
 import type { Assessment } from './types'
+import { convertDifference, convertTemperature } from './units'
 
 /** Verdicts from the best to the worst. */
 const RANK: Record<Assessment['verdict'], number> = { within: 0, unknown: 1, above: 2, act: 3, discard: 4 }
@@ -30,18 +33,30 @@ export function assessCase(state: OutageState, caseId: string, now: number): Ass
 function assessReadings(state: OutageState, known: SnapshotCase, darkAt: number, taken: Reading[], now: number): Assessment | null {
   const readings = oneInstantEach(taken)
   if (readings.length === 0) return null
-  const unit = state.snapshot.site.temperatureUnit
+  const { rulebook, site } = state.snapshot
+  const unit = site.temperatureUnit
   return assess({
-    rulebook: state.snapshot.rulebook.id,
-    version: state.snapshot.rulebook.version,
+    rulebook: rulebook.id,
+    version: rulebook.version,
     foodClass: known.foodClass,
     unit,
     darkAt: isoTime(darkAt),
-    intervalMinutes: state.snapshot.site.intervalMinutes,
-    readings: readings.map(reading => ({ at: isoTime(reading.at), value: convert(reading.value, reading.unit, unit), method: reading.method })),
+    intervalMinutes: site.intervalMinutes,
+    readings: readings.map(reading => ({
+      at: isoTime(reading.at),
+      value: convertTemperature(reading.value, reading.unit, unit),
+      method: reading.method,
+      ...accuracyOf(state, reading, unit),
+    })),
     now: isoTime(now),
-    ...(known.stricter ? { site: { limit: stricterLimit(state, known) } } : {}),
+    site: { ...siteFor(site.holding, known.foodClass), ...known.stricter ? { limit: stricterLimit(state, known) } : {} },
   })
+}
+
+/** The accuracy of the instrument that a reading names, degrees of the site's unit; without one the engine takes what the code demands. */
+function accuracyOf(state: OutageState, reading: Reading, unit: TemperatureUnit): { accuracy?: number } {
+  const instrument = state.snapshot.instruments.find(item => item.id === reading.instrumentId)
+  return instrument ? { accuracy: convertDifference(instrument.accuracyC, 'C', unit) } : {}
 }
 
 type Reading = ReturnType<typeof judgedReadings>[number]
@@ -52,18 +67,13 @@ function oneInstantEach(readings: Reading[]): Reading[] {
   for (const reading of readings) {
     const last = kept.at(-1)
     if (last?.at !== reading.at) kept.push(reading)
-    else if (convert(reading.value, reading.unit, 'C') > convert(last.value, last.unit, 'C')) kept[kept.length - 1] = reading
+    else if (convertTemperature(reading.value, reading.unit, 'C') > convertTemperature(last.value, last.unit, 'C')) kept[kept.length - 1] = reading
   }
   return kept
 }
 
-function convert(value: number, from: 'F' | 'C', to: 'F' | 'C'): number {
-  if (from === to) return value
-  return to === 'C' ? (value - 32) * 5 / 9 : value * 9 / 5 + 32
-}
-
-/** The site's stricter limit in the rulebook's own unit. */
-function stricterLimit(state: OutageState, known: OutageState['snapshot']['cases'][number]): number {
-  const own = limitFor(state.snapshot.rulebook.id, known.foodClass)
-  return convert(known.limit.value, known.limit.unit, own.unit)
+/** The case's stricter limit in the unit of the rulebook, in the version that the outage was planned with. */
+function stricterLimit(state: OutageState, known: SnapshotCase): number {
+  const { id, version } = state.snapshot.rulebook
+  return convertTemperature(known.limit.value, known.limit.unit, rulebookById(id, version)?.unit ?? known.limit.unit)
 }

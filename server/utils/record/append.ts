@@ -1,6 +1,7 @@
 import { eq, sql } from 'drizzle-orm'
 import type { AnyEntry, Entry } from '../../../shared/record/entry'
 import { entryHash } from '../../../shared/record/entry'
+import { asNewest } from '../../../shared/record/newest'
 import { judge } from '../../../shared/record/rules'
 import { emptyState, FOLD_VERSION } from '../../../shared/record/state'
 import { controllers, outages, refusals, sites } from '../../database/schema'
@@ -67,7 +68,7 @@ async function appendOne(draft: Draft, person: Person, item: unknown, at: string
   if (draft.state.opened === null && standing === 'questioned') return refuse(entry.id, 422, why.join('; '), `${at}.entry.body.lostAt`)
   if (standing === 'refused') return recordRefusal(draft, entry, { id: entry.id, status: 'refused', code: 403, field: null, reason: why.join('; '), recorded: true })
   if (entry.kind === 'outage-opened' && draft.state.opened === null) {
-    const fault = openingFault(entry.body)
+    const fault = openingFault((asNewest(entry) as Entry<'outage-opened'>).body)
     if (fault) return refuse(entry.id, 422, fault.reason, `${at}.entry.body.${fault.field}`)
     await openOutage(draft, person, entry)
   }

@@ -1,6 +1,6 @@
 import type { BodyOf } from '../../../shared/record/kinds'
 import { isTimeZone } from '../../../shared/schemas/equipment'
-import { classById, rulebookById } from '../holding'
+import { classById, rulebookById, settingFaults } from '../holding'
 
 /**
  * What keeps an opening from carrying an outage, or null: everything after it is judged by the equipment
@@ -13,6 +13,8 @@ export function openingFault({ snapshot }: BodyOf<'outage-opened'>): { field: st
   if (!rulebook) return { field: 'snapshot.rulebook', reason: `There is no rulebook ${id} in version ${version}` }
   const strange = cases.findIndex(item => !classById(rulebook, item.foodClass))
   if (strange >= 0) return { field: `snapshot.cases[${strange}].foodClass`, reason: `${rulebook.name} has no class ${cases[strange]!.foodClass}` }
+  const [laxer] = settingFaults(rulebook, site.holding)
+  if (laxer) return { field: `snapshot.site.holding.${laxer.field}`, reason: laxer.reason }
   const twice = repeated(points.map(point => point.tag))
   if (twice >= 0) return { field: `snapshot.points[${twice}].tag`, reason: `${points[twice]!.tag} stands twice` }
   const again = repeated(cases.map(item => item.id))

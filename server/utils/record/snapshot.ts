@@ -4,7 +4,7 @@ import { isFrozenKind } from '../../../shared/schemas/case-kinds'
 import { cases, circuits, controllers, instruments, points, racks, sites, suctionGroups } from '../../database/schema'
 import type { Queries } from '../database'
 import { DEFAULT_TAU_HOURS } from '../hold'
-import { limitFor, rulebookById } from '../holding'
+import { caseLimit, classById, rulebookById } from '../holding'
 
 /** Hours that stand for a frozen case whose hold comes from its enthalpy, not from a time constant. */
 const FROZEN_TAU_HOURS = 24
@@ -28,6 +28,7 @@ export async function snapshotOf(db: Queries, controllerId: string): Promise<Sna
       id: site.id, code: site.code, name: site.name, address: site.address, timeZone: site.timeZone,
       temperatureUnit: site.temperatureUnit, pressureUnit: site.pressureUnit, altitudeM: site.altitudeM, intervalMinutes: site.intervalMinutes,
       paper: site.paper, contactName: site.contactName, contactPhone: site.contactPhone, quietHours: site.quietHours,
+      holding: site.holding, instrumentCheckDays: site.instrumentCheckDays,
     },
     controller: { id: controller.id, name: controller.name, place: controller.place, panelVolts: controller.panelVolts },
     rulebook: { id: rulebook.id, version: rulebook.version, name: rulebook.name },
@@ -35,11 +36,12 @@ export async function snapshotOf(db: Queries, controllerId: string): Promise<Sna
     suctionGroups: groupRows.map(({ id, rackId, name, stage, targetSuctionPsig, lowCutOutPsig }) => ({ id, rackId, name, stage, targetSuctionPsig, lowCutOutPsig })),
     circuits: circuitRows.map(({ id, rackId, suctionGroupId, name, defrostKind, defrosts, durationMin, dripMin }) => ({ id, rackId, suctionGroupId, name, defrostKind, defrosts, durationMin, dripMin })),
     cases: caseRows.map((item) => {
-      const legal = limitFor(rulebook.id, item.foodClass)
-      const stricter = item.limitStricter !== null && item.limitStricter < legal.value
+      const foodClass = classById(rulebook, item.foodClass)
+      if (!foodClass) throw new Error(`${item.name} is of the class ${item.foodClass}, which ${rulebook.name} does not hold`)
+      const { value, stricter } = caseLimit(foodClass, site.holding, item.limitStricter)
       return {
         id: item.id, name: item.name, kind: item.kind, foodClass: item.foodClass, usualC: item.usualC,
-        limit: { value: stricter ? item.limitStricter! : legal.value, unit: legal.unit }, stricter,
+        limit: { value, unit: rulebook.unit }, stricter,
         tauHours: item.tauHours ?? (isFrozenKind(item.kind) ? FROZEN_TAU_HOURS : DEFAULT_TAU_HOURS[item.kind]), tauIsOwn: item.tauHours !== null,
         runsAlone: item.runsAlone, circuitId: item.circuitId,
       }

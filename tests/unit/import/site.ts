@@ -10,6 +10,8 @@ export function quarryStreetView({ withPoints }: { withPoints: boolean }): SiteV
   return {
     ...siteSchema.parse(quarryStreet.site),
     id: snapshot.site.id,
+    holding: snapshot.site.holding,
+    instrumentCheckDays: snapshot.site.instrumentCheckDays,
     controllers: [{ ...snapshot.controller, notes: '' }],
     racks: snapshot.racks.map(rack => ({ ...rack, controllerId })),
     suctionGroups: snapshot.suctionGroups,

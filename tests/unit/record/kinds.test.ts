@@ -13,7 +13,7 @@ const bodies = kinds.map(kind => [kind, BODIES[kind]] as const)
 
 /** The path and message of the first fault, or null. */
 function fault(kind: EntryKind, body: unknown): string | null {
-  const parsed = schemaOf(kind, 1)!.safeParse(body)
+  const parsed = schemaOf(kind, newestVersion(kind))!.safeParse(body)
   return parsed.success ? null : `${parsed.error.issues[0]!.path.join('.')}: ${parsed.error.issues[0]!.message}`
 }
 

@@ -5,7 +5,7 @@ import { BACK_CHECKS } from '../../../shared/record/checks'
 import { isoTime } from '../../../shared/record/entry'
 import { goDarkGate, NO_RESULTS, sealGate } from '../../../shared/record/gates'
 import type { EntryKind } from '../../../shared/record/kinds'
-import { isServerKind, KINDS, schemaOf } from '../../../shared/record/kinds'
+import { isServerKind, KINDS, newestVersion, schemaOf } from '../../../shared/record/kinds'
 import type { AnyEntry } from '../../../shared/record/entry'
 import { applyStored } from '../../../shared/record/fold'
 import { firmReadings, pointsInHand } from '../../../shared/record/select'
@@ -129,7 +129,7 @@ describe('every kind, questioned', () => {
     const before = structuredClone(writer.state)
     for (const kind of kinds) {
       const state = structuredClone(before)
-      const entry = { v: 1, id: uuidFor(kind), outage: writer.id, kind, body: schemaOf(kind, 1)!.parse(BODIES[kind]), at: isoTime(writer.now), skew: 0, by: technician.id, device: technician.device, n: 99, prev: null } as AnyEntry
+      const entry = { v: newestVersion(kind), id: uuidFor(kind), outage: writer.id, kind, body: schemaOf(kind, newestVersion(kind))!.parse(BODIES[kind]), at: isoTime(writer.now), skew: 0, by: technician.id, device: technician.device, n: 99, prev: null } as AnyEntry
       applyStored(state, { entry, signature: '', seq: before.size + 1, receivedAt: isoTime(writer.now), standing: 'questioned', why: ['late'] })
       expect(state.phase, kind).toBe(before.phase)
       expect(pointsInHand(state).length, kind).toBeGreaterThanOrEqual(pointsInHand(before).length)

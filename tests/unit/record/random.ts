@@ -6,7 +6,7 @@ import type { AnyEntry, StoredEntry } from '../../../shared/record/entry'
 import { entryHash, isoTime } from '../../../shared/record/entry'
 import { applyStored } from '../../../shared/record/fold'
 import type { BodyInput, EntryKind } from '../../../shared/record/kinds'
-import { schemaOf } from '../../../shared/record/kinds'
+import { newestVersion, schemaOf } from '../../../shared/record/kinds'
 import { SEEN_IN_AUTO } from '../../../shared/record/kinds/hand'
 import { ACTS } from '../../../shared/record/kinds/rounds'
 import { SEAL_STATEMENT } from '../../../shared/record/kinds/review'
@@ -154,8 +154,8 @@ export type Walk = typeof walks extends fc.Arbitrary<infer T> ? T : never
 /** An opening is large, and parsing it over and over takes most of a run's time. */
 let parsedOpening: unknown
 function bodyOf(kind: PersonKind, drawn: unknown): unknown {
-  if (kind !== 'outage-opened') return schemaOf(kind, 1)!.parse(drawn)
-  return parsedOpening ??= schemaOf(kind, 1)!.parse(drawn)
+  if (kind !== 'outage-opened') return schemaOf(kind, newestVersion(kind))!.parse(drawn)
+  return parsedOpening ??= schemaOf(kind, newestVersion(kind))!.parse(drawn)
 }
 
 /** What a check compares with, taken before a deed. */
@@ -191,7 +191,7 @@ export function go({ start, deeds }: Walk, look: (happening: Happening) => void)
     const chain = state.chain[signer.device]
     const draw = DRAW[kind] as (state: OutageState, draws: Deed['draws'], now: number) => unknown
     const entry = {
-      v: 1, id: uuidFor(`walk ${index}`, now), outage: state.id, kind, body: bodyOf(kind, draw(state, draws, now)), at: isoTime(now - (late ? 180_000 : 0)), skew: 0,
+      v: newestVersion(kind), id: uuidFor(`walk ${index}`, now), outage: state.id, kind, body: bodyOf(kind, draw(state, draws, now)), at: isoTime(now - (late ? 180_000 : 0)), skew: 0,
       by: signer.id, device: signer.device, n: (chain?.n ?? 0) + 1, prev: chain?.hash ?? null,
     } as AnyEntry
     const judgement = judge(state, entry, { id: signer.id, role: signer.role as Role }, { planRefusals, handBackAfter, margin: () => [], filesAwaited: () => [], root: null })

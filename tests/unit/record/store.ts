@@ -5,7 +5,7 @@ import { BACK_CHECKS, BEFORE_CHECKS } from '../../../shared/record/checks'
 import type { AnyEntry } from '../../../shared/record/entry'
 import { isoTime } from '../../../shared/record/entry'
 import type { BodyInput, EntryKind } from '../../../shared/record/kinds'
-import { schemaOf } from '../../../shared/record/kinds'
+import { newestVersion, schemaOf } from '../../../shared/record/kinds'
 import { SEAL_STATEMENT, SUBMIT_STATEMENT } from '../../../shared/record/kinds/review'
 import { logRoot } from '../../../shared/record/merkle'
 import type { Plan } from '../../../shared/record/plan'
@@ -13,6 +13,7 @@ import type { Judgement, Surroundings } from '../../../shared/record/rules'
 import { judge } from '../../../shared/record/rules'
 import { expectedSeen } from '../../../shared/record/select'
 import type { Snapshot, SnapshotPoint } from '../../../shared/record/snapshot'
+import { PLAIN_HOLDING } from '../../../shared/schemas/equipment'
 import type { HandPosition, PointKind } from '../../../shared/schemas/point-kinds'
 import type { TestSigner } from '../../support/record'
 import { RecordWriter, supervisor, technician, uuidFor } from '../../support/record'
@@ -37,7 +38,7 @@ const GUARDED = { guards: ['high pressure', 'low pressure'] }
 
 /** C-2 stays off; LA-1 and C-3, which has no guard in hand, are not in the plan. */
 export const snapshot: Snapshot = {
-  site: { id: uuidFor('small site'), code: 'Q001', name: 'Mill Lane', address: '', timeZone: 'America/Chicago', temperatureUnit: 'F', pressureUnit: 'psig', altitudeM: 0, intervalMinutes: 10, paper: 'Letter', contactName: '', contactPhone: '', quietHours: [] },
+  site: { id: uuidFor('small site'), code: 'Q001', name: 'Mill Lane', address: '', timeZone: 'America/Chicago', temperatureUnit: 'F', pressureUnit: 'psig', altitudeM: 0, intervalMinutes: 10, paper: 'Letter', contactName: '', contactPhone: '', quietHours: [], holding: PLAIN_HOLDING, instrumentCheckDays: 90 },
   controller: { id: uuidFor('small controller'), name: 'rack controller', place: '', panelVolts: 460 },
   rulebook,
   racks: [{ id: RACK, name: 'Rack A', refrigerant: 'R-448A', highCutOutPsig: 395 }],
@@ -175,7 +176,7 @@ const AROUND: Surroundings = { planRefusals, handBackAfter, margin: () => [], fi
 export function judged<K extends EntryKind>(writer: RecordWriter, signer: TestSigner, kind: K, body: BodyInput<K>, around: Partial<Surroundings> = {}): Judgement {
   const chain = writer.state.chain[signer.device]
   const entry = {
-    v: 1, id: uuidFor(`judged ${kind} ${JSON.stringify(body)}`), outage: writer.id, kind, body: schemaOf(kind, 1)!.parse(body), at: isoTime(writer.now), skew: 0,
+    v: newestVersion(kind), id: uuidFor(`judged ${kind} ${JSON.stringify(body)}`), outage: writer.id, kind, body: schemaOf(kind, newestVersion(kind))!.parse(body), at: isoTime(writer.now), skew: 0,
     by: signer.id, device: signer.device, n: (chain?.n ?? 0) + 1, prev: chain?.hash ?? null,
   } as AnyEntry
   if (signer.role === 'server') throw new Error('The server is not judged')

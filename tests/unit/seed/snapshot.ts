@@ -1,5 +1,5 @@
 import { isFrozenKind } from '~~/shared/schemas/case-kinds'
-import { caseSchema, circuitSchema, controllerSchema, pointSchema, rackSchema, siteSchema, suctionGroupSchema } from '~~/shared/schemas/equipment'
+import { caseSchema, circuitSchema, controllerSchema, INSTRUMENT_CHECK_DAYS, PLAIN_HOLDING, pointSchema, rackSchema, siteSchema, suctionGroupSchema } from '~~/shared/schemas/equipment'
 import { snapshotSchema, type Snapshot } from '~~/shared/record/snapshot'
 import type { SiteSeed } from '~~/server/database/seed/equipment'
 import { DEFAULT_TAU_HOURS } from '~~/server/utils/hold'
@@ -41,7 +41,7 @@ export function snapshotOfSeed({ site: siteSeed, controllers: [seed] }: SiteSeed
   })
   const { code, name: siteName, address, timeZone, temperatureUnit, pressureUnit, altitudeM, intervalMinutes, paper, contactName, contactPhone, quietHours } = site
   return snapshotSchema.parse({
-    site: { id: newId(), code, name: siteName, address, timeZone, temperatureUnit, pressureUnit, altitudeM, intervalMinutes, paper, contactName, contactPhone, quietHours },
+    site: { id: newId(), code, name: siteName, address, timeZone, temperatureUnit, pressureUnit, altitudeM, intervalMinutes, paper, contactName, contactPhone, quietHours, holding: PLAIN_HOLDING, instrumentCheckDays: INSTRUMENT_CHECK_DAYS },
     controller: { id: controllerId, name, place, panelVolts },
     rulebook: { id: rulebook.id, version: rulebook.version, name: rulebook.name },
     racks, suctionGroups, circuits, cases, points, instruments: [],

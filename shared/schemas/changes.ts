@@ -1,0 +1,24 @@
+import { RESOURCE_NAMES } from './site-view'
+
+/** What an administrator changes; its history is kept for ever. */
+export const CHANGE_SUBJECTS = ['site', 'limits', ...RESOURCE_NAMES, 'person', 'work-kind'] as const
+export type ChangeSubject = (typeof CHANGE_SUBJECTS)[number]
+
+export const CHANGE_DEEDS = ['added', 'changed', 'deleted'] as const
+export type ChangeDeed = (typeof CHANGE_DEEDS)[number]
+
+/** One field before and after; null: there was nothing, or is nothing any more. */
+export interface FieldChange { field: string, before: unknown, after: unknown }
+
+/** One act of an administrator, as it reads in a history. */
+export interface ChangeItem {
+  id: string
+  /** ISO 8601 UTC */
+  at: string
+  by: string
+  subject: ChangeSubject
+  subjectId: string
+  subjectName: string
+  deed: ChangeDeed
+  fields: FieldChange[]
+}
