@@ -1,21 +1,23 @@
 import { computed, onScopeDispose, ref, shallowRef } from 'vue'
 import type { StoredEntry } from '~~/shared/record/entry'
-import { applyStored, fold } from '~~/shared/record/fold'
+import { fold } from '~~/shared/record/fold'
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
 import { logRoot } from '~~/shared/record/merkle'
 import { LIVE_PHASES } from '~~/shared/record/phases'
 import type { Surroundings } from '~~/shared/record/rules'
-import { judge } from '~~/shared/record/rules'
-import type { OutageState } from '~~/shared/record/state'
 import { emptyState } from '~~/shared/record/state'
 import type { Role } from '~~/shared/schemas/people'
 import { handBackAfter, planRefusals } from '~~/server/utils/order/for-outage'
-import type { KeptEntry } from '~/offline/database'
+import { keptFact, keepFact } from '~/offline/facts'
 import { drainFiles, keepFile } from '~/offline/files'
-import { dismissRefused, drain, keepSigned, keptEntries, Unreachable } from '~/offline/outbox'
-import type { PushResult } from '~/offline/outbox'
-import { fetchEntries, fetchServerTime, pushEntries, putFile } from '~/queries/entries'
+import { keptOutbox, onKeptChange } from '~/offline/kept'
+import { signWith } from '~/offline/keys'
+import { forgetLog, keepLog, keptLog } from '~/offline/logs'
+import type { OutboxEntry, PushResult, Trouble } from '~/offline/outbox-ports'
+import { isWaiting } from '~/offline/outbox-ports'
+import { fetchEntries, fetchServerTime, putFile } from '~/queries/entries'
 import { useSigner } from '~/stores/signer'
+import { stateHere } from '~/utils/state-here'
 
 const POLL_MS = 5000
 const POLL_QUIET_MS = 20_000
@@ -29,29 +31,65 @@ export const SURROUNDINGS: Surroundings = { planRefusals, handBackAfter, margin:
 
 /**
  * One outage on this device: the log as far as it is known, folded, with what is kept here and not
- * yet sent on top; and the way to sign a further entry.
+ * yet in it on top; and the way to sign a further entry. All of it works without a network.
  */
 export function useOutage(id: string, person: { id: string, role: Role }) {
   const signer = useSigner()
+  const outbox = keptOutbox()
   const entries = shallowRef<StoredEntry[]>([])
-  const base = shallowRef<OutageState>(emptyState(id))
-  const kept = shallowRef<KeptEntry[]>([])
+  const base = shallowRef(emptyState(id))
+  const kept = shallowRef<OutboxEntry[]>([])
   const loaded = ref(false)
   const failure = ref<'away' | 'missing' | null>(null)
+  /** why this outage's entries wait, as the last attempt to send them says */
+  const trouble = ref<Trouble | null>(null)
+  /** the log could not be kept on this phone: it is gone when the page is left */
+  const unkept = ref(false)
   const heardAt = ref<number | null>(null)
   const skew = ref(0)
+  /** moves on while the server is away, so that verdicts follow the time */
+  const alone = ref<number | null>(null)
   let timer: ReturnType<typeof setTimeout> | undefined
   let closed = false
 
-  const pending = computed(() => kept.value.filter(item => item.refusal === null))
-  const refused = computed(() => kept.value.filter(item => item.refusal !== null && item.person === person.id))
-  const state = computed(() => withPending(base.value, pending.value, person))
+  const own = computed(() => kept.value.filter(item => item.person === person.id))
+  const pending = computed(() => own.value.filter(isWaiting))
+  const refused = computed(() => own.value.filter(item => item.refusal !== null))
+  const here = computed(() => stateHere(base.value, own.value.filter(item => item.refusal === null), person, SURROUNDINGS, alone.value))
+  const state = computed(() => here.value.state)
+  const checkedHere = computed(() => here.value.checkedHere)
 
-  /** Measures this device's clock against the server's before there is a log to ask for; without an answer it stays as it was. */
+  const readKept = async () => { kept.value = await outbox.entries(id) }
+
+  /** Measures this device's clock against the server's before there is a log to ask for; without an answer it stays as it was last measured. */
   async function measure(): Promise<void> {
+    skew.value = await keptFact('skew').catch(() => null) ?? skew.value
     const before = Date.now()
     const time = await fetchServerTime().catch(() => null)
-    if (time) skew.value = skewOf(before, time)
+    if (time) measured(before, time)
+  }
+
+  function measured(asked: number, serverTime: string): void {
+    skew.value = skewOf(asked, serverTime)
+    void keepFact('skew', skew.value).catch(() => undefined)
+  }
+
+  function take(fresh: StoredEntry[]): void {
+    if (fresh.length === 0) return
+    base.value = fold(fresh, base.value)
+    entries.value = [...entries.value, ...fresh]
+  }
+
+  /** What this device holds, before the network is asked. */
+  async function readHeld(): Promise<void> {
+    skew.value = await keptFact('skew').catch(() => null) ?? 0
+    const held = await keptLog(id, person.id).catch(() => null)
+    if (held && base.value.size === 0) {
+      take(held.entries)
+      heardAt.value = held.about.heardAt + skew.value
+    }
+    await readKept().catch(() => { unkept.value = true })
+    if (base.value.size > 0 || own.value.length > 0) loaded.value = true
   }
 
   async function pull(): Promise<void> {
@@ -59,36 +97,39 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
       for (;;) {
         const before = Date.now()
         const page = await fetchEntries(id, base.value.size)
-        skew.value = skewOf(before, page.now)
+        measured(before, page.now)
         const fresh = page.entries.filter(stored => stored.seq > base.value.size)
-        if (fresh.length > 0) {
-          base.value = fold(fresh, base.value)
-          entries.value = [...entries.value, ...fresh]
-        }
+        take(fresh)
         heardAt.value = Date.now()
         failure.value = null
+        alone.value = null
+        await keepHere(fresh)
         if (fresh.length === 0 || base.value.size >= page.size) break
       }
     } catch (error) {
-      const status = (error as { status?: number }).status
-      failure.value = status === 404 ? 'missing' : 'away'
-      if (status === 404 && pending.value.length > 0) failure.value = 'away'
+      const missing = (error as { status?: number }).status === 404
+      await readKept().catch(() => undefined)
+      failure.value = missing && pending.value.length === 0 ? 'missing' : 'away'
+      if (failure.value === 'missing') await forgetLog(id).catch(() => undefined)
+      else alone.value = Date.now() - skew.value
     }
-    kept.value = await keptEntries(id)
+    await readKept().catch(() => undefined)
     loaded.value = true
   }
 
+  async function keepHere(fresh: StoredEntry[]): Promise<void> {
+    const { snapshot, code, phase, planned, size } = base.value
+    if (size === 0) return
+    const about = { id, person: person.id, size, heardAt: Date.now() - skew.value, code, phase, planned, site: snapshot.site.name, controller: snapshot.controller.name, timeZone: snapshot.site.timeZone }
+    await keepLog(about, fresh).then(() => { unkept.value = false }, () => { unkept.value = true })
+    await outbox.collect(id, size).catch(() => undefined)
+  }
+
   async function send(): Promise<Map<string, PushResult>> {
-    if (!signer.key) return new Map()
-    try {
-      const answers = await drain(id, person.id, pushEntries)
-      await drainFiles(id, person.id, async file => await putFile(id, file.sha256, file.blob) ? 'held' : 'later')
-      return answers
-    } catch (error) {
-      if (!(error instanceof Unreachable)) throw error
-      failure.value = 'away'
-      return new Map()
-    }
+    const { answers, trouble: met } = await outbox.drain(id, person.id).catch(() => ({ answers: new Map<string, PushResult>(), trouble: 'failed' as Trouble }))
+    trouble.value = met
+    if (met === null) await drainFiles(id, person.id, putFile).catch(() => undefined)
+    return answers
   }
 
   async function sync(): Promise<Map<string, PushResult>> {
@@ -102,9 +143,11 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
    * `receipt` resolves with the server's answer, or with `kept` when none came in good time.
    */
   async function sign<K extends EntryKind>(kind: K, body: BodyInput<K>): Promise<{ foreseen: Signed, receipt: Promise<Signed> }> {
-    if (!signer.key) throw new Error('This device is not enrolled for signing')
-    const entry = await keepSigned(signer.key, id, kind, body, skew.value, base.value.chain[signer.key.device] ?? null)
-    kept.value = await keptEntries(id)
+    const { key } = signer
+    if (!key) throw new Error('This device is not enrolled for signing')
+    const signing = { person: key.person, device: key.device, sign: (bytes: Uint8Array) => signWith(key, bytes) }
+    const entry = await outbox.keep(signing, id, kind, body, skew.value, base.value.chain[key.device] ?? null)
+    await readKept()
     const doubt = state.value.questioned.find(item => item.entry === entry.id)
     return { foreseen: doubt ? { status: 'questioned', why: doubt.why } : { status: 'accepted', why: [] }, receipt: receiptOf(entry.id) }
   }
@@ -112,8 +155,11 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
   async function receiptOf(entry: string): Promise<Signed> {
     const late = new Promise<null>(resolve => setTimeout(resolve, RECEIPT_MS, null))
     const answer = (await Promise.race([sync(), late]))?.get(entry)
-    if (answer) return { status: answer.status, why: answer.status === 'refused' ? [answer.reason ?? 'Refused'] : answer.why ?? [] }
-    // Another sync may have carried it: then the log has it.
+    if (answer) return { status: answer.status, why: answer.status === 'refused' ? [answer.reason] : answer.why }
+    // Another sync may have carried it: then its receipt is kept here, or the log has it.
+    const found = kept.value.find(item => item.id === entry)
+    if (found?.receipt) return found.receipt
+    if (found?.refusal) return { status: 'refused', why: [found.refusal.reason] }
     const stored = entries.value.find(item => item.entry.id === entry)
     return stored ? { status: stored.standing, why: stored.why } : { status: 'kept', why: [] }
   }
@@ -124,8 +170,8 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
   }
 
   async function dismiss(entry: string): Promise<void> {
-    await dismissRefused(entry)
-    kept.value = await keptEntries(id)
+    await outbox.dismiss(entry)
+    await readKept()
   }
 
   /** Root of the log as known here, for the seal. */
@@ -138,20 +184,30 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
   }
 
   async function open(): Promise<void> {
+    await readHeld()
     if (!signer.loaded) await signer.load(person.id)
     await sync()
     schedule()
   }
 
   const online = () => { void sync() }
-  if (import.meta.client) window.addEventListener('online', online)
+  let deaf: () => void = () => undefined
+  if (import.meta.client) {
+    window.addEventListener('online', online)
+    deaf = onKeptChange((outage) => {
+      if (outage !== id) return
+      // A receipt that another tab or the background brought: the log is asked, so that the entry is seen in its place.
+      void readKept().then(() => { if (own.value.some(item => item.receipt && item.receipt.seq > base.value.size)) void pull() })
+    })
+  }
   onScopeDispose(() => {
     closed = true
     clearTimeout(timer)
+    deaf()
     if (import.meta.client) window.removeEventListener('online', online)
   })
 
-  return { id, person, signer, state, entries, base, pending, refused, loaded, failure, heardAt, skew, measure, open, sync, sign, attach, dismiss, root }
+  return { id, person, signer, state, entries, base, kept: own, pending, refused, checkedHere, loaded, failure, trouble, unkept, heardAt, skew, measure, open, sync, sign, attach, dismiss, root }
 }
 
 export type OutageHandle = ReturnType<typeof useOutage>
@@ -159,15 +215,4 @@ export type OutageHandle = ReturnType<typeof useOutage>
 /** This device's time less the server's, ms, taking the answer to lie midway. @param asked Unix ms by this device */
 function skewOf(asked: number, serverTime: string): number {
   return Math.round((asked + Date.now()) / 2 - Date.parse(serverTime))
-}
-
-/** The state with what is kept here on top, each judged as the server will. */
-function withPending(base: OutageState, pending: KeptEntry[], person: { id: string, role: Role }): OutageState {
-  if (pending.length === 0) return base
-  const state = structuredClone(base)
-  for (const { entry, signature, keptAt } of pending) {
-    const judged = judge(state, entry, person, SURROUNDINGS)
-    applyStored(state, { entry, signature, seq: state.size + 1, receivedAt: keptAt, standing: judged.standing === 'accepted' ? 'accepted' : 'questioned', why: judged.why })
-  }
-  return state
 }

@@ -1,5 +1,6 @@
 import type { KeptFile } from './database'
 import { openKept, STRICT } from './database'
+import { browserLocks } from './locks'
 
 /** Keeps a photo or drawing until the server holds it. */
 export async function keepFile(file: KeptFile): Promise<void> {
@@ -8,15 +9,29 @@ export async function keepFile(file: KeptFile): Promise<void> {
   await tx.done
 }
 
-export async function keptFiles(outage: string, person: string): Promise<KeptFile[]> {
-  return (await (await openKept()).getAllFromIndex('files', 'outage', outage)).filter(file => file.person === person)
+/** Files of a person that the server does not hold yet, of one outage or of all. */
+export async function keptFiles(person: string, outage?: string): Promise<KeptFile[]> {
+  const database = await openKept()
+  const found = outage === undefined ? await database.getAll('files') : await database.getAllFromIndex('files', 'outage', outage)
+  return found.filter(file => file.person === person)
 }
 
-/** Sends what is kept; a file leaves once the server holds it, or has refused it for good. */
-export async function drainFiles(outage: string, person: string, put: (file: KeptFile) => Promise<'held' | 'later'>): Promise<void> {
-  await navigator.locks.request(`holdover-files-${outage}`, async () => {
-    for (const file of await keptFiles(outage, person)) {
-      if (await put(file) === 'held') await (await openKept()).delete('files', file.sha256)
+export type PutFile = (outage: string, sha256: string, blob: Blob) => Promise<'held' | 'later' | { refused: string }>
+
+/** Sends the files of an outage; one leaves once the server holds it. One that it refuses stays, with the reason. */
+export async function drainFiles(outage: string, person: string, put: PutFile): Promise<void> {
+  await browserLocks().run(`holdover-files-${outage}`, async () => {
+    for (const file of await keptFiles(person, outage)) {
+      if (file.refusal !== undefined) continue
+      const answer = await put(outage, file.sha256, file.blob)
+      const database = await openKept()
+      if (answer === 'held') await database.delete('files', file.sha256)
+      else if (answer !== 'later') await database.put('files', { ...file, refusal: answer.refused })
     }
   })
+}
+
+/** The person has seen that the server will not have a file: it leaves this device. */
+export async function dismissFile(sha256: string): Promise<void> {
+  await (await openKept()).delete('files', sha256)
 }

@@ -2,88 +2,163 @@ import type { AnyEntry } from '~~/shared/record/entry'
 import { entryBytes, entryHash, isoTime } from '~~/shared/record/entry'
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
 import { newestSchema, newestVersion } from '~~/shared/record/kinds'
-import { uuidv7 } from '~~/shared/record/uuid'
-import type { KeptEntry, KeptKey } from './database'
-import { chainKey, openKept, STRICT } from './database'
-import { signWith } from './keys'
+import type { ChainEnd, Locks, OutboxEntry, OutboxPorts, PushResult, Refused, Settlement, Signing, Trouble } from './outbox-ports'
+import { isWaiting, Unsent } from './outbox-ports'
 
-/** Answers of the server to one pushed entry. */
-export interface PushResult { id: string | null, status: 'accepted' | 'questioned' | 'refused', code?: number, field?: string | null, reason?: string, recorded?: boolean, why?: string[], seq?: number, receivedAt?: string }
-export type Send = (outage: string, entries: { entry: AnyEntry, signature: string }[]) => Promise<PushResult[]>
+export * from './outbox-ports'
 
-/** The server could not be asked: the network or the database is away. What was signed stays kept. */
-export class Unreachable extends Error {}
+const ENTRIES_PER_PUSH = 50
+/** Entries of one push together, characters of JSON; a single larger entry goes alone. */
+const PUSH_MAX_CHARACTERS = 1_000_000
+/** How often a signature is made anew when another tab took its place in the chain. */
+const TRIES = 20
+/** Outages that are sent side by side, so that a slow one holds nobody up. */
+const SIDE_BY_SIDE = 4
 
-/**
- * Signs an entry and keeps it on this device, in one transaction with its place in the device's
- * chain. Resolves only once it is on the disk.
- * @param known the chain's end as the log says it, for a device that has no chain of its own kept here
- */
-export async function keepSigned<K extends EntryKind>(key: KeptKey, outage: string, kind: K, input: BodyInput<K>, skew: number, known: { n: number, hash: string } | null): Promise<KeptEntry> {
-  const body = newestSchema(kind).parse(input)
-  return navigator.locks.request(`holdover-sign-${outage}`, async () => {
-    const database = await openKept()
-    const end = await database.get('chains', chainKey(key.device, outage)) ?? known
-    const now = Date.now()
-    const entry = { v: newestVersion(kind), id: uuidv7(now), outage, kind, body, at: isoTime(now), skew, by: key.person, device: key.device, n: (end?.n ?? 0) + 1, prev: end?.hash ?? null } as AnyEntry
-    const signature = await signWith(key, entryBytes(entry))
-    const kept: KeptEntry = { id: entry.id, outage, person: key.person, device: key.device, n: entry.n, entry, signature, keptAt: entry.at, refusal: null }
-    const tx = database.transaction(['outbox', 'chains'], 'readwrite', STRICT)
-    await Promise.all([
-      tx.objectStore('outbox').put(kept),
-      tx.objectStore('chains').put({ n: entry.n, hash: entryHash(entry) }, chainKey(key.device, outage)),
-      tx.done,
-    ])
-    return kept
-  })
-}
+const BROKEN = 'it follows an entry that was refused before it took its place in the record'
 
-/** What is kept for an outage, in the order in which it was signed. */
-export async function keptEntries(outage: string): Promise<KeptEntry[]> {
-  const all = await (await openKept()).getAllFromIndex('outbox', 'outage', outage)
-  return all.sort((a, b) => a.keptAt.localeCompare(b.keptAt) || a.n - b.n)
-}
+/** What came of sending one outage: the server's answers by id, and why something still waits. */
+export interface Drained { answers: Map<string, PushResult>, trouble: Trouble | null }
 
-/** Everything of one person that has no receipt yet. */
-export async function allKept(person: string): Promise<KeptEntry[]> {
-  return (await (await openKept()).getAll('outbox')).filter(kept => kept.person === person && kept.refusal === null)
-}
-
-const PER_PUSH = 50
+export type Outbox = ReturnType<typeof createOutbox>
 
 /**
- * Sends what the person has kept for an outage, in order; what has its receipt leaves, what is
- * refused stays until its signer has seen it. Another person's entries are never sent.
- * @returns the server's answers, by id
- * @throws Unreachable
+ * The outbox: entries are signed, kept, sent in order and settled by the server's answers. Pure of
+ * IndexedDB, network and clock, which come as ports. It never relies on the locks: the store's
+ * transactions compare before they write, and a push that is repeated is answered as the first time.
+ *
+ * - An entry is kept together with its place in the device's chain, both or neither.
+ * - It stops waiting by a receipt or by a refusal; a refused one leaves once its signer has seen it,
+ *   one with a receipt once the log kept here holds it.
+ * - Only what `person` signed is sent for `person`; what the server says is another's, stays.
  */
-export async function drain(outage: string, person: string, send: Send): Promise<Map<string, PushResult>> {
-  return navigator.locks.request(`holdover-send-${outage}`, async () => {
-    const answers = new Map<string, PushResult>()
-    for (;;) {
-      const waiting = (await keptEntries(outage)).filter(kept => kept.person === person && kept.refusal === null).slice(0, PER_PUSH)
-      if (waiting.length === 0) return answers
-      const results = await send(outage, waiting.map(({ entry, signature }) => ({ entry, signature })))
-      for (const [index, kept] of waiting.entries()) await settle(kept, results[index], answers)
-    }
-  })
-}
-
-async function settle(kept: KeptEntry, result: PushResult | undefined, answers: Map<string, PushResult>): Promise<void> {
-  if (!result) throw new Unreachable('The server gave no answer to an entry')
-  answers.set(kept.id, result)
-  const database = await openKept()
-  const tx = database.transaction(['outbox', 'chains'], 'readwrite', STRICT)
-  if (result.status !== 'refused') await tx.objectStore('outbox').delete(kept.id)
-  else {
-    await tx.objectStore('outbox').put({ ...kept, refusal: { code: result.code ?? 422, field: result.field ?? null, reason: result.reason ?? 'Refused' } })
-    // Not recorded: the chain goes on from what the log says, which the next signature reads.
-    if (!result.recorded) await tx.objectStore('chains').delete(chainKey(kept.device, kept.outage))
+export function createOutbox({ store, send, locks, now, newId, changed = () => {} }: OutboxPorts) {
+  /**
+   * Signs an entry and keeps it. Resolves only once it is on the disk.
+   * @param known the chain's end as the log says it, for a device that has no chain of its own kept here, or an older one
+   * @throws what the store throws where the storage is full: then nothing is kept
+   */
+  async function keep<K extends EntryKind>(signing: Signing, outage: string, kind: K, input: BodyInput<K>, skew: number, known: ChainEnd | null): Promise<OutboxEntry> {
+    const body = newestSchema(kind).parse(input)
+    const { person, device } = signing
+    return locks.run(`holdover-sign-${outage}`, async () => {
+      for (let tries = 0; tries < TRIES; tries++) {
+        const from = await store.chain(device, outage)
+        const end = known && known.n > (from?.n ?? 0) ? known : from
+        const at = now()
+        const entry = { v: newestVersion(kind), id: newId(at), outage, kind, body, at: isoTime(at), skew, by: person, device, n: (end?.n ?? 0) + 1, prev: end?.hash ?? null } as AnyEntry
+        const signature = await signing.sign(entryBytes(entry))
+        const kept = { id: entry.id, outage, person, device, n: entry.n, entry, signature, keptAt: entry.at, receipt: null, refusal: null }
+        const place = await store.keep(kept, from, { n: entry.n, hash: entryHash(entry) })
+        if (place === null) continue
+        changed(outage)
+        return { ...kept, place }
+      }
+      throw new Error('another tab signs here at the same time; try again')
+    })
   }
-  await tx.done
+
+  /** Sends what a person has waiting in one outage, in order, until nothing waits or something stands in the way. */
+  async function drain(outage: string, person: string): Promise<Drained> {
+    return locks.run(`holdover-send-${outage}`, async () => {
+      const answers = new Map<string, PushResult>()
+      let atOnce = ENTRIES_PER_PUSH
+      for (;;) {
+        const batch = fitting((await store.entries(outage)).filter(kept => kept.person === person && isWaiting(kept)), atOnce)
+        if (batch.length === 0) return { answers, trouble: null }
+        let results: PushResult[]
+        try {
+          results = await send(outage, batch.map(({ entry, signature }) => ({ entry, signature })))
+        } catch (error) {
+          if (!(error instanceof Unsent)) throw error
+          // One entry that the server stumbles over must not hold up those before it.
+          if ((error.trouble === 'failed' || error.trouble === 'too-large') && batch.length > 1) { atOnce = Math.ceil(batch.length / 2); continue }
+          return { answers, trouble: error.trouble }
+        }
+        const { settlement, trouble } = settlementOf(outage, batch, results)
+        await store.settle(settlement)
+        for (const { id, receipt } of settlement.received) answers.set(id, { id, ...receipt })
+        for (const { id, refusal } of settlement.refused) answers.set(id, { id, status: 'refused', ...refusal })
+        if (settlement.received.length + settlement.refused.length > 0) changed(outage)
+        if (trouble) return { answers, trouble }
+      }
+    })
+  }
+
+  /** Sends everything that a person has waiting; the trouble of one outage leaves the others alone. */
+  async function drainAll(person: string): Promise<Map<string, Drained>> {
+    const outages = [...new Set((await store.entries()).filter(kept => kept.person === person && isWaiting(kept)).map(kept => kept.outage))]
+    const drained = new Map<string, Drained>()
+    const next = async (): Promise<void> => {
+      for (let outage = outages.shift(); outage !== undefined; outage = outages.shift()) {
+        drained.set(outage, await drain(outage, person).catch((): Drained => ({ answers: new Map(), trouble: 'failed' })))
+      }
+    }
+    await Promise.all(Array.from({ length: SIDE_BY_SIDE }, next))
+    return drained
+  }
+
+  /** The signer has seen a refusal: it leaves this device. What is not refused stays. */
+  async function dismiss(id: string): Promise<void> {
+    const outage = await store.dismiss(id)
+    if (outage !== null) changed(outage)
+  }
+
+  /** The log kept here holds all entries up to `size`: those with such receipts need be kept no longer. */
+  async function collect(outage: string, size: number): Promise<void> {
+    if (await store.collect(outage, size)) changed(outage)
+  }
+
+  return { keep, drain, drainAll, dismiss, collect, entries: store.entries }
 }
 
-/** The signer has seen a refusal: it leaves this device. */
-export async function dismissRefused(id: string): Promise<void> {
-  await (await openKept()).delete('outbox', id)
+/** The first entries that make one push. */
+function fitting(waiting: OutboxEntry[], atOnce: number): OutboxEntry[] {
+  let characters = 0
+  const end = waiting.findIndex((kept, index) => {
+    characters += JSON.stringify(kept.entry).length
+    return index >= atOnce || (index > 0 && characters > PUSH_MAX_CHARACTERS)
+  })
+  return end < 0 ? waiting : waiting.slice(0, end)
+}
+
+/** What the answers do to the entries that were sent, in their order, up to the first that has none. */
+function settlementOf(outage: string, batch: OutboxEntry[], results: PushResult[]): { settlement: Settlement, trouble: Trouble | null } {
+  const settlement: Settlement = { outage, received: [], refused: [] }
+  const byId = new Map(results.map(result => [result.id, result]))
+  for (const [index, kept] of batch.entries()) {
+    // An entry too malformed to have an id is answered in its place.
+    const result = byId.get(kept.id) ?? (results[index]?.id === null ? results[index] : undefined)
+    if (!result) return { settlement, trouble: 'failed' }
+    if (result.status !== 'refused') {
+      settlement.received.push({ id: kept.id, receipt: { status: result.status, seq: result.seq, receivedAt: result.receivedAt, why: result.why } })
+      continue
+    }
+    if (result.later) return { settlement, trouble: result.later === 'signer' ? 'another-signer' : 'newer' }
+    const { code, field, reason, recorded } = result
+    settlement.refused.push({ id: kept.id, refusal: { code, field, reason, recorded }, after: recorded ? null : brokenBy(kept, code) })
+  }
+  return { settlement, trouble: null }
+}
+
+/**
+ * A refusal that took no place in the chain: what the device signed after it can never fit. The chain
+ * goes on from the entry before, or from the log where the two disagree about it (409).
+ */
+function brokenBy(kept: OutboxEntry, code: number): NonNullable<Refused['after']> {
+  const end = code === 409 || kept.entry.prev === null ? null : { n: kept.n - 1, hash: kept.entry.prev }
+  return { device: kept.device, n: kept.n, end, refusal: { code: 409, field: null, reason: BROKEN, recorded: false } }
+}
+
+/** Locks of one tab, for browsers that have none between tabs: tasks of one name run one after the other. */
+export function tabLocks(): Locks {
+  const tails = new Map<string, Promise<unknown>>()
+  return {
+    run<T>(name: string, task: () => Promise<T>): Promise<T> {
+      const turn = (tails.get(name) ?? Promise.resolve()).then(task, task)
+      const tail = turn.catch(() => undefined).finally(() => { if (tails.get(name) === tail) tails.delete(name) })
+      tails.set(name, tail)
+      return turn
+    },
+  }
 }

@@ -1,6 +1,6 @@
 import type { AnyEntry, StoredEntry } from '~~/shared/record/entry'
-import { Unreachable } from '~/offline/outbox'
-import type { PushResult } from '~/offline/outbox'
+import { Unsent } from '~/offline/outbox-ports'
+import type { PushResult, Trouble } from '~/offline/outbox-ports'
 
 export interface EntriesPage { entries: StoredEntry[], size: number, phase: string, code: string | null, now: string }
 
@@ -11,22 +11,29 @@ export function fetchEntries(outage: string, after: number): Promise<EntriesPage
 
 /**
  * Pushes signed entries; one answer an entry.
- * @throws Unreachable when the network, the server or the database is away, or the session has ended
+ * @throws Unsent with the reason, when there is no answer to the entries
  */
 export async function pushEntries(outage: string, entries: { entry: AnyEntry, signature: string }[]): Promise<PushResult[]> {
-  try {
-    const answer = await $fetch.raw<{ results?: PushResult[] }>(`/api/outages/${outage}/entries`, { method: 'POST', body: { entries }, retry: 0, timeout: 20_000, ignoreResponseError: true })
-    if (answer._data?.results) return answer._data.results
-    throw new Unreachable(answer.status === 401 ? 'Sign in again to send what is kept' : `The server answered ${answer.status}`)
-  } catch (error) {
-    throw error instanceof Unreachable ? error : new Unreachable('The server cannot be reached')
-  }
+  const answer = await $fetch.raw<{ results?: PushResult[] }>(`/api/outages/${outage}/entries`, { method: 'POST', body: { entries }, retry: 0, timeout: 20_000, ignoreResponseError: true }).catch(() => null)
+  if (answer?._data?.results) return answer._data.results
+  throw new Unsent(troubleOf(answer?.status ?? 0))
 }
 
-/** Puts a photo or drawing; false when it must be tried later. */
-export async function putFile(outage: string, sha256: string, blob: Blob): Promise<boolean> {
+function troubleOf(status: number): Trouble {
+  if (status === 401) return 'signed-out'
+  if (status === 404 || status === 403) return 'missing'
+  if (status === 413) return 'too-large'
+  // A gateway or a database that is away is no fault of the entries.
+  return status === 0 || status === 408 || status === 429 || status >= 502 ? 'away' : 'failed'
+}
+
+/** Puts a photo or drawing: held by the server now, to be tried later, or refused for good with the reason. */
+export async function putFile(outage: string, sha256: string, blob: Blob): Promise<'held' | 'later' | { refused: string }> {
   const answer = await fetch(`/api/outages/${outage}/files/${sha256}`, { method: 'PUT', body: blob, headers: { 'content-type': blob.type }, signal: AbortSignal.timeout(60_000) }).catch(() => null)
-  return answer !== null && (answer.ok || answer.status === 422 || answer.status === 413)
+  if (answer?.ok) return 'held'
+  if (answer?.status !== 422 && answer?.status !== 413) return 'later'
+  const { data, message } = await answer.json().catch(() => ({})) as { data?: { reason?: string }, message?: string }
+  return { refused: data?.reason ?? message ?? 'The server will not have it' }
 }
 
 /** The server's time, ISO 8601 UTC. */

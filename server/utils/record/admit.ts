@@ -14,7 +14,7 @@ import { verifyBytes } from './keys'
 /** What becomes of one pushed entry. */
 export type PushResult
   = | { id: string, status: Standing, seq: number, receivedAt: string, why: string[] }
-    | { id: string | null, status: 'refused', code: 403 | 409 | 413 | 422, field: string | null, reason: string, /** its place in the device's chain is taken */ recorded: boolean }
+    | { id: string | null, status: 'refused', code: 403 | 409 | 413 | 422, field: string | null, reason: string, /** its place in the device's chain is taken */ recorded: boolean, /** nothing is decided about it: it is another's to send, or newer than this server, and waits on the device */ later?: 'signer' | 'version' }
 
 export type Refusal = Extract<PushResult, { status: 'refused' }>
 
@@ -40,7 +40,7 @@ export async function admit(db: Queries, person: Person, state: OutageState, ite
   const { signature } = parsed.data
   const wrong = (code: Refusal['code'], reason: string, field: string | null = null): Admitted => ({ done: refuse(entry.id, code, reason, field) })
   if (entry.outage !== state.id) return wrong(422, 'The entry belongs to another outage', `${at}.entry.outage`)
-  if (entry.by !== person.id) return wrong(403, 'An entry is sent by the person who signed it')
+  if (entry.by !== person.id) return { done: { ...refuse(entry.id, 403, 'An entry is sent by the person who signed it'), later: 'signer' } }
   const text = textOf(entry)
   if (text === null) return wrong(422, 'The entry has no canonical form', `${at}.entry`)
   if (Buffer.byteLength(text) > ENTRY_MAX_BYTES) return wrong(413, `An entry takes at most ${ENTRY_MAX_BYTES} bytes`)
@@ -64,7 +64,7 @@ function checkBody(entry: AnyEntry, signature: string, at: string): Admitted {
   if (!isEntryKind(entry.kind) || isServerKind(entry.kind)) return faulty(`Nobody signs an entry of the kind "${String(entry.kind)}"`, `${at}.entry.kind`)
   const schema = schemaOf(entry.kind, entry.v)
   // A newer version than this server knows waits on the phone: nothing is recorded.
-  if (!schema) return { done: refuse(entry.id, 422, `This server does not know version ${entry.v} of "${entry.kind}" yet`, `${at}.entry.v`) }
+  if (!schema) return { done: { ...refuse(entry.id, 422, `This server does not know version ${entry.v} of "${entry.kind}" yet`, `${at}.entry.v`), later: 'version' } }
   if (holdsNul(entry.body)) return faulty('A text holds the character NUL', `${at}.entry.body`)
   const body = schema.safeParse(entry.body)
   if (!body.success) {

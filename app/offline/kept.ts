@@ -1,0 +1,40 @@
+import { uuidv7 } from '~~/shared/record/uuid'
+import { pushEntries } from '~/queries/entries'
+import { browserLocks } from './locks'
+import { createOutbox } from './outbox'
+import type { Outbox } from './outbox'
+import { outboxStore } from './outbox-store'
+
+const CHANNEL = 'holdover-kept'
+type Listener = (outage: string) => void
+
+let outbox: Outbox | null = null
+let channel: BroadcastChannel | null = null
+const listeners = new Set<Listener>()
+
+/** The outbox of this browser: one for all screens of a tab. */
+export function keptOutbox(): Outbox {
+  outbox ??= createOutbox({ store: outboxStore, send: pushEntries, locks: browserLocks(), now: Date.now, newId: uuidv7, changed: tellChanged })
+  return outbox
+}
+
+/** Tells this tab's screens and the other tabs that what is kept of an outage has changed. */
+export function tellChanged(outage: string): void {
+  openChannel()?.postMessage(outage)
+  for (const listener of listeners) listener(outage)
+}
+
+/** Hears of changes by this and every other tab; returns the way to stop. */
+export function onKeptChange(listener: Listener): () => void {
+  openChannel()
+  listeners.add(listener)
+  return () => listeners.delete(listener)
+}
+
+function openChannel(): BroadcastChannel | null {
+  if (channel === null && 'BroadcastChannel' in globalThis) {
+    channel = new BroadcastChannel(CHANNEL)
+    channel.onmessage = ({ data }) => { for (const listener of listeners) listener(String(data)) }
+  }
+  return channel
+}
