@@ -30,6 +30,8 @@ export interface RecordPaper {
   drawings: ReadonlyMap<string, Uint8Array>
   /** hashes of the files that the store holds */
   held: ReadonlySet<string>
+  /** record.json, which the paper carries */
+  record: string
 }
 
 const CHART_HEIGHT = 168
@@ -48,6 +50,8 @@ export function openRecordPdf(paper: RecordPaper, fonts: FontBytes): { doc: PDFK
     font: null as never,
     info: { Title: title, Author: 'Holdover', Subject: `${heading.planned ? heading.work : 'unplanned outage'}, ${heading.site}`, Creator: 'Holdover', Producer: 'Holdover', CreationDate: date, ModDate: date },
   })
+  // Dates of its own, so that the same record makes the same bytes.
+  doc.file(Buffer.from(paper.record), { name: 'record.json', type: 'application/json', description: 'The record with all that it is verified by', creationDate: date, modifiedDate: date, relationship: 'Data' } as never)
   const written = draw(doc, paper, fonts)
   written.catch((error: unknown) => doc.destroy(error instanceof Error ? error : new Error(String(error))))
   return { doc, written }

@@ -3,6 +3,7 @@ export const OPEN_ROUTES: readonly { path: RegExp, why: string }[] = [
   { path: /^\/api\/auth\//, why: 'next-auth\'s own sign-in' },
   { path: /^\/api\/health$/, why: 'asked by the start command and by load balancers' },
   { path: /^\/api\/setup$/, why: 'makes the first administrator; closed once anybody exists' },
+  { path: /^\/api\/server-keys$/, why: 'public keys, for whoever verifies a record without an account' },
 ]
 
 export function isOpenRoute(path: string): boolean {

@@ -1,4 +1,5 @@
 export * from './canonical'
+export * from './checkpoint'
 export * from './checks'
 export * from './entry'
 export * from './fold'

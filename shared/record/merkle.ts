@@ -1,5 +1,5 @@
 import { sha256 } from '@noble/hashes/sha2.js'
-import { bytesToHex, concatBytes } from '@noble/hashes/utils.js'
+import { bytesToHex, concatBytes, hexToBytes } from '@noble/hashes/utils.js'
 import { canonicalBytes } from './canonical'
 
 const LEAF = Uint8Array.of(0)
@@ -25,7 +25,39 @@ export function rootOf(leaves: readonly Uint8Array[]): Uint8Array {
   return nodeHash(rootOf(leaves.slice(0, split)), rootOf(leaves.slice(split)))
 }
 
+/** Hash of a stored entry as a leaf: over its canonical bytes, with all that the server added. */
+export function storedLeaf(stored: unknown): Uint8Array {
+  return leafHash(canonicalBytes(stored))
+}
+
 /** Root of a log as 64 hexadecimal digits; each stored entry is one leaf in its canonical bytes. */
 export function logRoot(stored: readonly unknown[]): string {
-  return bytesToHex(rootOf(stored.map(entry => leafHash(canonicalBytes(entry)))))
+  return bytesToHex(rootOf(stored.map(storedLeaf)))
+}
+
+/**
+ * What a growing tree needs to keep of the leaves it has: how many there are, and the hash of each whole
+ * subtree at its right edge, the largest first, as hexadecimal digits. One subtree a binary digit of `size`.
+ */
+export interface Frontier { size: number, peaks: string[] }
+
+export const EMPTY_FRONTIER: Frontier = { size: 0, peaks: [] }
+
+/** The frontier with one more leaf; a handful of hashes, however large the tree. @param leaf its hash, 32 bytes */
+export function addLeaf({ size, peaks }: Frontier, leaf: Uint8Array): Frontier {
+  const rest = [...peaks]
+  let hash = leaf
+  for (let level = size; level % 2 === 1; level = (level - 1) / 2) hash = nodeHash(hexToBytes(rest.pop()!), hash)
+  return { size: size + 1, peaks: [...rest, bytesToHex(hash)] }
+}
+
+/** The root of all leaves of a frontier, 64 hexadecimal digits: the same as that of the whole tree (RFC 9162, 2.1.1). */
+export function frontierRoot({ peaks }: Frontier): string {
+  if (peaks.length === 0) return bytesToHex(rootOf([]))
+  return bytesToHex(peaks.map(hexToBytes).reduceRight((right, left) => nodeHash(left, right)))
+}
+
+/** The frontier of a log, or of one that goes on from an earlier frontier. */
+export function frontierOf(stored: readonly unknown[], from: Frontier = EMPTY_FRONTIER): Frontier {
+  return stored.reduce<Frontier>((frontier, entry) => addLeaf(frontier, storedLeaf(entry)), from)
 }

@@ -62,8 +62,8 @@ describe('the table', () => {
   it('has one row for each route file, and none for a file that is not there', () => {
     expect(MATRIX.map(row => row.route).sort()).toEqual(routes)
   })
-  it('opens nothing but sign-in, health and set-up to somebody who is not signed in', () => {
-    expect(MATRIX.filter(row => row.expected[0] !== 401).map(row => row.route)).toEqual(['GET /api/health', 'GET /api/setup', 'POST /api/setup', 'ANY /api/auth/[...]'])
+  it('opens nothing but sign-in, health, the server\'s keys and set-up to somebody who is not signed in', () => {
+    expect(MATRIX.filter(row => row.expected[0] !== 401).map(row => row.route)).toEqual(['GET /api/health', 'GET /api/server-keys', 'GET /api/setup', 'POST /api/setup', 'ANY /api/auth/[...]'])
   })
   it('names a 404 for every route with an id in its path', () => {
     expect(MATRIX.filter(row => /\[(?!\.)/.test(row.route) && !row.unknown).map(row => row.route)).toEqual([])

@@ -47,6 +47,7 @@ const OPEN = (status: number): Row['expected'] => [status, status, status, statu
 
 export const MATRIX: Row[] = [
   { route: 'GET /api/health', expected: OPEN(200), path: () => '/api/health' },
+  { route: 'GET /api/server-keys', expected: OPEN(200), path: () => '/api/server-keys' },
   { route: 'GET /api/setup', expected: OPEN(200), path: () => '/api/setup' },
   { route: 'POST /api/setup', expected: OPEN(403), path: () => '/api/setup', body: () => ({ email: 'late@quillfeather.example', name: 'Late', password: 'a long password' }) },
   { route: 'ANY /api/auth/[...]', expected: OPEN(200), path: () => '/api/auth/session' },

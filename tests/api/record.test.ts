@@ -119,7 +119,7 @@ describe('the record as a file', () => {
 
   it('is JSON that folds to what the server holds', async () => {
     const document = await (await get('json')).json() as RecordDocument
-    expect(document).toMatchObject({ format: 'holdover-record', version: 1, outage: { code: 'Q101-0001', phase: 'dark' }, sealed: null })
+    expect(document).toMatchObject({ format: 'holdover-record', version: 2, outage: { code: 'Q101-0001', phase: 'dark' }, sealed: null })
     const { body } = await world.people.auditor.client.send('GET', `/api/outages/${outage}`)
     expect(JSON.parse(JSON.stringify(foldLog(outage, document.entries)))).toEqual(body)
   })

@@ -7,9 +7,10 @@ import { openRecordPdf } from '../../server/pdf/record'
 import { flattened } from '../../server/utils/files/picture'
 import { recordFacts } from '../../server/utils/hold/record-facts'
 import { verifyEntries } from '../../server/utils/record/verify'
-import { sealHolds } from '../../shared/record/record-document'
+import { recordText, sealHolds } from '../../shared/record/record-document'
 import { summaryOf } from '../../shared/record/summary'
 import type { RecordWriter } from './record'
+import { recordOf } from './record'
 
 let fonts: Promise<FontBytes> | null = null
 
@@ -18,11 +19,12 @@ export function testFonts(): Promise<FontBytes> {
   return fonts
 }
 
-export async function paperOf({ state, entries, files }: RecordWriter): Promise<RecordPaper> {
+export async function paperOf(writer: RecordWriter): Promise<RecordPaper> {
+  const { state, entries, files } = writer
   const now = Date.parse(entries.at(-1)!.receivedAt)
   const drawings = new Map<string, Uint8Array>()
   for (const [hash, bytes] of files) drawings.set(hash, await flattened(bytes))
-  return { state, entries, now, summary: summaryOf(state, entries, recordFacts(state, now), now), verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held: new Set(files.keys()) }
+  return { state, entries, now, summary: summaryOf(state, entries, recordFacts(state, now), now), verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held: new Set(files.keys()), record: recordText(recordOf(writer)) }
 }
 
 /** The bytes of a paper. */

@@ -2,6 +2,7 @@
 import { createHash, generateKeyPairSync, sign } from 'node:crypto'
 import type { KeyObject } from 'node:crypto'
 import { canonicalText } from '../../shared/record/canonical'
+import type { Checkpoint } from '../../shared/record/checkpoint'
 import type { BodyInput, EntryKind } from '../../shared/record/kinds'
 import { newestVersion, schemaOf } from '../../shared/record/kinds'
 import { uuidv7 } from '../../shared/record/uuid'
@@ -11,7 +12,7 @@ import { OWN_PASSWORD } from './people'
 
 export interface Envelope { v: number, id: string, outage: string, kind: string, body: unknown, at: string, skew: number, by: string, device: string, n: number, prev: string | null }
 export interface Signed { entry: Envelope, signature: string }
-export interface PushAnswer { results: PushResult[], size: number, phase: string, code: string | null, data?: { field: string | null, reason: string } }
+export interface PushAnswer { results: PushResult[], size: number, phase: string, code: string | null, checkpoint: Checkpoint | null, data?: { field: string | null, reason: string } }
 
 export class Phone {
   readonly id = uuidv7(Date.now())

@@ -1,14 +1,21 @@
 /** Writes records as the server does: entries signed with real Ed25519 keys, judged, numbered and folded. Nothing random. */
 import { handBackAfter, planRefusals } from '../../server/utils/order/for-outage'
+import { rulebookById } from '../../server/utils/holding'
 import { assessCase } from '../../server/utils/holding/for-outage'
 import { privateKeyOf, publicKeyText, signBytes } from '../../server/utils/record/keys'
+import { PROGRAM_VERSION } from '../../shared/program-version'
 import { sha256Hex } from '../../shared/record/canonical'
+import type { Checkpoint } from '../../shared/record/checkpoint'
+import { checkpointStatement, statementBytes } from '../../shared/record/checkpoint'
 import type { AnyEntry, Entry, Standing, StoredEntry } from '../../shared/record/entry'
 import { entryBytes, entryHash, isoTime, SERVER } from '../../shared/record/entry'
 import { applyStored } from '../../shared/record/fold'
 import type { BodyInput, BodyOf, EntryKind, ServerKind } from '../../shared/record/kinds'
 import { newestVersion, schemaOf } from '../../shared/record/kinds'
-import { logRoot } from '../../shared/record/merkle'
+import type { Frontier } from '../../shared/record/merkle'
+import { addLeaf, EMPTY_FRONTIER, frontierRoot, logRoot, storedLeaf } from '../../shared/record/merkle'
+import type { RecordDocument } from '../../shared/record/record-document'
+import { recordDocument } from '../../shared/record/record-document'
 import { judge } from '../../shared/record/rules'
 import type { Surroundings } from '../../shared/record/rules'
 import { watchedCases } from '../../shared/record/select'
@@ -60,11 +67,14 @@ export interface SignOptions {
 export class RecordWriter {
   readonly id: string
   readonly entries: StoredEntry[] = []
+  /** the server's word after each entry */
+  readonly checkpoints: Checkpoint[] = []
   readonly state: OutageState
   /** bytes of photos and drawings that have come, by SHA-256 */
   readonly files = new Map<string, Uint8Array>()
   now: number
   private count = 0
+  private frontier: Frontier = EMPTY_FRONTIER
 
   constructor(name: string, now: number) {
     this.id = uuidFor(`outage ${name}`)
@@ -116,6 +126,9 @@ export class RecordWriter {
   private store(entry: AnyEntry, signer: TestSigner, standing: Standing, why: string[]): void {
     const stored: StoredEntry = { entry, signature: signer.sign(entryBytes(entry)), seq: this.entries.length + 1, receivedAt: isoTime(this.now), standing, why }
     this.entries.push(stored)
+    this.frontier = addLeaf(this.frontier, storedLeaf(stored))
+    const statement = checkpointStatement(stored, frontierRoot(this.frontier), server.device)
+    this.checkpoints.push({ statement, signature: server.sign(statementBytes(statement)) })
     applyStored(this.state, stored)
   }
 
@@ -148,6 +161,12 @@ export class RecordWriter {
       })
     }
   }
+}
+
+/** record.json of a written record. */
+export function recordOf({ state, entries, checkpoints }: RecordWriter): RecordDocument {
+  const { id, version } = state.snapshot.rulebook
+  return recordDocument(state, entries, { program: PROGRAM_VERSION, rulebook: rulebookById(id, version) ?? null, checkpoints })
 }
 
 /** Hash that a log's last entry of a device has, for checks of its chain. */

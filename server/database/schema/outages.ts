@@ -1,6 +1,8 @@
 import { sql } from 'drizzle-orm'
 import { boolean, check, index, integer, jsonb, pgTable, primaryKey, text, timestamp, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
 import { PHASES } from '../../../shared/record/phases'
+import type { Checkpoint } from '../../../shared/record/checkpoint'
+import type { Frontier } from '../../../shared/record/merkle'
 import type { OutageState } from '../../../shared/record/state'
 import { devices, people } from './people'
 import { controllers, sites } from './sites'
@@ -20,6 +22,8 @@ export const outages = pgTable('outages', {
   size: integer().notNull().default(0), // entries so far; the last seq
   state: jsonb().$type<OutageState>().notNull(), // cached fold
   foldVersion: integer().notNull(),
+  frontier: jsonb().$type<Frontier>(), // of the Merkle tree over the log; null: to be worked out from the log
+  checkpoint: jsonb().$type<Checkpoint>(), // the newest; null in a log that has not grown since there are any
   pointsInHand: integer().notNull().default(0),
   startsAt: timestamp({ withTimezone: true }),
   darkAt: timestamp({ withTimezone: true }),
@@ -49,6 +53,7 @@ export const entries = pgTable('entries', {
   receivedAt: timestamp({ withTimezone: true, precision: 3 }).notNull(),
   standing: text({ enum: ['accepted', 'questioned'] }).notNull(),
   why: jsonb().$type<string[]>().notNull().default([]),
+  checkpoint: jsonb().$type<Checkpoint>(), // of the log with this entry as its last; null where it is older than checkpoints
 }, table => [
   primaryKey({ columns: [table.outageId, table.seq] }),
   uniqueIndex('entries_id').on(table.id),

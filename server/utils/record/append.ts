@@ -1,9 +1,11 @@
 import { eq, sql } from 'drizzle-orm'
+import type { Checkpoint } from '../../../shared/record/checkpoint'
 import type { AnyEntry, Entry } from '../../../shared/record/entry'
 import { entryHash } from '../../../shared/record/entry'
+import { frontierRoot } from '../../../shared/record/merkle'
 import { asNewest } from '../../../shared/record/newest'
 import { judge } from '../../../shared/record/rules'
-import { emptyState, FOLD_VERSION } from '../../../shared/record/state'
+import { FOLD_VERSION } from '../../../shared/record/state'
 import { controllers, outages, refusals, sites } from '../../database/schema'
 import type { Person } from '../access'
 import { maySeeSite } from '../access'
@@ -13,14 +15,14 @@ import type { PushResult, Refusal } from './admit'
 import { admit, refuse } from './admit'
 import { openingFault } from './check-opening'
 import type { Draft } from './draft'
-import { addEntry, addServerEntry, saveProjection } from './draft'
+import { addEntry, addServerEntry, draftOf, renameSigner, saveProjection } from './draft'
 import { followUp } from './follow'
-import { readState } from './log'
 import type { OutageRow } from './log'
 import { serverSigner } from './server-signer'
 import { surroundingsOf } from './surroundings'
 
-export interface PushAnswer { results: PushResult[], size: number, phase: string, code: string | null }
+/** One result an entry, and the log as it then stood: its newest checkpoint is the receipt of all that is in it. */
+export interface PushAnswer { results: PushResult[], size: number, phase: string, code: string | null, checkpoint: Checkpoint | null }
 
 /**
  * Takes signed entries into an outage's log, in order, under the lock of its row: each is verified,
@@ -35,7 +37,7 @@ export async function appendEntries(db: Database, person: Person, outageId: stri
     const row = await lockOutage(tx, outageId)
     if (row && !await maySeeSite(person, row.siteId, tx)) notFound('outage')
     if (!row && !isOpening(items[0])) notFound('outage')
-    const draft: Draft = { db: tx, signer, now, state: row ? await readState(tx, row) : emptyState(outageId) }
+    const draft = await draftOf(tx, outageId, row, signer, now)
     const before = draft.state.size
     const results: PushResult[] = []
     for (const [index, item] of items.entries()) results.push(await appendOne(draft, person, item, `entries[${index}]`))
@@ -43,7 +45,7 @@ export async function appendEntries(db: Database, person: Person, outageId: stri
       await followUp(draft)
       await saveProjection(draft)
     }
-    return { results, size: draft.state.size, phase: draft.state.phase, code: draft.state.code }
+    return { results, size: draft.state.size, phase: draft.state.phase, code: draft.state.code, checkpoint: draft.checkpoint }
   })
 }
 
@@ -62,7 +64,8 @@ async function appendOne(draft: Draft, person: Person, item: unknown, at: string
   if ('done' in admitted) return admitted.done
   if ('faulty' in admitted) return recordRefusal(draft, admitted.faulty, admitted.refusal)
   const { entry, signature } = admitted
-  const { standing, why } = judge(draft.state, entry, person, await surroundingsOf(draft.db, draft.state, entry))
+  await renameSigner(draft, person, entry.device)
+  const { standing, why } = judge(draft.state, entry, person, await surroundingsOf(draft.db, draft.state, entry, () => frontierRoot(draft.frontier)))
   // There is no log yet to keep a questioned entry in, nor one that comes before the opening.
   if (draft.state.opened === null && entry.kind !== 'outage-opened') return refuse(entry.id, 409, 'This outage is not open yet', `${at}.entry.outage`)
   if (draft.state.opened === null && standing === 'questioned') return refuse(entry.id, 422, why.join('; '), `${at}.entry.body.lostAt`)

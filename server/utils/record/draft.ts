@@ -1,34 +1,55 @@
 import { eq } from 'drizzle-orm'
+import type { Checkpoint } from '../../../shared/record/checkpoint'
+import { checkpointStatement, statementBytes } from '../../../shared/record/checkpoint'
 import type { AnyEntry, Standing, StoredEntry } from '../../../shared/record/entry'
 import { entryBytes, isoTime, SERVER } from '../../../shared/record/entry'
 import { applyStored } from '../../../shared/record/fold'
 import type { BodyOf, ServerKind } from '../../../shared/record/kinds'
 import { newestVersion } from '../../../shared/record/kinds'
+import type { Frontier } from '../../../shared/record/merkle'
+import { addLeaf, EMPTY_FRONTIER, frontierRoot, storedLeaf } from '../../../shared/record/merkle'
 import { pointsInHand } from '../../../shared/record/select'
 import type { OutageState } from '../../../shared/record/state'
-import { FOLD_VERSION } from '../../../shared/record/state'
+import { emptyState, FOLD_VERSION } from '../../../shared/record/state'
 import { canonicalText, sha256Hex } from '../../../shared/record/canonical'
 import { uuidv7 } from '../../../shared/record/uuid'
 import { devices, entries, outages, people } from '../../database/schema'
+import type { Person } from '../access'
 import type { Queries } from '../database'
 import { signBytes } from './keys'
+import type { OutageRow } from './log'
+import { readFrontier, readState } from './log'
 import type { ServerSigner } from './server-signer'
 
-/** An outage being written under its row's lock: the state goes along with each entry that is added. */
-export interface Draft { db: Queries, state: OutageState, signer: ServerSigner, now: number }
+/** An outage being written under its row's lock: state, frontier and newest checkpoint go along with each entry that is added. */
+export interface Draft { db: Queries, state: OutageState, frontier: Frontier, checkpoint: Checkpoint | null, signer: ServerSigner, now: number }
+
+/** A draft of an outage as its locked row has it; null for one that is still to be opened. */
+export async function draftOf(db: Queries, outageId: string, row: OutageRow | null, signer: ServerSigner, now: number): Promise<Draft> {
+  if (!row) return { db, state: emptyState(outageId), frontier: EMPTY_FRONTIER, checkpoint: null, signer, now }
+  return { db, state: await readState(db, row), frontier: await readFrontier(db, row), checkpoint: row.checkpoint, signer, now }
+}
 
 /** Adds a signed entry to the log and to the state. */
 export async function addEntry(draft: Draft, entry: AnyEntry, signature: string, standing: Standing, why: string[]): Promise<StoredEntry> {
   await nameSigner(draft, entry)
   const stored: StoredEntry = { entry, signature, seq: draft.state.size + 1, receivedAt: isoTime(draft.now), standing, why }
   const signed = canonicalText(entry)
+  draft.frontier = addLeaf(draft.frontier, storedLeaf(stored))
+  draft.checkpoint = signCheckpoint(draft, stored)
   await draft.db.insert(entries).values({
     outageId: entry.outage, seq: stored.seq, id: entry.id, kind: entry.kind,
     personId: entry.by === SERVER ? null : entry.by, deviceId: entry.device, n: entry.n,
-    hash: sha256Hex(signed), signed, signature, receivedAt: new Date(draft.now), standing, why,
+    hash: sha256Hex(signed), signed, signature, receivedAt: new Date(draft.now), standing, why, checkpoint: draft.checkpoint,
   })
   applyStored(draft.state, stored)
   return stored
+}
+
+/** The server's word on the log as it stands with its last entry. */
+function signCheckpoint({ frontier, signer }: Draft, last: StoredEntry): Checkpoint {
+  const statement = checkpointStatement(last, frontierRoot(frontier), signer.device)
+  return { statement, signature: signBytes(statementBytes(statement), signer.key) }
 }
 
 /** Signs and adds an entry of the server's own. */
@@ -47,9 +68,19 @@ async function nameSigner(draft: Draft, entry: AnyEntry): Promise<void> {
   if (!draft.state.signers[signer.device] && !namesDevice(entry, signer.device)) {
     await addServerEntry(draft, 'signer-named', { device: signer.device, deviceName: 'Holdover server', person: SERVER, name: 'Holdover', role: 'server', publicKey: signer.publicKey, enrolledAt: signer.enrolledAt.toISOString() })
   }
-  if (entry.device === signer.device || draft.state.signers[entry.device]) return
-  const [row] = await draft.db.select({ device: devices, person: people }).from(devices).innerJoin(people, eq(people.id, devices.personId)).where(eq(devices.id, entry.device))
-  await addServerEntry(draft, 'signer-named', { device: row!.device.id, deviceName: row!.device.name, person: row!.person.id, name: row!.person.name, role: row!.person.role, publicKey: row!.device.publicKey, enrolledAt: row!.device.enrolledAt.toISOString() })
+  if (entry.device !== signer.device && !draft.state.signers[entry.device]) await nameDevice(draft, entry.device)
+}
+
+/** Names a signer anew whose printed name or role is no longer what the log says, so that each signature stands under what it was signed as. */
+export async function renameSigner(draft: Draft, person: Person, device: string): Promise<void> {
+  const known = draft.state.signers[device]
+  if (known && (known.name !== person.name || known.role !== person.role)) await nameDevice(draft, device)
+}
+
+async function nameDevice(draft: Draft, id: string): Promise<void> {
+  const [row] = await draft.db.select({ device: devices, person: people }).from(devices).innerJoin(people, eq(people.id, devices.personId)).where(eq(devices.id, id))
+  const { device, person } = row!
+  await addServerEntry(draft, 'signer-named', { device: device.id, deviceName: device.name, person: person.id, name: person.name, role: person.role, publicKey: device.publicKey, enrolledAt: device.enrolledAt.toISOString() })
 }
 
 function namesDevice(entry: AnyEntry, device: string): boolean {
@@ -66,6 +97,8 @@ export async function saveProjection(draft: Draft): Promise<void> {
     size: state.size,
     state,
     foldVersion: FOLD_VERSION,
+    frontier: draft.frontier,
+    checkpoint: draft.checkpoint,
     workKind: state.plan.workKind.name,
     pointsInHand: pointsInHand(state).length,
     startsAt: state.plan.startsAt ? new Date(state.plan.startsAt) : null,

@@ -1,29 +1,10 @@
 import { createPrivateKey, createPublicKey, sign, verify } from 'node:crypto'
 import type { KeyObject } from 'node:crypto'
+import { isWeakKey } from '../../../shared/record/weak-keys'
 
 // RFC 8410: the DER wrappings of a raw Ed25519 seed and public key.
 const PRIVATE_PREFIX = Buffer.from('302e020100300506032b657004220420', 'hex')
 const PUBLIC_PREFIX = Buffer.from('302a300506032b6570032100', 'hex')
-
-/**
- * Points of small order: under one of these as a public key a signature fits text that its owner never
- * saw (RFC 8032, 5.1.7 does not exclude them). Little-endian y, the sign bit left out.
- */
-const WEAK_KEYS = new Set([
-  '0000000000000000000000000000000000000000000000000000000000000000',
-  '0100000000000000000000000000000000000000000000000000000000000000',
-  'ecffffffffffffffffffffffffffffffffffffffffffffffffffffffffffff7f',
-  'edffffffffffffffffffffffffffffffffffffffffffffffffffffffffffff7f',
-  'eeffffffffffffffffffffffffffffffffffffffffffffffffffffffffffff7f',
-  '26e8958fc2b227b045c3f489f2ef98f0d5dfac05d3c63339b13802886d53fc05',
-  'c7176a703d4dd84fba3c0b760d10670f2a2053fa2c39ccc64ec7fd7792ac037a',
-])
-
-function isWeak(raw: Buffer): boolean {
-  const y = Buffer.from(raw)
-  y[31]! &= 0x7F
-  return WEAK_KEYS.has(y.toString('hex'))
-}
 
 /** A private key from its 32-byte seed (RFC 8032). */
 export function privateKeyOf(seed: Uint8Array): KeyObject {
@@ -49,7 +30,7 @@ export function verifierOf(publicKey: string): (bytes: Uint8Array, signature: st
   const raw = Buffer.from(publicKey, 'base64url')
   let key: KeyObject | null = null
   try {
-    key = raw.length === 32 && !isWeak(raw) ? createPublicKey({ key: Buffer.concat([PUBLIC_PREFIX, raw]), format: 'der', type: 'spki' }) : null
+    key = raw.length === 32 && !isWeakKey(raw) ? createPublicKey({ key: Buffer.concat([PUBLIC_PREFIX, raw]), format: 'der', type: 'spki' }) : null
   } catch {
     key = null
   }

@@ -1,6 +1,9 @@
-import { and, asc, eq, gt } from 'drizzle-orm'
+import { and, asc, eq, gt, isNotNull } from 'drizzle-orm'
 import type { StoredEntry } from '../../../shared/record/entry'
 import { foldLog } from '../../../shared/record/fold'
+import type { Checkpoint } from '../../../shared/record/checkpoint'
+import type { Frontier } from '../../../shared/record/merkle'
+import { frontierOf } from '../../../shared/record/merkle'
 import type { OutageState } from '../../../shared/record/state'
 import { FOLD_VERSION } from '../../../shared/record/state'
 import type { outages } from '../../database/schema'
@@ -24,4 +27,15 @@ export async function readEntries(db: Queries, outageId: string, after = 0, limi
 /** The folded state of a row: the cached one where its meaning is still the same, else folded anew. */
 export async function readState(db: Queries, row: OutageRow): Promise<OutageState> {
   return row.foldVersion === FOLD_VERSION && row.state.size === row.size ? row.state : foldLog(row.id, await readEntries(db, row.id))
+}
+
+/** The frontier of a row's log: the cached one where it is of the same size, else worked out from the entries. */
+export async function readFrontier(db: Queries, row: OutageRow): Promise<Frontier> {
+  return row.frontier?.size === row.size ? row.frontier : frontierOf(await readEntries(db, row.id))
+}
+
+/** Every checkpoint of an outage, in the order of the log; entries older than checkpoints have none. */
+export async function readCheckpoints(db: Queries, outageId: string): Promise<Checkpoint[]> {
+  const rows = await db.select({ checkpoint: entries.checkpoint }).from(entries).where(and(eq(entries.outageId, outageId), isNotNull(entries.checkpoint))).orderBy(asc(entries.seq))
+  return rows.map(row => row.checkpoint!)
 }

@@ -1,6 +1,8 @@
+import type { Checkpoint } from '../../../shared/record/checkpoint'
 import type { StoredEntry } from '../../../shared/record/entry'
 import { foldLog } from '../../../shared/record/fold'
-import { sealHolds } from '../../../shared/record/record-document'
+import { PROGRAM_VERSION } from '../../../shared/program-version'
+import { recordDocument, recordText, sealHolds } from '../../../shared/record/record-document'
 import type { OutageState } from '../../../shared/record/state'
 import { summaryOf } from '../../../shared/record/summary'
 import type { FontBytes } from '../../pdf/fonts'
@@ -10,15 +12,29 @@ import type { Queries } from '../database'
 import { heldFiles } from '../files/keep'
 import { flattened } from '../files/picture'
 import { fileStorage, readBytes } from '../files/storage'
+import { rulebookById } from '../holding'
 import { recordFacts } from '../hold/record-facts'
 import type { OutageRow } from './log'
-import { readEntries } from './log'
+import { readCheckpoints, readEntries } from './log'
 import { verifyEntries } from './verify'
 
 /** A record read from its log alone: no cached fold stands between the entries and the reader. */
 export async function readRecord(db: Queries, outage: OutageRow): Promise<{ entries: StoredEntry[], state: OutageState }> {
   const entries = await readEntries(db, outage.id)
   return { entries, state: foldLog(outage.id, entries) }
+}
+
+/** record.json: the log with all that a verifier needs. */
+export async function readRecordText(db: Queries, outage: OutageRow): Promise<string> {
+  const { entries, state } = await readRecord(db, outage)
+  return textOf(state, entries, await readCheckpoints(db, outage.id))
+}
+
+function textOf(state: OutageState, entries: StoredEntry[], checkpoints: Checkpoint[]): string {
+  const { id, version } = state.snapshot.rulebook
+  // An entry may have come between the two readings.
+  const within = checkpoints.filter(({ statement }) => statement.size <= entries.length)
+  return recordText(recordDocument(state, entries, { program: PROGRAM_VERSION, rulebook: rulebookById(id, version) ?? null, checkpoints: within }))
 }
 
 /** All that the PDF is made from. Its date is that of the last entry, so that the same record makes the same bytes. */
@@ -32,7 +48,7 @@ export async function readPaper(db: Queries, outage: OutageRow): Promise<RecordP
     const bytes = stands && held.has(drawing) ? await readBytes(fileStorage(), drawing) : null
     if (bytes) drawings.set(drawing, await flattened(bytes))
   }
-  return { state, entries, summary, now, verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held }
+  return { state, entries, summary, now, verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held, record: textOf(state, entries, await readCheckpoints(db, outage.id)) }
 }
 
 let fonts: Promise<FontBytes> | null = null

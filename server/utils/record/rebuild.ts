@@ -1,9 +1,10 @@
 import { asc, gt } from 'drizzle-orm'
 import { foldLog } from '../../../shared/record/fold'
+import { frontierOf } from '../../../shared/record/merkle'
 import { outages } from '../../database/schema'
 import type { Database } from '../database'
 import { saveProjection } from './draft'
-import { readEntries } from './log'
+import { readCheckpoints, readEntries } from './log'
 import { serverSigner } from './server-signer'
 
 /**
@@ -20,9 +21,10 @@ export async function rebuildProjections(db: Database): Promise<{ count: number,
     after = row.id
     count++
     await db.transaction(async (tx) => {
-      const state = foldLog(row.id, await readEntries(tx, row.id))
+      const log = await readEntries(tx, row.id)
+      const state = foldLog(row.id, log)
       if (row.size !== state.size || row.phase !== state.phase) differed.push(row.code)
-      await saveProjection({ db: tx, state, signer, now: row.updatedAt.getTime() })
+      await saveProjection({ db: tx, state, frontier: frontierOf(log), checkpoint: (await readCheckpoints(tx, row.id)).at(-1) ?? null, signer, now: row.updatedAt.getTime() })
     })
   }
 }

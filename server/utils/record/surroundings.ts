@@ -1,15 +1,13 @@
 import { eq } from 'drizzle-orm'
 import type { AnyEntry } from '../../../shared/record/entry'
-import { logRoot } from '../../../shared/record/merkle'
 import type { Surroundings } from '../../../shared/record/rules'
 import type { OutageState } from '../../../shared/record/state'
 import { files } from '../../database/schema'
 import type { Queries } from '../database'
 import { handBackAfter, planRefusals } from '../order/for-outage'
-import { readEntries } from './log'
 
-/** What the engines and the store say about an entry that is being judged. */
-export async function surroundingsOf(db: Queries, state: OutageState, entry: AnyEntry): Promise<Surroundings> {
+/** What the engines and the store say about an entry that is being judged. @param root of the log so far, hexadecimal */
+export async function surroundingsOf(db: Queries, state: OutageState, entry: AnyEntry, root: () => string): Promise<Surroundings> {
   const sealing = entry.kind === 'sealed'
   const held = sealing ? await db.select({ sha256: files.sha256 }).from(files).where(eq(files.outageId, state.id)) : []
   const known = new Set(held.map(file => file.sha256))
@@ -18,6 +16,6 @@ export async function surroundingsOf(db: Queries, state: OutageState, entry: Any
     handBackAfter,
     margin: () => [],
     filesAwaited: of => of.files.filter(file => !known.has(file)),
-    root: sealing ? logRoot(await readEntries(db, state.id)) : null,
+    root: sealing ? root() : null,
   }
 }

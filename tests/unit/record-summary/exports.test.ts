@@ -4,7 +4,12 @@ import canonicalize from 'canonicalize'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { foldLog } from '../../../shared/record/fold'
 import { csvCell, localTime, readingsCsv } from '../../../shared/record/readings-csv'
-import { recordDocument } from '../../../shared/record/record-document'
+import { logRoot } from '../../../shared/record/merkle'
+import { recordText } from '../../../shared/record/record-document'
+import { FOLD_VERSION } from '../../../shared/record/state'
+import { PROGRAM_VERSION } from '../../../shared/program-version'
+import { rulebookById } from '../../../server/utils/holding'
+import { recordOf } from '../../support/record'
 import type { RecordDocument } from '../../../shared/record/record-document'
 import { busyRecord } from '../../support/busy'
 import { buildRecord } from '../../support/scenario'
@@ -47,7 +52,7 @@ describe('record.csv', () => {
 
 describe('record.json', () => {
   let document: RecordDocument
-  beforeAll(() => { document = JSON.parse(JSON.stringify(recordDocument(writer.state, writer.entries))) as RecordDocument })
+  beforeAll(() => { document = JSON.parse(recordText(recordOf(writer))) as RecordDocument })
 
   it('folds to the same state when read back', () => {
     expect(document.format).toBe('holdover-record')
@@ -74,9 +79,24 @@ describe('record.json', () => {
     expect(root(leaves).toString('hex')).toBe(document.root)
   })
 
+  it('is a document of version 2 with the rulebook, the refusals, and the owner and enrolment of each key', () => {
+    expect(document.version).toBe(2)
+    expect(document.versions).toEqual({ program: PROGRAM_VERSION, fold: FOLD_VERSION })
+    expect(document.rulebook.data).toEqual(JSON.parse(JSON.stringify(rulebookById(document.rulebook.id, document.rulebook.version))))
+    expect(document.refusals.map(({ seq, n }) => [seq, n])).toEqual(writer.state.refusals.map(({ seq, n }) => [seq, n]))
+    expect(document.signers.map(signer => signer.device)).toEqual(Object.keys(writer.state.signers))
+    for (const { seq, enrolledAt } of document.signers) expect(Date.parse(enrolledAt)).toBeLessThan(Date.parse(document.entries[seq - 1]!.receivedAt))
+    expect(document.checkpoints.map(({ statement }) => [statement.size, statement.time])).toEqual(document.entries.map(({ seq, receivedAt }) => [seq, receivedAt]))
+  })
+
+  it('has each entry and checkpoint on a line of its own, in canonical JSON', () => {
+    const lines = new Set(recordText(recordOf(writer)).split('\n').map(line => line.replace(/,$/, '')))
+    for (const item of [...document.entries, ...document.checkpoints]) expect(lines.has(canonicalize(item)!)).toBe(true)
+  })
+
   it('says what was sealed', () => {
     const sealed = buildRecord()
     const seal = sealed.entries.at(-1)!
-    expect(recordDocument(sealed.state, sealed.entries).sealed).toEqual({ seq: seal.seq, at: seal.receivedAt, by: seal.entry.by, size: seal.seq - 1, root: recordDocument(sealed.state, sealed.entries.slice(0, -1)).root })
+    expect(recordOf(sealed).sealed).toEqual({ seq: seal.seq, at: seal.receivedAt, by: seal.entry.by, size: seal.seq - 1, root: logRoot(sealed.entries.slice(0, -1)) })
   })
 })

@@ -7,10 +7,10 @@ import { readEntries } from '~~/server/utils/record/log'
 const PAGE = 500
 const query = z.object({ after: z.coerce.number().int().min(0).default(0) })
 
-/** Entries after a seq, at most 500; `size` says how many there are in all. */
+/** Entries after a seq, at most 500; `size` says how many there are in all, `checkpoint` is the newest. */
 export default defineEventHandler(async (event) => {
   const { outage } = await requireOutage(event)
   const { after } = readQueryAs(event, query)
   const entries = await readEntries(useDatabase(), outage.id, after, PAGE)
-  return { entries, size: Math.max(outage.size, entries.at(-1)?.seq ?? 0), phase: outage.phase, code: outage.code, now: new Date().toISOString() }
+  return { entries, size: Math.max(outage.size, entries.at(-1)?.seq ?? 0), phase: outage.phase, code: outage.code, checkpoint: outage.checkpoint, now: new Date().toISOString() }
 })
