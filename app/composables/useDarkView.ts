@@ -2,6 +2,7 @@ import { computed } from 'vue'
 import type { DiscCase } from '~~/shared/charts/disc'
 import { celsius, firstDarkAt, inUnit, openDark, productReadings } from '~~/shared/record/select'
 import { forecastCases } from '~~/server/utils/hold/for-outage'
+import { latestTurnBack } from '~~/server/utils/hold/turn-back'
 
 const MINUTE = 60_000
 
@@ -28,7 +29,11 @@ export function useDarkView() {
       last: last ? inUnit(celsius(last.value, last.unit), unit.value) : null,
       limit: inUnit(celsius(known.limit.value, known.limit.unit), unit.value),
       usual,
+      toward: forecast.toward,
       holdMinutes: forecast.holdMinutes,
+      likelyMinutes: forecast.likelyMinutes,
+      fitted: forecast.readings,
+      held: forecast.held,
       dueAt: forecast.dueAt,
       openAct: item.openAct !== null,
       verdict: item.verdict?.verdict ?? null,
@@ -38,14 +43,14 @@ export function useDarkView() {
     }
   }))
 
-  const shortest = computed(() => rows.value.find(row => row.holdMinutes !== null) ?? null)
+  const shortest = computed(() => rows.value.find(row => row.toward === 'limit' && row.holdMinutes !== null) ?? null)
   const discCases = computed<DiscCase[]>(() => rows.value.slice(0, PENS).map(row => ({ id: row.id, name: row.name, shortest: row.id === shortest.value?.id, usual: row.usual, limit: row.limit, readings: row.readings, forecast: row.forecast })))
   const due = computed(() => rows.value.filter(row => row.dueAt <= now.value + 2 * MINUTE))
   const nextDue = computed(() => rows.value.length === 0 ? null : Math.min(...rows.value.map(row => row.dueAt)))
   const shortestAt = computed(() => shortest.value?.holdMinutes == null ? null : elapsed.value + shortest.value.holdMinutes)
-  const turnBackAt = computed(() => shortestAt.value === null ? null : shortestAt.value - state.value.plan.duration.rollBack19in20)
+  const turnBack = computed(() => latestTurnBack(state.value, forecasts.value, Math.max(coarse.value, from.value)))
 
-  return { unit, from, elapsed, rows, shortest, discCases, due, nextDue, shortestAt, turnBackAt }
+  return { unit, from, elapsed, rows, shortest, discCases, due, nextDue, shortestAt, turnBack }
 }
 
 /** More pens than this no eye tells apart; the list below has them all. */

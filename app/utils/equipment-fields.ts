@@ -50,6 +50,7 @@ const onThoseRacks = (scope: FieldScope) => {
   const racks = new Set(racksOf(scope).filter(rack => !scope.values.rackId || rack.id === scope.values.rackId).map(rack => rack.id))
   return <T extends { rackId: string }>(item: T) => racks.has(item.rackId)
 }
+const isCarbonDioxide = ({ values }: FieldScope) => values.refrigerant === 'R-744'
 const classUnit = ({ site }: FieldScope) => `°${rulebookById(site?.rulebook ?? '')?.unit ?? 'C'}`
 
 export const SITE_FIELDS: FieldSpec[] = [
@@ -82,6 +83,8 @@ export const RESOURCE_FIELDS: Record<ResourceName, FieldSpec[]> = {
     nameField,
     { name: 'refrigerant', label: 'Refrigerant', kind: 'select', options: () => REFRIGERANT_IDS.map(value => ({ value, label: value })), half: true },
     { name: 'highCutOutPsig', label: 'High pressure cut-out', kind: 'number', quantity: 'pressure', optional: true, half: true },
+    { name: 'warmestC', label: 'Warmest place where liquid may stand', kind: 'number', quantity: 'temperature', optional: true, hint: 'On a hot day, with everything off. Decides the standstill pressure.', shown: isCarbonDioxide },
+    { name: 'reliefValves', label: 'Relief valves', kind: 'lines', optional: true, hint: 'One a line: tag and setting in bar gauge, as RV-1 40.', shown: isCarbonDioxide },
   ],
   'suction-groups': [
     rackField,

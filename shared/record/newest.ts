@@ -12,12 +12,20 @@ type Upgrades = { [K in EntryKind]?: Record<number, (body: Body) => Body> }
  * stands beside it, with its step here, so that every record stays readable.
  */
 export const UPGRADES: Upgrades = {
-  // Before version 2 no site judged otherwise than its rulebook, but for single cases, and a check lasted 90 days everywhere.
-  'outage-opened': { 1: body => ({ ...body, snapshot: withSite(body.snapshot as { site: object }, { holding: PLAIN_HOLDING, instrumentCheckDays: INSTRUMENT_CHECK_DAYS }) }) },
+  // Before version 2 no site judged otherwise than its rulebook, but for single cases, and a check lasted 90 days everywhere;
+  // no time constant came from sealed outages, and no relief valve was known.
+  'outage-opened': { 1: body => ({ ...body, snapshot: snapshotOfV1(body.snapshot as SnapshotV1) }) },
 }
 
-function withSite(snapshot: { site: object }, more: object): object {
-  return { ...snapshot, site: { ...snapshot.site, ...more } }
+interface SnapshotV1 { site: object, racks: object[], cases: object[] }
+
+function snapshotOfV1(snapshot: SnapshotV1): object {
+  return {
+    ...snapshot,
+    site: { ...snapshot.site, holding: PLAIN_HOLDING, instrumentCheckDays: INSTRUMENT_CHECK_DAYS },
+    racks: snapshot.racks.map(rack => ({ ...rack, warmestC: null, reliefValves: [] })),
+    cases: snapshot.cases.map(item => ({ ...item, tauFrom: 0 })),
+  }
 }
 
 /**

@@ -130,6 +130,23 @@ export function overLimit(state: OutageState, caseId: string, reading: { value: 
 /** A reading that came late; `seq` null where it never came. */
 export interface LateReading { caseId: string, seq: number | null, minutes: number }
 
+/** What the fit to the readings before it foretold for the time of a reading without control, and what came. */
+export interface ForecastLine {
+  caseId: string
+  seq: number
+  /** Unix ms */
+  at: number
+  /** readings since control was lost to which the forecast was fitted */
+  readings: number
+  /** in the site's unit */
+  foretold: number
+  came: number
+  /** came less foretold, K */
+  errorK: number
+  /** found over the limit before the careful forecast had it there */
+  early: boolean
+}
+
 export interface VerdictLine extends Line { caseId: string, name: string, verdict: Verdict, deadline: number | null, clause: string, source: string, act: string | null, minutesAbove: number }
 
 export function verdictLines(state: OutageState, entries: readonly StoredEntry[]): VerdictLine[] {

@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { CASE_KINDS } from '../schemas/case-kinds'
-import { DEFROST_KINDS, defrostScheduleSchema, INSTRUMENT_KINDS, ON_LOSS, PAPERS, PRESSURE_UNITS, quietHoursSchema, siteHoldingSchema, STAGES, TEMPERATURE_UNITS } from '../schemas/equipment'
+import { DEFROST_KINDS, defrostScheduleSchema, INSTRUMENT_KINDS, ON_LOSS, PAPERS, PRESSURE_UNITS, quietHoursSchema, RELIEF_VALVES_MAX, siteHoldingSchema, STAGES, TEMPERATURE_UNITS } from '../schemas/equipment'
 import { handPositionSchema, POINT_KINDS } from '../schemas/point-kinds'
 import { tag, uuid } from './kinds/common'
 
@@ -27,7 +27,7 @@ export const snapshotPointSchema = z.object({
   throughOff: z.boolean(),
 }).strict()
 
-export const snapshotCaseSchema = z.object({
+const caseShape = {
   id: uuid,
   name: text,
   kind: z.enum(CASE_KINDS),
@@ -39,7 +39,28 @@ export const snapshotCaseSchema = z.object({
   tauIsOwn: z.boolean(), // false: the kind's default, an estimate
   runsAlone: z.boolean(),
   circuitId: uuid.nullable(),
+}
+
+export const snapshotCaseSchema = z.object({
+  ...caseShape,
+  tauFrom: z.number().int().min(0), // outages whose readings its own time constant comes from; 0: entered, or an estimate
 }).strict()
+
+const rackShape = { id: uuid, name: text, refrigerant: text, highCutOutPsig: z.number().nullable() }
+
+const racksAndCases = {
+  racks: z.array(z.object({
+    ...rackShape,
+    warmestC: z.number().nullable(), // the warmest place where liquid may stand
+    reliefValves: z.array(z.object({ tag: text, barGauge: z.number().positive() }).strict()).max(RELIEF_VALVES_MAX),
+  }).strict()).max(50),
+  cases: z.array(snapshotCaseSchema).max(400),
+}
+
+const racksAndCasesV1 = {
+  racks: z.array(z.object(rackShape).strict()).max(50),
+  cases: z.array(z.object(caseShape).strict()).max(400),
+}
 
 const siteShape = {
   id: uuid,
@@ -60,7 +81,6 @@ const siteShape = {
 const equipmentShape = {
   controller: z.object({ id: uuid, name: text, place: text, panelVolts: z.number().nullable() }).strict(),
   rulebook: z.object({ id: text, version: text, name: text }).strict(),
-  racks: z.array(z.object({ id: uuid, name: text, refrigerant: text, highCutOutPsig: z.number().nullable() }).strict()).max(50),
   suctionGroups: z.array(z.object({
     id: uuid,
     rackId: uuid,
@@ -79,13 +99,12 @@ const equipmentShape = {
     durationMin: z.number(),
     dripMin: z.number(),
   }).strict()).max(400),
-  cases: z.array(snapshotCaseSchema).max(400),
   points: z.array(snapshotPointSchema).max(2000),
   instruments: z.array(z.object({ id: uuid, name: text, kind: z.enum(INSTRUMENT_KINDS), accuracyC: z.number(), lastCheckOn: text.nullable() }).strict()).max(100),
 }
 
-/** The equipment as openings of version 1 hold it: without the site's own way of judging. */
-export const snapshotSchemaV1 = z.object({ site: z.object(siteShape).strict(), ...equipmentShape }).strict()
+/** The equipment as openings of version 1 hold it: without the site's own way of judging, and without what sealed outages taught. */
+export const snapshotSchemaV1 = z.object({ site: z.object(siteShape).strict(), ...equipmentShape, ...racksAndCasesV1 }).strict()
 
 /**
  * The equipment as it stood when the outage was opened: the record needs nothing else to be read.
@@ -99,6 +118,7 @@ export const snapshotSchema = z.object({
     instrumentCheckDays: z.number().int().positive(), // a last check that is older is pointed out
   }).strict(),
   ...equipmentShape,
+  ...racksAndCases,
 }).strict()
 
 export type Snapshot = z.output<typeof snapshotSchema>

@@ -2,7 +2,7 @@ import type { Role } from '../schemas/people'
 import type { StoredEntry } from './entry'
 import { ACT_WORDS } from './kinds/rounds'
 import { SEAL_STATEMENT, SUBMIT_STATEMENT } from './kinds/review'
-import type { CheckLine, CorrectionLine, LateReading, Line, PointLine, RoundLine, VerdictLine } from './record-lines'
+import type { CheckLine, CorrectionLine, ForecastLine, LateReading, Line, PointLine, RoundLine, VerdictLine } from './record-lines'
 import { acceptedOf, checkLines, correctionLines, lineOf, lineOfMark, overLimit, pointLines, roundLines, verdictLines } from './record-lines'
 import { caseName, darkMs, nameOf, pointsInHand, productReadings, proofsDue, watchedCases } from './select'
 import type { OutageState } from './state'
@@ -14,6 +14,8 @@ export const CLOCK_DIFFERENCE_MS = 5 * 60_000
 export interface RecordFacts {
   /** readings that came later than they were due by the forecast */
   late: readonly LateReading[]
+  /** every reading without control beside what was foretold for its time */
+  forecasts: readonly ForecastLine[]
   /** where the limits of this record are written, each once */
   limits: readonly string[]
 }

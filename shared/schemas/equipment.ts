@@ -95,11 +95,17 @@ export const controllerSchema = z.object({
   notes: words,
 })
 
+/** A relief valve as it is written: its tag, then its setting in bar gauge. */
+export const RELIEF_VALVE = /^(\S.*?)\s+(\d{1,3}(?:[.,]\d+)?)(?:\s*bar)?$/
+export const RELIEF_VALVES_MAX = 8
+
 export const rackSchema = z.object({
   controllerId: id,
   name: short('a name'),
   refrigerant: short('a refrigerant'),
   highCutOutPsig: optionalNumber(0, 2000),
+  warmestC: optionalNumber(-60, 60), // the warmest place where liquid may stand with everything off
+  reliefValves: z.array(z.string().trim().regex(RELIEF_VALVE, 'A tag and its setting in bar gauge, as "RV-1 40"').max(SHORT_MAX)).max(RELIEF_VALVES_MAX).default([]),
 })
 
 export const suctionGroupSchema = z.object({

@@ -74,12 +74,12 @@ export function quarryStreet(site: Scenario['site'] = {}, rulebookId = 'us-food-
   const { id, version, name } = rulebookById(rulebookId)!
   const rulebook = { id, version, name }
   const foodClass = id === 'uk-england-2013' ? 'chilled' : 'tcs'
-  const cases = CASES.map(([name, kind, on, usualC]): SnapshotCase => ({ id: caseId(name), name, kind, foodClass, usualC, limit: limitFor(rulebook.id, foodClass), stricter: false, tauHours: 6, tauIsOwn: false, runsAlone: name === 'Juice doors', circuitId: circuit(on) }))
+  const cases = CASES.map(([name, kind, on, usualC]): SnapshotCase => ({ id: caseId(name), name, kind, foodClass, usualC, limit: limitFor(rulebook.id, foodClass), stricter: false, tauHours: 6, tauIsOwn: false, tauFrom: 0, runsAlone: name === 'Juice doors', circuitId: circuit(on) }))
   return {
     site: { id: uuidFor('site Quarry Street'), code: 'Q027', name: 'Quarry Street', address: '27 Quarry Street', timeZone: 'America/Chicago', temperatureUnit: 'F', pressureUnit: 'psig', altitudeM: 180, intervalMinutes: 10, paper: 'Letter', contactName: 'Piet Harrow', contactPhone: '555 0127', quietHours: [], holding: PLAIN_HOLDING, instrumentCheckDays: 90, ...site },
     controller: { id: uuidFor('controller A'), name: 'rack A controller', place: 'Machine room', panelVolts: 460 },
     rulebook,
-    racks: [{ id: RACK, name: 'Rack A', refrigerant: 'R-448A', highCutOutPsig: 395 }],
+    racks: [{ id: RACK, name: 'Rack A', refrigerant: 'R-448A', highCutOutPsig: 395, warmestC: null, reliefValves: [] }],
     suctionGroups: [{ id: GROUP, rackId: RACK, name: 'medium temperature', stage: 'medium', targetSuctionPsig: 48, lowCutOutPsig: 20 }],
     circuits: ['A1', 'A2', 'A3'].map(name => ({ id: circuit(name), rackId: RACK, suctionGroupId: GROUP, name, defrostKind: 'electric', defrosts: null, durationMin: 20, dripMin: 5 })),
     cases,

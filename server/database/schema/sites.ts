@@ -58,6 +58,8 @@ export const racks = pgTable('racks', {
   name: text().notNull(),
   refrigerant: text().notNull(),
   highCutOutPsig: doublePrecision(),
+  warmestC: doublePrecision(), // the warmest place where liquid may stand, for carbon dioxide at a standstill
+  reliefValves: text().array().notNull().default([]), // tag and setting in bar gauge
   ...stamps(),
 }, table => [
   uniqueIndex('racks_name').on(table.controllerId, table.name),

@@ -28,7 +28,7 @@ export const abbotGreen: SiteSeed = {
   controllers: [{
     controller: { name: 'Rack controller', place: 'Roof plant room, rack panel', panelVolts: 400, notes: 'Carbon dioxide: standstill pressure rises with everything off.' },
     racks: [{
-      rack: { name: 'Rack A', refrigerant: 'R-744', highCutOutPsig: 1595 },
+      rack: { name: 'Rack A', refrigerant: 'R-744', highCutOutPsig: 1595, warmestC: 34, reliefValves: ['RV-2 flash tank 60', 'RV-1 high side 120'] },
       suctionGroups: [
         { name: 'Medium stage', stage: 'medium', targetSuctionPsig: 414, lowCutOutPsig: 348 },
         { name: 'Low stage', stage: 'low', targetSuctionPsig: 193, lowCutOutPsig: 145 },

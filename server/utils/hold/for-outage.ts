@@ -1,113 +1,128 @@
 /** Hold times of the cases of a real outage, from its readings: estimates, shown as such. */
 import { isFrozenKind, isOpenKind } from '~~/shared/schemas/case-kinds'
-import { isoTime } from '~~/shared/record/entry'
-import { celsius, firstDarkAt, productReadings, watchedCases } from '~~/shared/record/select'
-import type { OutageState } from '~~/shared/record/state'
+import { watchedCases } from '~~/shared/record/select'
+import type { DarkInterval, OutageState } from '~~/shared/record/state'
 import type { SnapshotCase } from '~~/shared/record/snapshot'
-import { DEFAULT_TAU_HOURS, holdInputOf } from './defaults'
-import { fitHold } from './fit'
+import { chilledAt } from './chilled'
+import { holdInputOf } from './defaults'
+import { darkAt, fitAt, limitC, MINUTE, SHOP_AIR_C, takenOf } from './evidence'
+import type { RunningFit, Taken } from './evidence'
+import { heldCase, isHeldOn } from './held-case'
+import type { HeldCase } from './held-case'
 import { holdTime } from './hold-time'
-import { roundDueMinutes, SHORTEST_MINUTES } from './rounds'
+import { LOW_MARK_C } from './held-on'
+import { roundDueMinutes } from './rounds'
 
-/** Air around the product of a shop whose air nobody measured, °C: an estimate. */
-export const SHOP_AIR_C = 24
-const MINUTE = 60_000
+export { SHOP_AIR_C } from './evidence'
+
+/** A curve is drawn this far where it meets no limit, minutes. */
+const LONGEST_CURVE_MINUTES = 600
+const CURVE_STEPS = 40
+/** A case held on by hand that has come this far up all the same is not held, K. */
+const WARMING_K = 0.5
 
 export interface CaseForecast {
   caseId: string
-  /** minutes from `now` to the limit, the careful end; null: never reached */
+  /** what the minutes count to: its limit, or the low mark of a case held on by hand */
+  toward: 'limit' | 'low-mark'
+  /** minutes from `now`, the careful end; null: never reached */
   holdMinutes: number | null
-  /** minutes from `now` at which the likely course meets the limit */
+  /** minutes from `now` at which the likely course meets it */
   likelyMinutes: number | null
+  /** fitted to this many readings since control was lost; 0: the time constant and the start alone */
+  readings: number
   /** when it must be read again, Unix ms */
   dueAt: number
-  /** likely course from `now`, °C */
+  /** likely course from the last reading on, °C */
   curve: { at: number, c: number }[]
-}
-
-function limitC(known: SnapshotCase): number {
-  return celsius(known.limit.value, known.limit.unit)
+  /** where it is held on by hand: its low mark and its coil */
+  held: HeldCase | null
 }
 
 /** Hold of a case with nothing running, from a temperature, minutes; null: the limit is never reached. */
 export function bareHold(known: SnapshotCase, startC: number): number | null {
-  return curveOf(known, startC).minutes
+  return bareCourse(known, startC).minutes
 }
 
-function curveOf(known: SnapshotCase, startC: number, tauHours = known.tauHours) {
+function bareCourse(known: SnapshotCase, startC: number) {
   const frozenStart = isFrozenKind(known.kind) ? Math.max(startC, -40) : startC
-  return holdTime(holdInputOf(known.kind, { startC: frozenStart, ambientC: SHOP_AIR_C, limitC: limitC(known), tauHours }))
+  return holdTime(holdInputOf(known.kind, { startC: frozenStart, ambientC: SHOP_AIR_C, limitC: limitC(known), tauHours: known.tauHours }))
+}
+
+/** Minutes until a case is to be read again. @param holdLeftMinutes at its last reading; null: never reached */
+export function dueMinutes(state: OutageState, { kind }: SnapshotCase, holdLeftMinutes: number | null): number {
+  return roundDueMinutes({ holdLeftMinutes, open: isOpenKind(kind), slow: kind.startsWith('walk-in') || (isFrozenKind(kind) && !isOpenKind(kind)), intervalMinutes: state.snapshot.site.intervalMinutes })
 }
 
 /**
- * Where a case stands at a moment: fitted to its readings since control was lost, or, before the
- * second one, from its time constant alone.
+ * Where a case stands at a moment. Without control: fitted to its readings since then, the careful
+ * end of the fit. With control, the hold that it would have from its last temperature.
  * @param now Unix ms
  */
 export function forecastCase(state: OutageState, known: SnapshotCase, now: number): CaseForecast {
-  const readings = productReadings(state.cases[known.id]!).filter(reading => reading.at <= now)
-  const last = readings.at(-1)
-  const darkAt = firstDarkAt(state)
-  const startC = last ? celsius(last.value, last.unit) : known.usualC
-  const sinceDark = darkAt === null ? [] : readings.filter((reading, index) => reading.at >= darkAt || readings[index + 1] === undefined || readings[index + 1]!.at > darkAt)
-  const elapsed = last ? Math.max(0, (now - Math.max(last.at, darkAt ?? now)) / MINUTE) : 0
-  let tauHours = known.tauHours
-  let held: { likely: number, careful: number } | null
-  if (!isFrozenKind(known.kind) && sinceDark.length >= 2) {
-    const fit = fitHold({ ambientC: SHOP_AIR_C, priorTauHours: known.tauHours || DEFAULT_TAU_HOURS['open-multideck'], limitC: limitC(known), readings: distinct(sinceDark), now: isoTime(now) })
-    tauHours = fit.tauHours
-    held = fit.minutesToLimit
-  } else {
-    const { minutes } = curveOf(known, startC)
-    held = minutes === null ? null : { likely: Math.max(0, minutes - elapsed), careful: Math.max(0, minutes - elapsed) }
-  }
-  const { curve } = curveOf(known, startC, tauHours)
-  const from = last ? Math.max(last.at, darkAt ?? last.at) : now
-  const holdAtLast = held === null ? null : held.careful + elapsed
-  const due = roundDueMinutes({ holdLeftMinutes: holdAtLast, open: isOpenKind(known.kind), slow: known.kind.startsWith('walk-in') || (isFrozenKind(known.kind) && !isOpenKind(known.kind)), intervalMinutes: state.snapshot.site.intervalMinutes })
+  const taken = takenOf(state, known.id)
+  const last = taken.findLast(reading => reading.at <= now) ?? null
+  const dark = darkAt(state, now)
+  return dark === null ? withControl(state, known, last, now) : withoutControl(state, known, taken, last, dark, now)
+}
+
+function withControl(state: OutageState, known: SnapshotCase, last: Taken | null, now: number): CaseForecast {
+  const { minutes, curve } = bareCourse(known, last?.c ?? known.usualC)
+  const from = last?.at ?? now
   return {
-    caseId: known.id,
-    holdMinutes: held?.careful ?? null,
-    likelyMinutes: held?.likely ?? null,
-    dueAt: from + due * MINUTE,
-    curve: curve.map(point => ({ at: from + point.minute * MINUTE, c: point.c })).filter(point => point.at >= from),
+    caseId: known.id, toward: 'limit', holdMinutes: minutes, likelyMinutes: minutes, readings: 0, held: null,
+    dueAt: from + dueMinutes(state, known, minutes) * MINUTE,
+    curve: curve.map(point => ({ at: from + point.minute * MINUTE, c: point.c })),
   }
 }
 
-/** Fit wants times in strict order. */
-function distinct(readings: { at: number, value: number, unit: 'F' | 'C' }[]) {
-  return readings.filter((reading, index) => index === 0 || reading.at > readings[index - 1]!.at).map(reading => ({ at: isoTime(reading.at), c: celsius(reading.value, reading.unit) }))
+function withoutControl(state: OutageState, known: SnapshotCase, taken: readonly Taken[], last: Taken | null, dark: DarkInterval, now: number): CaseForecast {
+  const running = fitAt(state, known, taken, dark, now)
+  const { fit, start } = running
+  const from = Math.max(last?.at ?? dark.from, dark.from)
+  const minutes = fit.minutesFrom((now - start) / MINUTE)
+  const atReading = fit.minutesFrom(Math.max(0, (from - start) / MINUTE))
+  const held = isHeldOn(state, known) ? heldCase(state, known, last?.c ?? known.usualC, from) : null
+  const holds = held !== null && !isWarming(known, taken, dark, now)
+  const forecast = {
+    caseId: known.id, readings: fit.n, held,
+    // A case that seems held is still read as if it were not: nobody knows until it has been read.
+    dueAt: from + dueMinutes(state, known, atReading?.careful ?? null) * MINUTE,
+  }
+  if (!holds) return { ...forecast, toward: 'limit', holdMinutes: minutes?.careful ?? null, likelyMinutes: minutes?.likely ?? null, curve: warmingCurve(running, last, from, now, minutes?.likely ?? null) }
+  const left = held.minutesToLowMark === null ? null : Math.max(0, held.minutesToLowMark - (now - from) / MINUTE)
+  return { ...forecast, toward: 'low-mark', holdMinutes: left, likelyMinutes: left, curve: coolingCurve(known, held, last?.c ?? known.usualC, from) }
 }
 
-/** Forecasts of all watched cases with product in them, shortest hold first. */
+/** Whether the last two readings since control was lost lie over the one before it. */
+function isWarming(known: SnapshotCase, taken: readonly Taken[], dark: DarkInterval, now: number): boolean {
+  const start = taken.findLast(reading => reading.at <= dark.from)?.c ?? known.usualC
+  const since = taken.filter(reading => reading.at > dark.from && reading.at <= now).slice(-2)
+  return since.length > 0 && since.reduce((sum, reading) => sum + reading.c, 0) / since.length > start + WARMING_K
+}
+
+function warmingCurve({ fit, start }: RunningFit, last: Taken | null, from: number, now: number, likely: number | null): CaseForecast['curve'] {
+  const end = likely === null ? from + LONGEST_CURVE_MINUTES * MINUTE : Math.max(now + likely * MINUTE, from)
+  const points = Array.from({ length: CURVE_STEPS + 1 }, (_, step) => {
+    const at = from + (end - from) * step / CURVE_STEPS
+    return { at, c: fit.at((at - start) / MINUTE) }
+  })
+  // The pen goes on from where the last reading stands, not beside it.
+  return last && last.at === from ? [{ at: from, c: last.c }, ...points.slice(1)] : points
+}
+
+function coolingCurve(known: SnapshotCase, { supplyC, minutesToLowMark }: HeldCase, startC: number, from: number): CaseForecast['curve'] {
+  const end = startC <= LOW_MARK_C ? LONGEST_CURVE_MINUTES : minutesToLowMark ?? LONGEST_CURVE_MINUTES
+  return Array.from({ length: CURVE_STEPS + 1 }, (_, step) => ({ at: from + end * step / CURVE_STEPS * MINUTE, c: chilledAt(startC, supplyC, known.tauHours, end * step / CURVE_STEPS) }))
+}
+
+/**
+ * Forecasts of all watched cases with product in them: the shortest hold to a limit first, then those
+ * held on by hand by the time to their low mark.
+ */
 export function forecastCases(state: OutageState, now: number): CaseForecast[] {
   const watched = new Set(watchedCases(state).filter(item => !item.empty).map(item => item.id))
+  const rank = (forecast: CaseForecast) => forecast.toward === 'limit' && forecast.holdMinutes !== null ? 0 : 1
   return state.snapshot.cases.filter(known => watched.has(known.id)).map(known => forecastCase(state, known, now))
-    .sort((a, b) => (a.holdMinutes ?? Infinity) - (b.holdMinutes ?? Infinity) || a.caseId.localeCompare(b.caseId))
-}
-
-/** Readings taken later than they were due by more than two minutes, with how late, minutes. */
-export function lateReadings(state: OutageState, until: number): { caseId: string, seq: number | null, minutes: number }[] {
-  const late: { caseId: string, seq: number | null, minutes: number }[] = []
-  const soonest = Math.min(SHORTEST_MINUTES, state.snapshot.site.intervalMinutes) * MINUTE
-  for (const known of state.snapshot.cases) {
-    const item = state.cases[known.id]
-    if (!item?.touched || known.runsAlone) continue
-    for (const dark of state.darks) {
-      const to = dark.to ?? until
-      const inDark = productReadings(item).filter(reading => reading.at > dark.from && reading.at <= to)
-      let last = dark.from
-      for (const reading of inDark) {
-        // A forecast is dear, so none is made where the reading came before any case could be due.
-        const dueAt = last > dark.from && reading.at <= last + soonest ? reading.at : forecastCase(state, known, last).dueAt
-        if (reading.at > dueAt + 2 * MINUTE) late.push({ caseId: known.id, seq: reading.seq, minutes: (reading.at - dueAt) / MINUTE })
-        last = reading.at
-      }
-      if (dark.to !== null) continue
-      const dueAt = forecastCase(state, known, last).dueAt
-      const emptied = item.empty ? item.acts.at(-1)?.mark.at ?? Infinity : Infinity
-      if (Math.min(to, emptied) > dueAt + 2 * MINUTE) late.push({ caseId: known.id, seq: null, minutes: (Math.min(to, emptied) - dueAt) / MINUTE })
-    }
-  }
-  return late.sort((a, b) => (a.seq ?? Infinity) - (b.seq ?? Infinity) || a.caseId.localeCompare(b.caseId))
+    .sort((a, b) => rank(a) - rank(b) || (a.holdMinutes ?? Infinity) - (b.holdMinutes ?? Infinity) || a.caseId.localeCompare(b.caseId))
 }

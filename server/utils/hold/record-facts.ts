@@ -2,14 +2,14 @@
 import type { OutageState } from '~~/shared/record/state'
 import type { RecordFacts } from '~~/shared/record/summary'
 import { classById, effectiveClass, rulebookById, siteFor } from '../holding'
-import { lateReadings } from './for-outage'
+import { historyOf } from './history'
 
 /**
- * Late readings by the forecasts of that moment, and where the limits of the watched cases are written.
+ * The forecasts of each moment beside what came, the readings that were late by them, and where the limits of the watched cases are written.
  * @param until Unix ms; until when a case that was not read counts as overdue
  */
 export function recordFacts(state: OutageState, until: number): RecordFacts {
-  return { late: lateReadings(state, until), limits: limitSources(state) }
+  return { ...historyOf(state, until), limits: limitSources(state) }
 }
 
 /** "FDA Food Code 2022, 3-501.16(A)(2)", one for each class of food in the cases that are watched. */

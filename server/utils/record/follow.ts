@@ -1,12 +1,10 @@
 import { isoTime } from '../../../shared/record/entry'
 import { watchedCases } from '../../../shared/record/select'
 import { forecastCase } from '../hold/for-outage'
+import { LATE_MS } from '../hold/history'
 import { assessCase } from '../holding/for-outage'
 import type { Draft } from './draft'
 import { addServerEntry } from './draft'
-
-/** A round may be this much over its time before it counts as late, ms; as lateReadings has it. */
-const LATE_MS = 2 * 60_000
 
 /** Entries of the server's own after others were added: a verdict where it changed. */
 export async function followUp(draft: Draft): Promise<void> {

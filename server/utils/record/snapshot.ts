@@ -3,11 +3,18 @@ import type { Snapshot } from '../../../shared/record/snapshot'
 import { isFrozenKind } from '../../../shared/schemas/case-kinds'
 import { cases, circuits, controllers, instruments, points, racks, sites, suctionGroups } from '../../database/schema'
 import type { Queries } from '../database'
+import { RELIEF_VALVE } from '../../../shared/schemas/equipment'
 import { DEFAULT_TAU_HOURS } from '../hold'
 import { caseLimit, classById, rulebookById } from '../holding'
 
 /** Hours that stand for a frozen case whose hold comes from its enthalpy, not from a time constant. */
 const FROZEN_TAU_HOURS = 24
+
+/** "RV-1 40" as the record holds it. */
+function reliefValveOf(written: string): { tag: string, barGauge: number }[] {
+  const [, tag, setting] = RELIEF_VALVE.exec(written) ?? []
+  return tag && setting ? [{ tag, barGauge: Number(setting.replace(',', '.')) }] : []
+}
 
 /** The equipment of a controller as it stands now: what an opening entry carries. Null: no such controller. */
 export async function snapshotOf(db: Queries, controllerId: string): Promise<Snapshot | null> {
@@ -32,7 +39,7 @@ export async function snapshotOf(db: Queries, controllerId: string): Promise<Sna
     },
     controller: { id: controller.id, name: controller.name, place: controller.place, panelVolts: controller.panelVolts },
     rulebook: { id: rulebook.id, version: rulebook.version, name: rulebook.name },
-    racks: rackRows.map(({ id, name, refrigerant, highCutOutPsig }) => ({ id, name, refrigerant, highCutOutPsig })),
+    racks: rackRows.map(({ id, name, refrigerant, highCutOutPsig, warmestC, reliefValves }) => ({ id, name, refrigerant, highCutOutPsig, warmestC, reliefValves: reliefValves.flatMap(reliefValveOf) })),
     suctionGroups: groupRows.map(({ id, rackId, name, stage, targetSuctionPsig, lowCutOutPsig }) => ({ id, rackId, name, stage, targetSuctionPsig, lowCutOutPsig })),
     circuits: circuitRows.map(({ id, rackId, suctionGroupId, name, defrostKind, defrosts, durationMin, dripMin }) => ({ id, rackId, suctionGroupId, name, defrostKind, defrosts, durationMin, dripMin })),
     cases: caseRows.map((item) => {
@@ -42,7 +49,7 @@ export async function snapshotOf(db: Queries, controllerId: string): Promise<Sna
       return {
         id: item.id, name: item.name, kind: item.kind, foodClass: item.foodClass, usualC: item.usualC,
         limit: { value, unit: rulebook.unit }, stricter,
-        tauHours: item.tauHours ?? (isFrozenKind(item.kind) ? FROZEN_TAU_HOURS : DEFAULT_TAU_HOURS[item.kind]), tauIsOwn: item.tauHours !== null,
+        tauHours: item.tauHours ?? (isFrozenKind(item.kind) ? FROZEN_TAU_HOURS : DEFAULT_TAU_HOURS[item.kind]), tauIsOwn: item.tauHours !== null, tauFrom: 0,
         runsAlone: item.runsAlone, circuitId: item.circuitId,
       }
     }),

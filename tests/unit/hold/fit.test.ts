@@ -2,6 +2,7 @@ import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { fitHold, holdTime } from '~~/server/utils/hold'
 import type { FitInput } from '~~/shared/schemas/hold'
+import { median, seeded } from '../../support/seeded'
 
 const startMs = Date.parse('2026-03-01T02:00:00Z')
 const at = (minutes: number) => new Date(startMs + minutes * 60_000).toISOString()
@@ -154,19 +155,4 @@ function honesty(lowestStartC: number, highestStartC: number) {
     late += careful > left ? 1 : 0
   }
   return { notLate: 1 - late / errors.length, medianError: median(errors), medianShare: median(shares) }
-}
-
-function median(values: number[]): number {
-  return [...values].sort((a, b) => a - b)[values.length >> 1]!
-}
-
-/** A small generator of numbers in [0, 1) (mulberry32), so that the cases are the same each time. */
-function seeded(seed: number): () => number {
-  let state = seed
-  return () => {
-    state = (state + 0x6D2B79F5) | 0
-    let mixed = Math.imul(state ^ (state >>> 15), 1 | state)
-    mixed = (mixed + Math.imul(mixed ^ (mixed >>> 7), 61 | mixed)) ^ mixed
-    return ((mixed ^ (mixed >>> 14)) >>> 0) / 4294967296
-  }
 }

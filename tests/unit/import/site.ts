@@ -13,7 +13,7 @@ export function quarryStreetView({ withPoints }: { withPoints: boolean }): SiteV
     holding: snapshot.site.holding,
     instrumentCheckDays: snapshot.site.instrumentCheckDays,
     controllers: [{ ...snapshot.controller, notes: '' }],
-    racks: snapshot.racks.map(rack => ({ ...rack, controllerId })),
+    racks: snapshot.racks.map(rack => ({ ...rack, reliefValves: [], controllerId })),
     suctionGroups: snapshot.suctionGroups,
     circuits: snapshot.circuits,
     cases: snapshot.cases.map(({ id, name, kind, foodClass, usualC, runsAlone, circuitId }) => ({ id, name, kind, foodClass, usualC, runsAlone, circuitId, controllerId, tauHours: null, limitStricter: null })),

@@ -41,10 +41,10 @@ export const snapshot: Snapshot = {
   site: { id: uuidFor('small site'), code: 'Q001', name: 'Mill Lane', address: '', timeZone: 'America/Chicago', temperatureUnit: 'F', pressureUnit: 'psig', altitudeM: 0, intervalMinutes: 10, paper: 'Letter', contactName: '', contactPhone: '', quietHours: [], holding: PLAIN_HOLDING, instrumentCheckDays: 90 },
   controller: { id: uuidFor('small controller'), name: 'rack controller', place: '', panelVolts: 460 },
   rulebook,
-  racks: [{ id: RACK, name: 'Rack A', refrigerant: 'R-448A', highCutOutPsig: 395 }],
+  racks: [{ id: RACK, name: 'Rack A', refrigerant: 'R-448A', highCutOutPsig: 395, warmestC: null, reliefValves: [] }],
   suctionGroups: [{ id: GROUP, rackId: RACK, name: 'medium', stage: 'medium', targetSuctionPsig: 48, lowCutOutPsig: 20 }],
   circuits: [{ id: CIRCUIT, rackId: RACK, suctionGroupId: GROUP, name: 'A1', defrostKind: 'electric', defrosts: null, durationMin: 20, dripMin: 5 }],
-  cases: [[DAIRY, 'Dairy wall'], [FISH, 'Fish service'], [JUICE, 'Juice doors']].map(([id, name]) => ({ id: id!, name: name!, kind: 'open-multideck' as const, foodClass: 'tcs', usualC: 2, limit: { value: 41, unit: 'F' as const }, stricter: false, tauHours: 6, tauIsOwn: false, runsAlone: id === JUICE, circuitId: CIRCUIT })),
+  cases: [[DAIRY, 'Dairy wall'], [FISH, 'Fish service'], [JUICE, 'Juice doors']].map(([id, name]) => ({ id: id!, name: name!, kind: 'open-multideck' as const, foodClass: 'tcs', usualC: 2, limit: { value: 41, unit: 'F' as const }, stricter: false, tauHours: 6, tauIsOwn: false, tauFrom: 0, runsAlone: id === JUICE, circuitId: CIRCUIT })),
   points: [
     point('C-1', 'compressor', 'on', { ...GUARDED, minOffMin: 3 }),
     point('C-2', 'compressor', 'off', GUARDED),

@@ -23,7 +23,7 @@ export function snapshotOfSeed({ site: siteSeed, controllers: [seed] }: SiteSeed
   const { name, place, panelVolts } = controllerSchema.parse(seed!.controller)
   const racks = seed!.racks.map(({ rack }) => {
     const { controllerId: _, ...rest } = rackSchema.parse({ ...rack, controllerId })
-    return { ...rest, id: keep(rest.name) }
+    return { ...rest, reliefValves: [], id: keep(rest.name) }
   })
   const suctionGroups = seed!.racks.flatMap(({ rack, suctionGroups }) => suctionGroups.map(group => ({ ...suctionGroupSchema.parse({ ...group, rackId: idOf(rack.name) }), id: keep(group.name) })))
   const circuits = seed!.racks.flatMap(({ rack, circuits }) => circuits.map(({ suctionGroup, ...circuit }) => ({ ...circuitSchema.parse({ ...circuit, rackId: idOf(rack.name), suctionGroupId: idOf(suctionGroup) }), id: keep(circuit.name) })))
@@ -32,7 +32,7 @@ export function snapshotOfSeed({ site: siteSeed, controllers: [seed] }: SiteSeed
     const legal = limitFor(rulebook.id, rest.foodClass)
     return {
       ...rest, id: keep(rest.name), limit: { value: Math.min(legal.value, limitStricter ?? legal.value), unit: legal.unit }, stricter: limitStricter !== null,
-      tauHours: tauHours ?? (isFrozenKind(rest.kind) ? 24 : DEFAULT_TAU_HOURS[rest.kind]), tauIsOwn: tauHours !== null,
+      tauHours: tauHours ?? (isFrozenKind(rest.kind) ? 24 : DEFAULT_TAU_HOURS[rest.kind]), tauIsOwn: tauHours !== null, tauFrom: 0,
     }
   })
   const points = seed!.points.map(({ rack, suctionGroup, circuit, cases: served = [], ...point }) => {
