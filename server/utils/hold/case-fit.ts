@@ -45,7 +45,7 @@ export interface CaseFit {
 export function fitCase({ kind, usualC, limitC, ambientC, priorTauHours, before, since }: CaseEvidence): CaseFit {
   const starts: WeighedReading[] = before.map(c => ({ hours: 0, c, sdK: BEFORE_SD_K }))
   const readings = [
-    ...(starts.length > 0 || since.length > 0 && since[0]!.minutes <= 0 ? starts : [{ hours: 0, c: usualC, sdK: USUAL_SD_K }]),
+    ...(starts.length > 0 || (since.length > 0 && since[0]!.minutes <= 0) ? starts : [{ hours: 0, c: usualC, sdK: USUAL_SD_K }]),
     ...since.map(({ minutes, c }) => ({ hours: Math.max(0, minutes) / 60, c, sdK: READING_SD_K })),
   ]
   const { at, minutesFrom, tauHours } = isFrozenKind(kind) ? frozenFit(kind, readings, limitC, ambientC) : chilledFit(readings, limitC, ambientC, priorTauHours)
