@@ -1,5 +1,5 @@
 import type { AnyEntry } from '~~/shared/record/entry'
-import { entryBytes, entryHash, isoTime } from '~~/shared/record/entry'
+import { ENTRIES_PER_PUSH, entryBytes, entryHash, isoTime } from '~~/shared/record/entry'
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
 import { newestSchema, newestVersion } from '~~/shared/record/kinds'
 import type { ChainEnd, Locks, OutboxEntry, OutboxPorts, PushResult, Refused, Settlement, Signing, Trouble } from './outbox-ports'
@@ -7,7 +7,6 @@ import { isWaiting, Unsent } from './outbox-ports'
 
 export * from './outbox-ports'
 
-const ENTRIES_PER_PUSH = 50
 /** Entries of one push together, characters of JSON; a single larger entry goes alone. */
 const PUSH_MAX_CHARACTERS = 1_000_000
 /** How often a signature is made anew when another tab took its place in the chain. */

@@ -29,8 +29,11 @@ export const signedEntrySchema = z.object({
   signature: z.string().regex(/^[A-Za-z0-9_-]{86}$/, 'A signature is 64 bytes in base64url'),
 }).strict()
 
+/** What a device sends at once of what it has kept. */
 export const ENTRIES_PER_PUSH = 50
-export const pushSchema = z.object({ entries: z.array(z.unknown()).min(1, 'At least one entry').max(ENTRIES_PER_PUSH, `At most ${ENTRIES_PER_PUSH} entries at once`) })
+/** What the server takes at once: a round of the largest shop is one request, so that all of it is judged together or not at all. */
+export const MOST_ENTRIES_PER_PUSH = 100
+export const pushSchema = z.object({ entries: z.array(z.unknown()).min(1, 'At least one entry').max(MOST_ENTRIES_PER_PUSH, `At most ${MOST_ENTRIES_PER_PUSH} entries at once`) })
 
 /** One signed act. See docs/record-format.md. */
 export interface Entry<K extends EntryKind = EntryKind> {

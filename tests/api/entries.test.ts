@@ -214,15 +214,15 @@ describe('the request itself', () => {
   it.each([[{}], [{ entries: 'x' }], [{ entries: [] }], [[]], ['x']])('%j is 422', async (body) => {
     expect((await post(JSON.stringify(body))).status).toBe(422)
   })
-  it('51 entries are 422, and none is stored', async () => {
+  it('101 entries are 422, and none is stored; 100 are taken', async () => {
     const before = (await log()).size
-    const many = Array.from({ length: 51 }, () => note())
-    expect(await reason(await post(JSON.stringify({ entries: many })))).toEqual([422, { field: 'entries', reason: 'At most 50 entries at once' }])
+    const many = Array.from({ length: 101 }, () => note())
+    expect(await reason(await post(JSON.stringify({ entries: many })))).toEqual([422, { field: 'entries', reason: 'At most 100 entries at once' }])
     for (const signed of [...many].reverse()) phone.unwrite(outage, signed)
     expect((await log()).size).toBe(before)
-    const fifty = Array.from({ length: 50 }, (_, index) => note(`note ${index}`))
-    const { status, body } = await phone.push(outage, fifty)
-    expect([status, new Set(body.results.map(result => result.status)), (await log()).size]).toEqual([200, new Set(['accepted']), before + 50])
+    const most = Array.from({ length: 100 }, (_, index) => note(`note ${index}`))
+    const { status, body } = await phone.push(outage, most)
+    expect([status, new Set(body.results.map(result => result.status)), (await log()).size]).toEqual([200, new Set(['accepted']), before + 100])
   })
   it('more than four megabytes are 413, and so is an entry of more than two', async () => {
     expect((await post(`{"entries":["${'x'.repeat(4_000_000)}"]}`)).status).toBe(413)

@@ -33,11 +33,11 @@ function temperatures({ rulebook, foodClass }: Row): fc.Arbitrary<number> {
 }
 
 /** Logs of a row: gaps in whole minutes, some of them long. */
-function logs(row: Row): fc.Arbitrary<AssessInput> {
+function logs(row: Row, values = temperatures(row)): fc.Arbitrary<AssessInput> {
   const gap = fc.oneof(fc.integer({ min: 1, max: 15 }), fc.integer({ min: 1, max: 150 }))
   return fc.record({
     first: fc.integer({ min: -60, max: 90 }),
-    steps: fc.array(fc.tuple(gap, temperatures(row)), { minLength: 1, maxLength: 8 }),
+    steps: fc.array(fc.tuple(gap, values), { minLength: 1, maxLength: 8 }),
     rest: fc.oneof(fc.constant(0), fc.integer({ min: 0, max: 200 })),
     intervalMinutes: fc.constantFrom(5, 10, 30),
     addAccuracy: fc.boolean(),
@@ -106,6 +106,20 @@ describe.each(rows)('$name', (row) => {
     }), RUNS)
   })
 
+  it('has the same linear minutes with one reading more on the line between two', () => {
+    const hot = row.foodClass.hotFrom === null ? [] : [row.foodClass.hotFrom, row.foodClass.hotFrom + 8]
+    const between = fc.tuple(logs(row, fc.oneof(temperatures(row), ...hot.map(value => fc.constant(value)))), fc.nat(), fc.double({ min: 0.01, max: 0.99, noNaN: true }))
+    fc.assert(fc.property(between, ([log, pick, part]) => {
+      const [from, to] = [pick % log.readings.length, pick % log.readings.length + 1].map(index => log.readings[index])
+      if (!from || !to) return
+      const length = Date.parse(to.at) - Date.parse(from.at)
+      const ms = Math.round(length * part)
+      const more = { at: new Date(Date.parse(from.at) + ms).toISOString(), value: from.value + (to.value - from.value) * ms / length }
+      const readings = log.readings.toSpliced(pick % log.readings.length + 1, 0, more)
+      expect(assess({ ...log, readings }).minutesAbove.linear).toBeCloseTo(assess(log).minutesAbove.linear, 3)
+    }), RUNS)
+  })
+
   it('never grows milder as time passes', () => {
     fc.assert(fc.property(logs(row), fc.integer({ min: 1, max: 400 }), (log, minutes) => {
       expect(rank(assess({ ...log, now: later(log.now, minutes) }))).toBeGreaterThanOrEqual(rank(assess(log)))
@@ -147,6 +161,9 @@ describe.each(rows)('$name', (row) => {
       const last = log.readings.at(-1)!
       if (last.value > limit.value + 1e-6) expect(rank({ verdict } as Assessment)).toBeGreaterThanOrEqual(RANK.above)
       else expect(['within', 'unknown', 'act', 'discard']).toContain(verdict)
+      // Where nobody has looked for long, a discard of any moment before still stands.
+      const worst = Math.max(...log.readings.map(reading => assess({ ...log, site: {}, readings: log.readings.filter(({ at }) => at <= reading.at), now: reading.at > log.darkAt ? reading.at : log.darkAt })).map(rank))
+      if (verdict === 'unknown') expect(worst).toBeLessThan(RANK.discard)
     }), RUNS)
   })
 
