@@ -1,4 +1,5 @@
 import { clockWords, countWords, dateWords, durationWords, offsetWords } from '../../shared/charts/words'
+import { standstillWords } from '../utils/cover/standstill-words'
 import { DISCLAIMER, outageCautions } from '../../shared/record/cautions'
 import { happenedAt, isoTime } from '../../shared/record/entry'
 import { filesOf } from '../../shared/record/fold'
@@ -91,6 +92,7 @@ export async function drawProof(sheet: Sheet, paper: RecordPaper): Promise<void>
   }
   if (state.largestSkew && state.largestSkew.ms > 1000) sheet.paragraph(`Times are the devices' own, less their last measured difference from the server; the largest was ${durationWords(state.largestSkew.ms / 1000)}.`)
   sheet.begin('Cautions')
+  for (const words of standstillWords(state.snapshot)) sheet.paragraph(words, { after: 3 })
   for (const caution of outageCautions(state)) sheet.paragraph(`${caution.hazard.toUpperCase()}: ${caution.words}`, { after: 3 })
   sheet.paragraph(DISCLAIMER, { style: { face: 'semibold' } })
 }

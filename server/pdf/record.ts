@@ -9,6 +9,7 @@ import { drawTemperatures } from './charts'
 import { drawEntries, drawLooseEnds, drawProof } from './entry-sections'
 import { Feet } from './foot'
 import type { FontBytes } from './fonts'
+import { drawForecasts, drawPlantWarnings } from './forecast-sections'
 import { drawFront } from './front'
 import { drawChecks, drawDarks, drawPlan } from './plan-sections'
 import { drawPoints, drawRounds, drawVerdicts } from './run-sections'
@@ -69,6 +70,8 @@ async function draw(doc: PDFKit.PDFDocument, paper: RecordPaper, fonts: FontByte
   await drawPoints(sheet, paper)
   await drawDarks(sheet, paper)
   await drawRounds(sheet, paper)
+  await drawPlantWarnings(sheet, paper)
+  await drawForecasts(sheet, paper)
   await drawVerdicts(sheet, paper)
   await drawLooseEnds(sheet, paper)
   await drawEntries(sheet, paper)

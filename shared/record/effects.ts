@@ -29,6 +29,10 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     item.verdict = { verdict: body.verdict, deadline: body.deadline === null ? null : Date.parse(body.deadline), minutesAbove: body.minutesAbove, clause: body.clause, source: body.source, act: body.act, why: body.why, at: Date.parse(body.judgedAt), seq: mark.seq }
     if (body.verdict === 'act' || body.verdict === 'discard') item.openAct = mark.seq
   },
+  'plant-warned': (state, { body }, mark) => {
+    state.plant = state.plant.filter(item => item.fault !== body.fault || item.about !== body.about)
+    if (!body.over) state.plant.push({ fault: body.fault, about: body.about, words: body.words, act: body.act, at: Date.parse(body.judgedAt), seq: mark.seq })
+  },
 
   'outage-opened': (state, entry, mark) => {
     const { body } = entry

@@ -58,6 +58,7 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   'signer-named': serverOnly,
   'outage-numbered': serverOnly,
   'verdict-changed': serverOnly,
+  'plant-warned': serverOnly,
   'entry-refused': serverOnly,
 
   'outage-opened': { roles: HANDS, phases: ['plan'], unfit: (state, entry) => [

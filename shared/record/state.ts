@@ -4,13 +4,13 @@ import type { HandPosition, PointKind } from '../schemas/point-kinds'
 import type { CheckId } from './checks'
 import type { SeenInAuto, SeenInHand } from './kinds/hand'
 import type { Act } from './kinds/rounds'
-import type { Verdict } from './kinds/server'
+import type { PlantFault, Verdict } from './kinds/server'
 import type { Phase } from './phases'
 import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 3
+export const FOLD_VERSION = 4
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
@@ -111,6 +111,8 @@ export interface OutageState {
   points: Record<string, PointState>
   cases: Record<string, CaseState>
   pressures: PressureState[]
+  /** warnings of the plant that are not over */
+  plant: { fault: PlantFault, about: string, words: string, act: string, at: number, seq: number }[]
   darks: DarkInterval[]
   turnedBack: { reason: string, mark: Mark } | null
   steps: Record<string, { begun: Mark | null, done: Mark | null }>
@@ -168,7 +170,7 @@ export function emptyState(id: string): OutageState {
     foldVersion: FOLD_VERSION, id, code: null, size: 0, phase: 'plan', planned: true,
     snapshot: structuredClone(EMPTY_SNAPSHOT), opened: null, cause: '', plan: structuredClone(EMPTY_PLAN),
     authors: [], planSubmitted: null, planReturned: null, approved: null, inHandBegun: null,
-    checks: {}, points: {}, cases: {}, pressures: [], darks: [], turnedBack: null, steps: {}, backAt: null,
+    checks: {}, points: {}, cases: {}, pressures: [], plant: [], darks: [], turnedBack: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
     calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],
     refusals: [], chain: {}, largestSkew: null,

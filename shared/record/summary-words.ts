@@ -1,4 +1,4 @@
-import { clockWords, countWords, dateWords, durationWords, listWords, minuteWords, offsetWords, temperatureWords } from '../charts/words'
+import { clockWords, countWords, dateWords, durationWords, listWords, minuteWords, numberWords, offsetWords, temperatureWords } from '../charts/words'
 import { VERDICT_WORDS } from './kinds/server'
 import type { RecordSummary } from './summary'
 import { isoTime } from './entry'
@@ -23,10 +23,19 @@ export function summaryRows(summary: RecordSummary): SummaryRow[] {
       : [strong(durationWords(dark.ms / 1000)), plain(dark.plannedMinutes === null ? ', unplanned' : ` of ${dark.plannedMinutes} min planned`), ...(dark.times > 1 ? [plain(`, ${dark.times} times`)] : [])] },
     { label: 'Points in hand', parts: [strong(points.set), plain(' set, '), strong(points.back), plain(' back in auto, '), strong(points.proven), plain(' proven'), ...(points.excused > 0 ? [plain(', '), strong(points.excused), plain(' excused')] : [])] },
     { label: 'Rounds', parts: rounds.taken === 0 ? [plain('none yet')] : [strong(rounds.taken), plain(` taken${late}`)] },
+    ...(summary.forecasts.readings === 0 ? [] : [{ label: 'Forecasts', parts: forecastParts(summary.forecasts) }]),
     { label: 'Highest product', parts: highest ? [strong(temperatureWords(highest.value, highest.unit)), plain(`, ${highest.name}`)] : [plain('no reading yet')] },
     { label: 'Above a limit', parts: [strong(above.cases.length), plain(` of ${countWords(above.watched, 'case')}`)] },
     { label: 'Product discarded', parts: [strong(discarded.length === 0 ? 'none' : listWords(discarded.map(act => [amount(act.quantity, act.unit), act.product].filter(Boolean).join(' '))))] },
     { label: 'Limits', parts: [plain(limits.join('; ') || 'none')] },
+  ]
+}
+
+/** "0.4 °F off in the median of 24 readings, no case came early". */
+function forecastParts({ median, unit, readings, early }: RecordSummary['forecasts']): SummaryRow['parts'] {
+  return [
+    strong(`${numberWords(median)} °${unit}`), plain(` off in the median of ${countWords(readings, 'reading')}, `),
+    plain(early.length === 0 ? 'no case came early' : `came early: ${listWords(early)}`),
   ]
 }
 

@@ -3,6 +3,8 @@ import type { StoredEntry } from './entry'
 import { ACT_WORDS } from './kinds/rounds'
 import { SEAL_STATEMENT, SUBMIT_STATEMENT } from './kinds/review'
 import type { CheckLine, CorrectionLine, ForecastLine, LateReading, Line, PointLine, RoundLine, VerdictLine } from './record-lines'
+import type { ForecastSummary } from './forecast-summary'
+import { forecastSummary } from './forecast-summary'
 import { acceptedOf, checkLines, correctionLines, lineOf, lineOfMark, overLimit, pointLines, roundLines, verdictLines } from './record-lines'
 import { caseName, darkMs, nameOf, pointsInHand, productReadings, proofsDue, watchedCases } from './select'
 import type { OutageState } from './state'
@@ -21,6 +23,7 @@ export interface RecordFacts {
 }
 
 export interface SignatureLine extends Line { what: 'submitted' | 'sealed', role: Role | 'server', meaning: string, drawing: string, words: string, /** false once the record was returned for answers */ stands: boolean }
+export interface PlantLine extends Line { words: string, act: string, over: boolean }
 export interface ActLine extends Line { caseId: string, name: string, act: string, discarded: boolean, product: string, quantity: number | null, unit: string, place: string, words: string }
 export interface QuestionedLine { seq: number, entry: string, why: string[], settled: (Line & { words: string }) | null }
 export interface ClockLine { device: string, deviceName: string, name: string, /** largest difference, ms; positive: the device is ahead */ ms: number, entries: number }
@@ -39,6 +42,8 @@ export interface RecordSummary {
   signatures: SignatureLine[]
   checks: { before: CheckLine[], back: CheckLine[] }
   pointLines: PointLine[]
+  plantWarnings: PlantLine[]
+  forecasts: ForecastSummary
   verdicts: VerdictLine[]
   acts: ActLine[]
   decidedOtherwise: (Line & { name: string, reason: string })[]
@@ -69,6 +74,8 @@ export function summaryOf(state: OutageState, entries: readonly StoredEntry[], f
     signatures: signatureLines(state, entries),
     checks: checkLines(state),
     pointLines: points,
+    plantWarnings: acceptedOf(entries, 'plant-warned').map(({ stored, entry: { body } }) => ({ ...lineOf(state, stored), words: body.words, act: body.act, over: body.over })),
+    forecasts: forecastSummary(state, facts.forecasts),
     verdicts,
     acts: actLines(state),
     decidedOtherwise: acceptedOf(entries, 'decided-otherwise').map(({ stored, entry }) => ({ ...lineOf(state, stored), name: caseName(state, entry.body.caseId), reason: entry.body.reason })),

@@ -21,6 +21,7 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'signer-named': (_state, { body }) => tell(`Signer named: ${body.name}, ${body.role}`, `key on ${body.deviceName}`),
   'outage-numbered': (_state, { body }) => tell(`Numbered ${body.code}`),
   'verdict-changed': (state, { body }) => tell(`${caseName(state, body.caseId)} is ${VERDICT_WORDS[body.verdict]}`, join(body.clause, body.minutesAbove > 0 && `${Math.round(body.minutesAbove)} min above`)),
+  'plant-warned': (_state, { body }) => tell(body.over ? 'Plant warning is over' : 'Plant warning', join(body.words, body.act)),
   'entry-refused': (_state, { body }) => tell('An entry was refused', body.reason),
   'outage-opened': (_state, { body }) => tell(body.planned ? `Outage opened: ${body.plan.workKind.name}` : 'Unplanned outage opened', join(body.cause, `${body.snapshot.points.length} points, ${body.snapshot.cases.length} cases`)),
   'plan-changed': (_state, { body }) => tell('Plan changed', join(body.note, `${body.plan.points.length} points`)),

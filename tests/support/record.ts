@@ -2,6 +2,7 @@
 import { handBackAfter, planRefusals } from '../../server/utils/order/for-outage'
 import { rulebookById } from '../../server/utils/holding'
 import { assessCase } from '../../server/utils/holding/for-outage'
+import { plantChanges } from '../../server/utils/record/plant-entries'
 import { privateKeyOf, publicKeyText, signBytes } from '../../server/utils/record/keys'
 import { PROGRAM_VERSION } from '../../shared/program-version'
 import { sha256Hex } from '../../shared/record/canonical'
@@ -149,8 +150,9 @@ export class RecordWriter {
     }
   }
 
-  /** Verdicts that changed, as the server enters them. */
+  /** Warnings of the plant and verdicts that changed, as the server enters them. */
   private followUp(): void {
+    for (const body of plantChanges(this.state, this.now)) this.serverEntry('plant-warned', body)
     if (this.state.darks.length === 0 || this.state.phase === 'sealed' || this.state.phase === 'submitted') return
     for (const item of watchedCases(this.state)) {
       const judged = item.empty ? null : assessCase(this.state, item.id, this.now)

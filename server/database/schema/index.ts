@@ -1,4 +1,5 @@
 export * from './changes'
+export * from './lessons'
 export * from './outages'
 export * from './people'
 export * from './sites'

@@ -5,10 +5,12 @@ import { LATE_MS } from '../hold/history'
 import { assessCase } from '../holding/for-outage'
 import type { Draft } from './draft'
 import { addServerEntry } from './draft'
+import { plantChanges } from './plant-entries'
 
-/** Entries of the server's own after others were added: a verdict where it changed. */
+/** Entries of the server's own after others were added: a warning of the plant or a verdict where it changed. */
 export async function followUp(draft: Draft): Promise<void> {
   const { state } = draft
+  for (const body of plantChanges(state, draft.now)) await addServerEntry(draft, 'plant-warned', body)
   if (state.darks.length === 0 || state.phase === 'sealed' || state.phase === 'submitted') return
   for (const item of watchedCases(state)) {
     if (item.empty) continue

@@ -4,6 +4,7 @@ import { isFrozenKind } from '../../../shared/schemas/case-kinds'
 import { cases, circuits, controllers, instruments, points, racks, sites, suctionGroups } from '../../database/schema'
 import type { Queries } from '../database'
 import { RELIEF_VALVE } from '../../../shared/schemas/equipment'
+import { tauOrigins } from '../learn/lessons'
 import { DEFAULT_TAU_HOURS } from '../hold'
 import { caseLimit, classById, rulebookById } from '../holding'
 
@@ -28,6 +29,7 @@ export async function snapshotOf(db: Queries, controllerId: string): Promise<Sna
   const caseRows = await db.select().from(cases).where(eq(cases.controllerId, controllerId)).orderBy(asc(cases.name), asc(cases.id))
   const pointRows = await db.select().from(points).where(eq(points.controllerId, controllerId)).orderBy(asc(points.tag))
   const instrumentRows = await db.select().from(instruments).where(eq(instruments.siteId, site.id)).orderBy(asc(instruments.name))
+  const origins = await tauOrigins(db, caseRows)
   const rulebook = rulebookById(site.rulebook)
   if (!rulebook) throw new Error(`Site ${site.code} names the rulebook ${site.rulebook}, which this program does not hold`)
   return {
@@ -49,7 +51,7 @@ export async function snapshotOf(db: Queries, controllerId: string): Promise<Sna
       return {
         id: item.id, name: item.name, kind: item.kind, foodClass: item.foodClass, usualC: item.usualC,
         limit: { value, unit: rulebook.unit }, stricter,
-        tauHours: item.tauHours ?? (isFrozenKind(item.kind) ? FROZEN_TAU_HOURS : DEFAULT_TAU_HOURS[item.kind]), tauIsOwn: item.tauHours !== null, tauFrom: 0,
+        tauHours: item.tauHours ?? (isFrozenKind(item.kind) ? FROZEN_TAU_HOURS : DEFAULT_TAU_HOURS[item.kind]), tauIsOwn: item.tauHours !== null, tauFrom: origins.get(item.id) ?? 0,
         runsAlone: item.runsAlone, circuitId: item.circuitId,
       }
     }),

@@ -12,6 +12,10 @@ export const VERDICT_WORDS: Record<Verdict, string> = {
   unknown: 'not known: no reading in time',
 }
 
+/** What may be wrong with the plant while points are in hand. */
+export const PLANT_FAULTS = ['current-above-plate', 'discharge-high', 'suction-below-forecast', 'suction-near-cut-out'] as const
+export type PlantFault = (typeof PLANT_FAULTS)[number]
+
 /** Kinds that only the server signs. */
 export const serverKinds = {
   'signer-named': { 1: z.object({
@@ -33,6 +37,14 @@ export const serverKinds = {
     source: z.string().max(400),
     act: z.string().max(600).nullable(),
     why: z.array(z.string().max(600)).max(40),
+    judgedAt: time,
+  }).strict() },
+  'plant-warned': { 1: z.object({
+    fault: z.enum(PLANT_FAULTS),
+    about: z.string().min(1).max(60), // a suction group's id, or a point's tag
+    words: z.string().min(1).max(600),
+    act: z.string().max(600),
+    over: z.boolean(), // the reading that it came from has been followed by a better one
     judgedAt: time,
   }).strict() },
   'entry-refused': { 1: z.object({ device: uuid, n: z.number().int().min(1), id: uuid, hash: z.string().regex(/^[0-9a-f]{64}$/), reason: z.string().max(1000) }).strict() },

@@ -28,6 +28,7 @@ describe('an outage without trouble', () => {
       'Without control': '23 min 10 s of 25 min planned',
       'Points in hand': '18 set, 18 back in auto, 18 proven',
       'Rounds': '9 taken, none late',
+      'Forecasts': expect.stringMatching(/^0\.\d °F off in the median of \d+ readings, no case came early$/) as string,
       'Highest product': '40.2 °F, Dairy wall 4–7',
       'Above a limit': '0 of 10 cases',
       'Product discarded': 'none',

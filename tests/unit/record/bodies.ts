@@ -1,7 +1,7 @@
 /** A body of every kind of entry that a person or the server signs, as its schema writes it. */
 import type { BodyInput, EntryKind } from '../../../shared/record/kinds'
 import { SEAL_STATEMENT, SUBMIT_STATEMENT } from '../../../shared/record/kinds/review'
-import { BEGAN, CIRCUIT, DAIRY, DRAWING, opening, planOf, pressure, reading } from './store'
+import { BEGAN, CIRCUIT, DAIRY, DRAWING, GROUP, opening, planOf, pressure, reading } from './store'
 import { isoTime } from '../../../shared/record/entry'
 import { uuidFor } from '../../support/record'
 
@@ -46,5 +46,6 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'signer-named': { device: entryId, deviceName: 'Phone', person: entryId, name: 'Ada Quill', role: 'technician', publicKey: 'k'.repeat(43), enrolledAt: isoTime(BEGAN) },
   'outage-numbered': { code: 'Q001-0001' },
   'verdict-changed': { caseId: DAIRY, verdict: 'act', deadline: isoTime(BEGAN), minutesAbove: 12.5, clause: '3-501.16', source: 'FDA', act: 'Cool it', why: ['above'], judgedAt: isoTime(BEGAN) },
+  'plant-warned': { fault: 'discharge-high', about: GROUP, words: 'discharge 380 psig', act: 'Add a condenser fan', over: false, judgedAt: isoTime(BEGAN) },
   'entry-refused': { device: entryId, n: 3, id: entryId, hash: 'e'.repeat(64), reason: words },
 }
