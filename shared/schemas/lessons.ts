@@ -16,6 +16,8 @@ export interface CaseLesson {
   was: { tauHours: number, words: string }
   /** why it is not offered; null: it is */
   not: string | null
+  /** what speaks against it, for who decides; null: nothing */
+  caution: string | null
   accepted: { by: string, at: string } | null
 }
 

@@ -94,8 +94,8 @@ function withoutControl(state: OutageState, known: SnapshotCase, taken: readonly
   return { ...forecast, toward: 'low-mark', holdMinutes: left, likelyMinutes: left, curve: coolingCurve(known, held, last?.c ?? known.usualC, from) }
 }
 
-/** Whether the last two readings since control was lost lie over the one before it. */
-function isWarming(known: SnapshotCase, taken: readonly Taken[], dark: DarkInterval, now: number): boolean {
+/** Whether the last two readings since control was lost lie over the one before it by more than a thermometer and its reader make. */
+export function isWarming(known: SnapshotCase, taken: readonly Taken[], dark: DarkInterval, now: number): boolean {
   const start = taken.findLast(reading => reading.at <= dark.from)?.c ?? known.usualC
   const since = taken.filter(reading => reading.at > dark.from && reading.at <= now).slice(-2)
   return since.length > 0 && since.reduce((sum, reading) => sum + reading.c, 0) / since.length > start + WARMING_K

@@ -7,9 +7,11 @@ import { isFrozenKind } from '../../../shared/schemas/case-kinds'
 import { LESSON_READINGS_MIN, tauOrigin } from '../../../shared/schemas/lessons'
 import type { CaseLesson, StepTimes } from '../../../shared/schemas/lessons'
 import { fitAt, takenOf } from '../hold/evidence'
+import { isWarming } from '../hold/for-outage'
 import { isHeldOn } from '../hold/held-case'
 
 const MINUTE = 60_000
+const HELD_CAUTION = 'It was held on by hand and warmed all the same: with nothing running it may warm faster.'
 
 type Taught = Omit<CaseLesson, 'accepted'>
 
@@ -17,18 +19,20 @@ type Taught = Omit<CaseLesson, 'accepted'>
 export function casesTaught(state: OutageState, entries: readonly StoredEntry[]): Taught[] {
   const ends = state.darks.map(dark => endOf(state, entries, dark))
   return state.snapshot.cases.filter(known => !known.runsAlone && state.cases[known.id]?.touched).map((known) => {
-    const fits = ends.map(({ dark, at, before }) => ({ at, before, running: fitAt(state, known, takenOf(state, known.id), dark, untilAct(state, known.id, dark, at)) }))
+    const fits = ends.map(({ dark, at, before }) => ({ dark, at, before, running: fitAt(state, known, takenOf(state, known.id), dark, untilAct(state, known.id, dark, at)) }))
     const best = fits.sort((a, b) => b.running.since - a.running.since || a.at - b.at)[0]
     const lesson = { caseId: known.id, name: known.name, readings: best?.running.since ?? 0, rmseK: best?.running.fit.rmseK ?? 0, was: { tauHours: known.tauHours, words: tauOrigin(known.tauIsOwn, known.tauFrom) } }
-    const not = reasonAgainst(known, lesson.readings, best?.before ?? null)
-    return { ...lesson, tauHours: not === null ? best!.running.fit.tauHours : null, not }
+    const held = best !== undefined && isHeldOn(best.before, known)
+    const warmed = best !== undefined && isWarming(known, takenOf(state, known.id), best.dark, best.at)
+    const not = reasonAgainst(known, lesson.readings, held && !warmed)
+    return { ...lesson, tauHours: not === null ? best!.running.fit.tauHours : null, not, caution: not === null && held ? HELD_CAUTION : null }
   })
 }
 
-function reasonAgainst(known: SnapshotCase, readings: number, before: OutageState | null): string | null {
+function reasonAgainst(known: SnapshotCase, readings: number, held: boolean): string | null {
   if (isFrozenKind(known.kind)) return 'frozen product has no time constant'
   if (readings < LESSON_READINGS_MIN) return readings === 0 ? 'not read without control' : `only ${readings === 1 ? '1 reading' : `${readings} readings`} without control`
-  if (before && isHeldOn(before, known)) return 'it was held on by hand, so that its readings do not show it with nothing running'
+  if (held) return 'it was held on by hand and did not warm'
   return null
 }
 

@@ -8,12 +8,12 @@ import { technician } from '../../support/record'
 import { DAIRY, FISH, goOn, inHand, reading, storyTo } from '../record/store'
 
 /** Nothing runs: the only compressor is off by hand; the dairy warms with a time constant of 4 h, where 6 h were assumed. */
-function lesson({ reads = 6, act = false, held = false } = {}) {
+function lesson({ reads = 6, act = false, held = false, tauHours = 4 } = {}) {
   const writer = storyTo('dark')
   if (!held) writer.sign(technician, 'point-in-hand', inHand('C-1', { hand: 'off', seen: 'not-running', reason: 'low suction' }))
   const from = writer.now
   for (let index = 1; index <= reads; index++) {
-    writer.pass(8).sign(technician, 'reading-taken', reading(DAIRY, Math.round(10 * inUnit(chilledAt(2.78, 24, 4, (writer.now - from) / 60_000), 'F')) / 10, { round: index }))
+    writer.pass(8).sign(technician, 'reading-taken', reading(DAIRY, Math.round(10 * inUnit(chilledAt(2.78, 24, tauHours, (writer.now - from) / 60_000), 'F')) / 10, { round: index }))
     if (act && index === 2) writer.pass(1).sign(technician, 'act-signed', { caseId: DAIRY, act: 'night-covers', product: '', quantity: null, place: '', words: '', photos: [] })
   }
   writer.sign(technician, 'control-back', { backAt: isoTime(writer.now) })
@@ -38,10 +38,15 @@ describe('what a record teaches of its cases', () => {
   })
 
   it('offers nothing of a case that was held on by hand, though all is back in auto by now', () => {
-    const { writer, dairy } = lesson({ held: true })
-    expect(dairy.not).toContain('held on by hand')
+    const { writer, dairy } = lesson({ held: true, tauHours: 400 })
+    expect(dairy.not).toBe('it was held on by hand and did not warm')
     goOn(writer, 'hand-back', 'settle')
-    expect(casesTaught(writer.state, writer.entries).find(item => item.caseId === DAIRY)!.not).toContain('held on by hand')
+    expect(casesTaught(writer.state, writer.entries).find(item => item.caseId === DAIRY)!.not).toBe('it was held on by hand and did not warm')
+  })
+
+  it('offers with a caution what warmed though it was held on by hand', () => {
+    expect(lesson({ held: true }).dairy).toMatchObject({ not: null, caution: expect.stringContaining('held on by hand') as string })
+    expect(lesson().dairy.caution).toBeNull()
   })
 
   it('learns only until the first act that changes how the case warms', () => {
