@@ -31,7 +31,7 @@ test('the technician\'s screens', async ({ page }) => {
   const dark = items.find(item => item.phase === 'dark')!
   const caseId = Object.keys((await (await page.request.get(`/api/outages/${dark.id}`)).json()).cases)[0]
   const tag = Object.keys((await (await page.request.get(`/api/outages/${dark.id}`)).json()).points)[0]
-  for (const path of ['/', '/outages/new', '/outages/lost', '/account', '/rulebooks']) await look(page, path, true)
+  for (const path of ['/', '/outages/new', '/outages/lost', '/account', '/rulebooks', '/rulebooks/us-food-code-2022', '/rulebooks/us-food-code-2022/trial']) await look(page, path, true)
   for (const path of ['', '/round', '/points', `/points/${encodeURIComponent(tag!)}`, '/pressures', '/steps', '/act', `/act/${caseId}`, '/turn-back', '/back', '/note', '/plan', '/questioned', '/correct', '/questions']) await look(page, `/outages/${dark.id}${path}`, true)
   const planned = items.find(item => item.phase === 'plan')!
   for (const path of ['', '/plan-edit', '/call-off', '/lost', '/checks', '/go-dark', '/return', '/proofs', '/exception', '/defrost', '/submit']) await look(page, `/outages/${planned.id}${path}`, true)
@@ -50,5 +50,5 @@ test('the screens of the others', async ({ page, open }) => {
   const admin = await open('desk')
   await signInAs(admin, people.administrator)
   const sites = await (await admin.request.get('/api/sites')).json() as { id: string }[]
-  for (const path of ['/', '/people', '/people/new', '/sites', `/sites/${sites[0]!.id}`, '/work-kinds', '/account']) await look(admin, path, false)
+  for (const path of ['/', '/people', '/people/new', '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
 })

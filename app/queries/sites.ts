@@ -1,5 +1,7 @@
 import type { ImportPreview } from '~~/shared/import/preview'
 import type { ResourceItem, ResourceName, SiteItem, SiteLine, SiteView } from '~~/shared/schemas/site-view'
+import type { ChangeItem } from '~~/shared/schemas/changes'
+import type { SiteLimits } from '~~/shared/schemas/equipment'
 import { readFault } from '~/utils/api-error'
 
 /** The sites that the person may see, by name. */
@@ -49,4 +51,18 @@ export function previewPoints(controller: string, text: string): Promise<ImportP
 export function importPoints(controller: string, text: string): Promise<ImportPreview> {
   const path: string = `/api/controllers/${controller}/points/import`
   return $fetch<ImportPreview>(path, { method: 'POST', body: { text } })
+}
+
+export interface SiteLimitsAnswer extends SiteLimits { changes: ChangeItem[] }
+
+/** How a site judges more strictly than its rulebook, with who changed that when. */
+export function useSiteLimits(id: string) {
+  const request = useRequestFetch()
+  const path: string = `/api/sites/${id}/limits`
+  return useAsyncData(`site-limits-${id}`, () => request<SiteLimitsAnswer>(path), { lazy: true })
+}
+
+export function saveSiteLimits(id: string, body: SiteLimits): Promise<SiteLimits> {
+  const path: string = `/api/sites/${id}/limits`
+  return $fetch<SiteLimits>(path, { method: 'PUT', body })
 }

@@ -22,3 +22,15 @@ export interface ChangeItem {
   deed: ChangeDeed
   fields: FieldChange[]
 }
+
+/** Who set something last, and when (ISO 8601 UTC). */
+export interface SettingMark { at: string, by: string }
+
+/** Who changed each field last, and when. @param latestFirst changes of one thing */
+export function settingMarks(latestFirst: readonly Pick<ChangeItem, 'at' | 'by' | 'fields'>[]): Record<string, SettingMark> {
+  const marks: Record<string, SettingMark> = {}
+  for (const { at, by, fields } of latestFirst) {
+    for (const { field } of fields) marks[field] ??= { at, by }
+  }
+  return marks
+}

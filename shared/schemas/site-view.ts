@@ -1,4 +1,5 @@
 import type { z } from 'zod'
+import type { SettingMark } from './changes'
 import { caseSchema, circuitSchema, controllerSchema, instrumentSchema, pointSchema, rackSchema, suctionGroupSchema } from './equipment'
 import type { SiteLimits, siteSchema } from './equipment'
 import type { workKindSchema } from './work'
@@ -46,6 +47,9 @@ export interface SiteView extends SiteItem, SiteLimits {
   points: ResourceItem<'points'>[]
   instruments: ResourceItem<'instruments'>[]
 }
+
+/** A site under the rulebook that judges its product, with who set each of its stricter settings. */
+export interface BookSite extends SiteLimits { id: string, code: string, name: string, timeZone: string, set: Record<string, SettingMark> }
 
 export type WorkKindValue = z.output<typeof workKindSchema>
 export type WorkKindItem = WorkKindValue & { id: string }

@@ -86,6 +86,7 @@ export const MATRIX: Row[] = [
 
   { route: 'GET /api/rulebooks', expected: ALL(200), path: () => '/api/rulebooks' },
   { route: 'GET /api/rulebooks/[id]', expected: ALL(200), path: () => '/api/rulebooks/us-food-code-2022', unknown: '/api/rulebooks/none-such' },
+  { route: 'GET /api/rulebooks/[id]/sites', expected: ALL(200), path: () => '/api/rulebooks/us-food-code-2022/sites', unknown: '/api/rulebooks/none-such/sites' },
   { route: 'GET /api/refrigerants', expected: ALL(200), path: () => '/api/refrigerants' },
   { route: 'GET /api/refrigerants/[id]/saturation', expected: ALL(200), path: () => '/api/refrigerants/R-744/saturation?celsius=-10', unknown: '/api/refrigerants/R-0/saturation?celsius=0' },
   { route: 'POST /api/holding/assess', expected: ALL(422), path: () => '/api/holding/assess', body: () => ({}) },

@@ -4,6 +4,7 @@ import type { Database } from '../../utils/database'
 import { fileStorage } from '../../utils/files/storage'
 import { serverSigner } from '../../utils/record/server-signer'
 import { devices, people, sites } from '../schema'
+import { seedLimits } from './limits'
 import { joinedAt, seedPeople } from './people'
 import { seedSites } from './sites'
 import { tellAbbotGreenUpdate } from './stories/abbot-green-update'
@@ -32,6 +33,7 @@ export async function seedDemo(db: Database, now: number, storage: Storage = fil
     const equipment = await seedSites(tx, now)
     for (const [code, outageCount] of Object.entries(EARLIER_OUTAGES)) await tx.update(sites).set({ outageCount }).where(eq(sites.code, code))
     const cast = await seedPeople(tx, equipment.sites, now)
+    await seedLimits(tx, equipment.sites, joinedAt(now).getTime())
     // A transaction within a transaction is a savepoint: appending needs no more than that.
     const stage = { db: tx as unknown as Database, storage, now, equipment, cast }
     await tellQuarryStreetUpdate(stage)

@@ -6,19 +6,10 @@ import type { TemperatureUnit } from '~~/shared/schemas/assess'
 import type { Case, Outcome } from './rules/finding'
 import { carefulMs } from './stretches'
 import type { Counting } from './stretches'
-import type { SourceMark } from './types'
-import { instantWords, minutesWords, temperatureWords } from './words'
+import { instantWords, MARK_WORDS, minutesWords, temperatureWords } from './words'
 
 /** How many periods are listed one by one before the rest is only counted. */
 const MOST_PERIODS = 20
-
-const MARK_WORDS: Record<SourceMark, string> = {
-  'V': 'read in the official text',
-  'VA': 'read in a law that adopts the same text',
-  'VS': 'read in a secondary copy',
-  'M': 'from memory',
-  'common practice': 'common practice, no source',
-}
 
 interface Period {
   from: number

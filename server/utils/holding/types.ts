@@ -139,6 +139,8 @@ export interface Notice extends Authority {
 export interface Rulebook {
   id: string
   version: string
+  /** What is otherwise than in the version before it, a sentence each; nothing: it is the first. */
+  changed: string[]
   name: string
   unit: TemperatureUnit
   classes: FoodClass[]

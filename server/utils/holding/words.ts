@@ -4,6 +4,16 @@
  */
 import type { TemperatureUnit } from '~~/shared/schemas/assess'
 import { MINUTE } from './log'
+import type { SourceMark } from './types'
+
+/** How a rule was come by, in words. */
+export const MARK_WORDS: Record<SourceMark, string> = {
+  'V': 'read in the official text',
+  'VA': 'read in a law that adopts the same text',
+  'VS': 'read in a secondary copy',
+  'M': 'from memory',
+  'common practice': 'common practice, no source',
+}
 
 /** A figure with at most two decimals and a true minus sign. */
 export function figureWords(value: number): string {

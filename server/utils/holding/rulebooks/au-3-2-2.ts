@@ -24,6 +24,7 @@ function twoHourFourHour(over: Threshold): ClockRule {
 export const au322: Rulebook = {
   id: 'au-3-2-2',
   version: '2026-01',
+  changed: [],
   name: 'Australia, Standard 3.2.2 and the 2-hour/4-hour rule',
   unit: 'C',
   classes: [

@@ -5,6 +5,7 @@ const SHEET: Authority = { clause: 'outage sheet for food service', source: 'Can
 export const ca4c: Rulebook = {
   id: 'ca-4c',
   version: '2026-01',
+  changed: [],
   name: 'Canada, 4 °C and 2 hours',
   unit: 'C',
   classes: [

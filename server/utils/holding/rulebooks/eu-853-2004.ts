@@ -36,6 +36,7 @@ const STATE_CHOICE: Authority = { clause: 'Article 5(2), Member State’s choice
 export const eu8532004: Rulebook = {
   id: 'eu-853-2004',
   version: '2026-01',
+  changed: [],
   name: 'European Union, product temperatures of Regulation 853/2004 and quick-frozen food',
   unit: 'C',
   classes: [

@@ -31,6 +31,11 @@ export function rulebookById(id: string, version?: string): Rulebook | undefined
   return rulebooks.findLast(rulebook => rulebook.id === id && (version === undefined || rulebook.version === version))
 }
 
+/** Every version of a rulebook, the newest first. */
+export function versionsOf(id: string): Rulebook[] {
+  return rulebooks.filter(rulebook => rulebook.id === id).reverse()
+}
+
 export function classById(rulebook: Rulebook, id: string): FoodClass | undefined {
   return rulebook.classes.find(foodClass => foodClass.id === id)
 }

@@ -8,6 +8,7 @@ const ICE_CREAM_MARK: Authority = { clause: 'keep mark −12 °C', source: 'comm
 export const ukEngland2013: Rulebook = {
   id: 'uk-england-2013',
   version: '2026-01',
+  changed: [],
   name: 'England, Food Safety and Hygiene Regulations 2013 and quick-frozen foodstuffs',
   unit: 'C',
   classes: [

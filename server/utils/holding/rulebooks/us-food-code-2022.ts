@@ -28,6 +28,7 @@ const DISCARD_AFTER_FOUR_HOURS = {
 export const usFoodCode2022: Rulebook = {
   id: 'us-food-code-2022',
   version: '2026-01',
+  changed: [],
   name: 'United States, FDA Food Code 2022 with the outage practice of state agencies',
   unit: 'F',
   classes: [

@@ -22,6 +22,7 @@ function line(over: Threshold, minutes: number, words: string): ClockRule {
 export const usMiCounty: Rulebook = {
   id: 'us-mi-county',
   version: '2026-01',
+  changed: [],
   name: 'Michigan, county outage guidance (Berrien County)',
   unit: 'F',
   classes: [

@@ -16,6 +16,7 @@ const FROM_50: Cell = { to: null, included: false, verdict: 'discard', ask: null
 export const usSfDph: Rulebook = {
   id: 'us-sf-dph',
   version: '2026-01',
+  changed: [],
   name: 'San Francisco, outage chart of the Department of Public Health',
   unit: 'F',
   classes: [

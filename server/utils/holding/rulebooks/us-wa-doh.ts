@@ -37,6 +37,7 @@ const FROM_51_TOO_LONG: ChartCell<Threshold> = {
 export const usWaDoh: Rulebook = {
   id: 'us-wa-doh',
   version: '2026-01',
+  changed: [],
   name: 'Washington State, outage chart of the Department of Health',
   unit: 'F',
   classes: [
