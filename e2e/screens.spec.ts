@@ -50,5 +50,5 @@ test('the screens of the others', async ({ page, open }) => {
   const admin = await open('desk')
   await signInAs(admin, people.administrator)
   const sites = await (await admin.request.get('/api/sites')).json() as { id: string }[]
-  for (const path of ['/', '/people', '/people/new', '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
+  for (const path of ['/', '/people', '/people/new', '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/history`, '/people/history', '/work-kinds/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
 })

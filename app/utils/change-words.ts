@@ -1,7 +1,15 @@
 import { minuteWords, temperatureWords } from '~~/shared/charts/words'
-import type { ChangeItem } from '~~/shared/schemas/changes'
-import { classById } from '~~/server/utils/holding'
+import type { ChangeDeed, ChangeItem } from '~~/shared/schemas/changes'
+import type { Role } from '~~/shared/schemas/people'
+import { ROLE_WORDS } from '~~/shared/schemas/people'
+import type { ResourceName, SiteView } from '~~/shared/schemas/site-view'
+import { RESOURCE_WORDS } from '~~/shared/schemas/site-view'
+import type { StepPlan } from '~~/shared/schemas/work'
+import { classById, rulebookById } from '~~/server/utils/holding'
 import type { Rulebook } from '~~/server/utils/holding'
+import type { FieldSpec } from './equipment-fields'
+import { fieldWords, RESOURCE_FIELDS, SITE_FIELDS } from './equipment-fields'
+import { quantityWords } from './site-units'
 
 /** What a change of limits says, a line a setting. @param book the rulebook in whose unit they are */
 export function limitChangeLines({ fields }: Pick<ChangeItem, 'fields'>, book: Rulebook | undefined): string[] {
@@ -19,4 +27,49 @@ function classSettingWords(value: unknown, unit: 'F' | 'C'): string {
   const { limit = null, minutes = null } = (value ?? {}) as { limit?: number | null, minutes?: number | null }
   const parts = [limit === null ? '' : `within ${temperatureWords(limit, unit)}`, minutes === null ? '' : `at most ${minuteWords(minutes)}`].filter(Boolean)
   return parts.length > 0 ? parts.join(' and ') : 'as the rulebook'
+}
+
+const DEEDS: Record<ChangeDeed, string> = { added: 'added', changed: 'changed', deleted: 'deleted' }
+const OTHER_LABELS: Record<string, string> = {
+  email: 'E-mail', name: 'Name', role: 'Role', sites: 'Sites', switchedOff: 'Switched off', password: 'Password',
+  steps: 'Steps', rollBack: 'Way back', addedPoints: 'Added points', changedPoints: 'Changed points',
+}
+
+/** 'Rack A, a rack, changed'; 'The site itself changed'. */
+export function changeTitle({ subject, subjectName, deed }: ChangeItem): string {
+  switch (subject) {
+    case 'site': return deed === 'added' ? 'The site added' : 'The site itself changed'
+    case 'limits': return 'Limits changed'
+    case 'person': return `${subjectName} ${DEEDS[deed]}`
+    case 'work-kind': return `${subjectName} ${DEEDS[deed]}`
+    default: return `${subjectName}, ${RESOURCE_WORDS[subject].one}, ${DEEDS[deed]}`
+  }
+}
+
+/** What a change says, a line a field, in the site's own units. @param site null: people and kinds of work have no units */
+export function changeLines(change: ChangeItem, site: SiteView | null): string[] {
+  if (change.subject === 'limits') return limitChangeLines(change, site ? rulebookById(site.rulebook) : undefined)
+  return change.fields.map(({ field, before, after }) => {
+    const spec = specOf(change.subject, field)
+    const words = (value: unknown) => valueWords(value, field, spec, site)
+    const label = spec?.label ?? OTHER_LABELS[field] ?? field
+    if (change.deed === 'added') return `${label}: ${words(after)}`
+    if (change.deed === 'deleted') return `${label}: ${words(before)}`
+    return before === null && (field === 'password' || field.endsWith('Points')) ? `${label}: ${words(after)}` : `${label}: ${words(after)}, before ${words(before)}`
+  })
+}
+
+function specOf(subject: ChangeItem['subject'], field: string): FieldSpec | undefined {
+  if (subject === 'site') return SITE_FIELDS.find(spec => spec.name === field)
+  return subject in RESOURCE_FIELDS ? RESOURCE_FIELDS[subject as ResourceName].find(spec => spec.name === field) : undefined
+}
+
+function valueWords(value: unknown, field: string, spec: FieldSpec | undefined, site: SiteView | null): string {
+  if (value === null || value === '' || (Array.isArray(value) && value.length === 0)) return 'nothing'
+  if (field === 'role') return ROLE_WORDS[value as Role].toLowerCase()
+  if (field === 'steps' || field === 'rollBack') return (value as StepPlan[]).map(step => `${step.name} ${step.shortest}–${step.likely}–${step.longest} min${step.dark ? ', dark' : ''}`).join('; ')
+  if (typeof value === 'boolean') return value ? 'yes' : 'no'
+  if (spec?.quantity && site) return quantityWords(value as number, spec.quantity, site)
+  if (spec) return fieldWords(spec, value, { site, values: {} })
+  return Array.isArray(value) ? value.join(', ') : typeof value === 'object' ? JSON.stringify(value) : String(value)
 }

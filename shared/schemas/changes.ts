@@ -1,3 +1,4 @@
+import { z } from 'zod'
 import { RESOURCE_NAMES } from './site-view'
 
 /** What an administrator changes; its history is kept for ever. */
@@ -34,3 +35,12 @@ export function settingMarks(latestFirst: readonly Pick<ChangeItem, 'at' | 'by' 
   }
   return marks
 }
+
+/** A page of a history; `next` is asked for as `before`. */
+export interface ChangePage { items: ChangeItem[], next: string | null }
+
+export const changePageSchema = z.object({ before: z.string().uuid().optional() })
+export const changeListSchema = changePageSchema.extend({
+  subject: z.enum(['person', 'work-kind'], { errorMap: () => ({ message: 'Choose person or work-kind' }) }),
+  subjectId: z.string().uuid().optional(),
+})

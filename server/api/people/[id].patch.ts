@@ -11,5 +11,5 @@ export default defineEventHandler(async (event) => {
   const { id } = readParamsAs(event, z.object({ id: z.string().uuid() }), 'person')
   const change = await readBodyAs(event, personUpdateSchema)
   if (id === administrator.id && change.password !== undefined) return forbidden('Change your own password on your account page')
-  return updatePerson(id, change)
+  return updatePerson(id, administrator, change)
 })

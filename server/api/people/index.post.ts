@@ -5,8 +5,8 @@ import { createPerson } from '~~/server/utils/people/manage'
 
 /** Makes an account with a temporary password. */
 export default defineEventHandler(async (event) => {
-  requireRole(event, 'administrator')
-  const person = await createPerson(await readBodyAs(event, personCreateSchema))
+  const administrator = requireRole(event, 'administrator')
+  const person = await createPerson(administrator, await readBodyAs(event, personCreateSchema))
   setResponseStatus(event, 201)
   return person
 })

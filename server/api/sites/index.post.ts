@@ -6,8 +6,9 @@ import { readBodyAs } from '~~/server/utils/parse'
 
 /** Makes a site, still without equipment. */
 export default defineEventHandler(async (event) => {
-  requireEditor(requirePerson(event))
-  const site = await createSite(await readBodyAs(event, siteSchema))
+  const person = requirePerson(event)
+  requireEditor(person)
+  const site = await createSite(person, await readBodyAs(event, siteSchema))
   setResponseStatus(event, 201)
   return site
 })

@@ -6,9 +6,10 @@ import { readParamsAs } from '~~/server/utils/parse'
 
 /** Deletes a kind of work; plans made before keep their own steps. */
 export default defineEventHandler(async (event) => {
-  requireEditor(requirePerson(event))
+  const person = requirePerson(event)
+  requireEditor(person)
   const { id } = readParamsAs(event, z.object({ id: z.string().uuid() }), 'kind of work')
-  await deleteWorkKind(id)
+  await deleteWorkKind(id, person)
   setResponseStatus(event, 204)
   return null
 })

@@ -7,7 +7,8 @@ import { readBodyAs, readParamsAs } from '~~/server/utils/parse'
 
 /** Changes a kind of work; plans made before keep their own steps. */
 export default defineEventHandler(async (event) => {
-  requireEditor(requirePerson(event))
+  const person = requirePerson(event)
+  requireEditor(person)
   const { id } = readParamsAs(event, z.object({ id: z.string().uuid() }), 'kind of work')
-  return updateWorkKind(id, await readBodyAs(event, workKindSchema.partial()))
+  return updateWorkKind(id, person, await readBodyAs(event, workKindSchema.partial()))
 })

@@ -6,8 +6,9 @@ import { readBodyAs } from '~~/server/utils/parse'
 
 /** Makes a kind of work. */
 export default defineEventHandler(async (event) => {
-  requireEditor(requirePerson(event))
-  const kind = await createWorkKind(await readBodyAs(event, workKindSchema))
+  const person = requirePerson(event)
+  requireEditor(person)
+  const kind = await createWorkKind(person, await readBodyAs(event, workKindSchema))
   setResponseStatus(event, 201)
   return kind
 })

@@ -1,5 +1,5 @@
 import { and, desc, eq, lt } from 'drizzle-orm'
-import type { ChangeItem, ChangeSubject } from '../../../shared/schemas/changes'
+import type { ChangeItem, ChangePage, ChangeSubject } from '../../../shared/schemas/changes'
 import { changes } from '../../database/schema'
 import type { Queries } from '../database'
 
@@ -14,4 +14,13 @@ export async function listChanges(db: Queries, { siteId, subject, subjectId, bef
     before === undefined ? undefined : lt(changes.id, before),
   )).orderBy(desc(changes.id)).limit(most)
   return rows.map(({ id, at, personName, subject, subjectId, subjectName, deed, fields }) => ({ id, at: at.toISOString(), by: personName, subject, subjectId, subjectName, deed, fields }))
+}
+
+/** Changes that one page holds. */
+const PAGE = 50
+
+/** One page of changes; `next` is what to ask for as `before`, null at the end. */
+export async function pageOfChanges(db: Queries, filter: ChangeFilter): Promise<ChangePage> {
+  const items = await listChanges(db, filter, PAGE + 1)
+  return { items: items.slice(0, PAGE), next: items.length > PAGE ? items[PAGE - 1]!.id : null }
 }

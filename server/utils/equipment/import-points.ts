@@ -6,6 +6,9 @@ import { FILE_MAX_BYTES } from '../../../shared/import/limits'
 import { readPointList } from '../../../shared/import/points'
 import type { ImportPreview } from '../../../shared/import/preview'
 import { points } from '../../database/schema'
+import { differences } from '../changes/differences'
+import type { Changer } from '../changes/keep'
+import { keepChange } from '../changes/keep'
 import { tooLarge, unprocessable, unreadable } from '../errors'
 import { readBodyAs } from '../parse'
 import { landPoints, previewOf } from './land-points'
@@ -41,7 +44,7 @@ export async function previewPoints(siteId: string, controllerId: string, text: 
 }
 
 /** Stores a list that has no fault, all of it or nothing, and says what came of it. 422 with all faults where it has any. */
-export async function importPoints(siteId: string, controllerId: string, text: string): Promise<ImportPreview> {
+export async function importPoints(siteId: string, by: Changer, controllerId: string, text: string): Promise<ImportPreview> {
   return withSite(siteId, async (tx, site) => {
     const { landings, faults } = landPoints(readPointList(text), site, controllerId)
     if (faults.length > 0) {
@@ -52,6 +55,14 @@ export async function importPoints(siteId: string, controllerId: string, text: s
     if (added.length > 0) await tx.insert(points).values(added)
     for (const { id, point, landed } of landings) {
       if (id !== null && landed.outcome === 'changed') await tx.update(points).set(point).where(eq(points.id, id))
+    }
+    const changed = landings.filter(({ id, landed }) => id !== null && landed.outcome === 'changed').map(({ point }) => point)
+    const tags = (list: { tag: string }[]) => list.length > 0 ? list.map(({ tag }) => tag) : null
+    if (added.length + changed.length > 0) {
+      await keepChange(tx, by, {
+        subject: 'points', subjectId: controllerId, subjectName: `Point list of ${site.controllers.find(({ id }) => id === controllerId)?.name ?? 'the controller'}`, siteId, deed: 'changed',
+        fields: differences({}, { addedPoints: tags(added), changedPoints: tags(changed) }),
+      })
     }
     return previewOf(landings, [], site, controllerId)
   })

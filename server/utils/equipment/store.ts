@@ -7,11 +7,15 @@ import type { ResourceItem, ResourceName, ResourceValue, SiteView } from '../../
 import { cases, circuits, controllers, instruments, outages, points, racks, sites, suctionGroups } from '../../database/schema'
 import type { Queries } from '../database'
 import { useDatabase } from '../database'
+import { differences } from '../changes/differences'
+import type { Changer } from '../changes/keep'
+import { keepChange } from '../changes/keep'
 import { conflict, notFound, unprocessable } from '../errors'
 import { CHECKS } from './checks'
 import { placed } from './check-point'
 import { refuseFault } from './fault'
 import { viewSite } from './site-view'
+import { toldValue } from './told'
 import { usesOf } from './uses'
 
 interface Resource {
@@ -55,19 +59,20 @@ function checked<R extends ResourceName>(resource: R, value: ResourceValue<R>, s
 }
 
 /** Adds to a site. 409: a name in use, or too many; 422: something it refers to is wrong. */
-export async function createItem<R extends ResourceName>(siteId: string, resource: R, value: ResourceValue<R>): Promise<ResourceItem<R>> {
+export async function createItem<R extends ResourceName>(siteId: string, by: Changer, resource: R, value: ResourceValue<R>): Promise<ResourceItem<R>> {
   const { table, list, parent, most } = RESOURCES[resource]
   return withSite(siteId, async (tx, site) => {
     const settled = checked(resource, value, site, null)
     const parentOf = (item: object) => (item as Record<string, unknown>)[parent]
     if (site[list].filter(item => parentOf(item) === parentOf(settled)).length >= most) return conflict(`At most ${most} ${RESOURCE_WORDS[resource].many}`)
     const [row] = await tx.insert(table).values({ ...settled, siteId }).returning({ id: table.id })
+    await keepItem(tx, by, site, resource, row!.id, null, settled)
     return { ...settled, id: row!.id }
   })
 }
 
 /** Changes fields; what it belongs to stays. */
-export async function updateItem<R extends ResourceName>(siteId: string, resource: R, id: string, change: Partial<ResourceValue<R>>): Promise<ResourceItem<R>> {
+export async function updateItem<R extends ResourceName>(siteId: string, by: Changer, resource: R, id: string, change: Partial<ResourceValue<R>>): Promise<ResourceItem<R>> {
   const { table, parent } = RESOURCES[resource]
   return withSite(siteId, async (tx, site) => {
     const before = itemOf(site, resource, id)
@@ -77,6 +82,7 @@ export async function updateItem<R extends ResourceName>(siteId: string, resourc
     const settled = checked(resource, RESOURCE_SCHEMAS[resource].parse({ ...before, ...given }) as ResourceValue<R>, site, id)
     await tx.update(table).set(settled).where(eq(table.id, id))
     if (resource === 'points') await renameDriven(tx, before as ResourceItem<'points'>, settled as ResourceValue<'points'>)
+    await keepItem(tx, by, site, resource, id, before, settled)
     return { ...settled, id }
   })
 }
@@ -88,14 +94,25 @@ async function renameDriven(tx: Queries, before: ResourceItem<'points'>, after: 
 }
 
 /** Deletes what nothing uses; else 409 with what does. */
-export async function deleteItem(siteId: string, resource: ResourceName, id: string): Promise<void> {
+export async function deleteItem(siteId: string, by: Changer, resource: ResourceName, id: string): Promise<void> {
   const { table } = RESOURCES[resource]
   await withSite(siteId, async (tx, site) => {
-    itemOf(site, resource, id)
+    const before = itemOf(site, resource, id)
     const [row] = await tx.select({ size: count() }).from(outages).where(eq(outages.controllerId, sql`${id}`))
     const uses = usesOf(resource, id, site, () => row?.size ?? 0)
     if (uses.length > 0) return conflict(`In use by ${sentence(uses)}`)
     await tx.delete(table).where(eq(table.id, id))
+    await keepItem(tx, by, site, resource, id, before, null)
+  })
+}
+
+/** Writes who did what to a thing of a site. @param before null: it was added @param after null: it was deleted */
+async function keepItem(tx: Queries, by: Changer, site: SiteView, resource: ResourceName, id: string, before: object | null, after: object | null): Promise<void> {
+  const { name, tag } = (after ?? before) as { name: string, tag?: string }
+  await keepChange(tx, by, {
+    subject: resource, subjectId: id, subjectName: tag ? `${tag} ${name}` : name, siteId: site.id,
+    deed: before === null ? 'added' : after === null ? 'deleted' : 'changed',
+    fields: differences(before ? toldValue(before, site) : {}, after ? toldValue(after, site) : {}),
   })
 }
 

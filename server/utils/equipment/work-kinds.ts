@@ -2,6 +2,9 @@ import { and, asc, eq, ne, sql } from 'drizzle-orm'
 import type { WorkKindItem, WorkKindValue } from '../../../shared/schemas/site-view'
 import { workKindSchema } from '../../../shared/schemas/work'
 import { workKinds } from '../../database/schema'
+import { differences } from '../changes/differences'
+import type { Changer } from '../changes/keep'
+import { keepChange } from '../changes/keep'
 import type { Queries } from '../database'
 import { useDatabase } from '../database'
 import { conflict, notFound, unprocessable } from '../errors'
@@ -16,16 +19,17 @@ export async function listWorkKinds(): Promise<WorkKindItem[]> {
   return useDatabase().select(columns).from(workKinds).orderBy(asc(workKinds.name), asc(workKinds.id))
 }
 
-export async function createWorkKind(value: WorkKindValue): Promise<WorkKindItem> {
+export async function createWorkKind(by: Changer, value: WorkKindValue): Promise<WorkKindItem> {
   refuseRings(value)
   return unlessTaken(useDatabase().transaction(async (tx) => {
     await refuseName(tx, value.name, null)
     const [row] = await tx.insert(workKinds).values(value).returning(columns)
+    await keepKind(tx, by, row!.id, null, value)
     return row!
   }))
 }
 
-export async function updateWorkKind(id: string, change: Partial<WorkKindValue>): Promise<WorkKindItem> {
+export async function updateWorkKind(id: string, by: Changer, change: Partial<WorkKindValue>): Promise<WorkKindItem> {
   return unlessTaken(useDatabase().transaction(async (tx) => {
     const [before] = await tx.select(columns).from(workKinds).where(eq(workKinds.id, id)).for('update')
     if (!before) return notFound('kind of work')
@@ -34,14 +38,26 @@ export async function updateWorkKind(id: string, change: Partial<WorkKindValue>)
     refuseRings(value)
     await refuseName(tx, value.name, id)
     await tx.update(workKinds).set(value).where(eq(workKinds.id, id))
+    await keepKind(tx, by, id, workKindSchema.parse(before), value)
     return { ...value, id }
   }))
 }
 
 /** Plans carry the steps themselves, so a kind of work can go at any time. */
-export async function deleteWorkKind(id: string): Promise<void> {
-  const gone = await useDatabase().delete(workKinds).where(eq(workKinds.id, id)).returning({ id: workKinds.id })
-  if (gone.length === 0) notFound('kind of work')
+export async function deleteWorkKind(id: string, by: Changer): Promise<void> {
+  await useDatabase().transaction(async (tx) => {
+    const [gone] = await tx.delete(workKinds).where(eq(workKinds.id, id)).returning(columns)
+    if (!gone) return notFound('kind of work')
+    await keepKind(tx, by, id, workKindSchema.parse(gone), null)
+  })
+}
+
+/** Writes who did what to a kind of work. @param before null: it was added @param after null: it was deleted */
+async function keepKind(tx: Queries, by: Changer, id: string, before: WorkKindValue | null, after: WorkKindValue | null): Promise<void> {
+  await keepChange(tx, by, {
+    subject: 'work-kind', subjectId: id, subjectName: (after ?? before)!.name, siteId: null,
+    deed: before === null ? 'added' : after === null ? 'deleted' : 'changed', fields: differences({ ...before }, { ...after }),
+  })
 }
 
 /** 422 where steps wait for each other. */

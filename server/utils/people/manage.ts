@@ -2,6 +2,9 @@ import { asc, eq, inArray, sql } from 'drizzle-orm'
 import type { z } from 'zod'
 import type { PersonItem, personCreateSchema, personUpdateSchema } from '../../../shared/schemas/people'
 import { people, siteAccess, sites } from '../../database/schema'
+import { differences } from '../changes/differences'
+import type { Changer } from '../changes/keep'
+import { keepChange } from '../changes/keep'
 import type { Queries } from '../database'
 import { useDatabase } from '../database'
 import { conflict, notFound, unprocessable } from '../errors'
@@ -20,12 +23,14 @@ export async function listPeople(): Promise<PersonItem[]> {
 }
 
 /** Makes an account with a password that its owner must change. 409 for an e-mail address in use. */
-export async function createPerson({ email, name, role, password, siteIds }: z.output<typeof personCreateSchema>): Promise<PersonItem> {
+export async function createPerson(by: Changer, { email, name, role, password, siteIds }: z.output<typeof personCreateSchema>): Promise<PersonItem> {
   const passwordHash = await hashPassword(password)
   return useDatabase().transaction(async (tx) => {
     const [row] = await tx.insert(people).values({ email, name, role, passwordHash, mustChangePassword: true }).onConflictDoNothing({ target: people.email }).returning()
     if (!row) return conflict('Somebody has this e-mail address already', 'email')
-    return itemOf(row, await setSites(tx, row, siteIds))
+    const item = itemOf(row, await setSites(tx, row, siteIds))
+    await keepPerson(tx, by, item, {}, await toldPerson(tx, item))
+    return item
   })
 }
 
@@ -33,13 +38,14 @@ export async function createPerson({ email, name, role, password, siteIds }: z.o
  * Changes an account. A change of role, password or of being switched off ends all its sessions.
  * 409 when no administrator would be left.
  */
-export async function updatePerson(id: string, change: z.output<typeof personUpdateSchema>): Promise<PersonItem> {
+export async function updatePerson(id: string, by: Changer, change: z.output<typeof personUpdateSchema>): Promise<PersonItem> {
   const passwordHash = change.password === undefined ? undefined : await hashPassword(change.password)
   const item = await useDatabase().transaction(async (tx) => {
     // Locked with all administrators, so that two of them cannot switch each other off at once.
     const locked = await tx.select().from(people).where(sql`${people.id} = ${id} or ${people.role} = 'administrator'`).orderBy(asc(people.id)).for('update')
     const before = locked.find(row => row.id === id)
     if (!before) return notFound('person')
+    const told = await toldPerson(tx, itemOf(before, await sitesOf(tx, id)))
     const role = change.role ?? before.role
     const disabledAt = change.disabled === undefined ? before.disabledAt : change.disabled ? before.disabledAt ?? new Date() : null
     const staysAdministrator = role === 'administrator' && !disabledAt
@@ -54,7 +60,9 @@ export async function updatePerson(id: string, change: z.output<typeof personUpd
       ...(passwordHash === undefined ? {} : { passwordHash, mustChangePassword: true }),
       ...(endsSessions ? { sessionVersion: sql`${people.sessionVersion} + 1` } : {}),
     }).where(eq(people.id, id)).returning()
-    return itemOf(row!, await setSites(tx, row!, change.siteIds))
+    const changed = itemOf(row!, await setSites(tx, row!, change.siteIds))
+    await keepPerson(tx, by, changed, told, { ...await toldPerson(tx, changed), ...passwordHash === undefined ? {} : { password: 'given anew' } })
+    return changed
   })
   if (passwordHash !== undefined) await clearWrongPasswords(item.email)
   return item
@@ -75,8 +83,23 @@ async function setSites(tx: Queries, person: Row, siteIds: string[] | undefined)
     await tx.delete(siteAccess).where(eq(siteAccess.personId, person.id))
     if (distinct.length > 0) await tx.insert(siteAccess).values(distinct.map(siteId => ({ personId: person.id, siteId })))
   }
-  const rows = await tx.select({ siteId: siteAccess.siteId }).from(siteAccess).where(eq(siteAccess.personId, person.id))
+  return sitesOf(tx, person.id)
+}
+
+async function sitesOf(tx: Queries, person: string): Promise<string[]> {
+  const rows = await tx.select({ siteId: siteAccess.siteId }).from(siteAccess).where(eq(siteAccess.personId, person))
   return rows.map(row => row.siteId)
+}
+
+/** A person as the history tells them: sites by name, and no password. */
+async function toldPerson(tx: Queries, { email, name, role, siteIds, disabledAt }: PersonItem): Promise<Record<string, unknown>> {
+  const rows = siteIds.length > 0 ? await tx.select({ name: sites.name }).from(sites).where(inArray(sites.id, siteIds)).orderBy(asc(sites.name)) : []
+  return { email, name, role, sites: rows.map(row => row.name), switchedOff: disabledAt !== null }
+}
+
+async function keepPerson(tx: Queries, by: Changer, { id, name }: PersonItem, before: Record<string, unknown>, after: Record<string, unknown>): Promise<void> {
+  const deed = Object.keys(before).length === 0 ? 'added' : 'changed'
+  await keepChange(tx, by, { subject: 'person', subjectId: id, subjectName: name, siteId: null, deed, fields: differences(before, after) })
 }
 
 function itemOf(row: Row, siteIds: string[]): PersonItem {
