@@ -53,7 +53,7 @@ export function useTrial(book: Rulebook, sites: () => readonly BookSite[]) {
   function fillExample() {
     const values = EXAMPLE[book.unit]
     rows.value = EXAMPLE_TIMES.map((time, index) => ({ key: count++, time, value: values[index]!, method: 'product' }))
-    Object.assign(form, { unit: book.unit, dark: '14:00', now: '18:40', foodClass: book.classes[0]!.id })
+    Object.assign(form, { unit: book.unit, dark: '14:00', now: '18:40', interval: '60', foodClass: book.classes[0]!.id })
   }
   const filled = computed(() => rows.value.filter(isFilled).length)
   return { rows, form, outcome, filled, addRow, removeRow, addReadings, clear, fillExample }

@@ -74,10 +74,11 @@ function nearest(clock: number, other: number): number {
 
 /** A moment of a trial in words: '14:05', '00:10 next day', '00:10 on day 3'; with dates '2026-03-03 14:05 UTC'. */
 export function trialTimeWords(ms: number, clockOnly: boolean): string {
-  const iso = new Date(ms).toISOString()
-  const clock = iso.slice(11, ms % 60_000 === 0 ? 16 : 19)
+  const second = Math.round(ms / 1000) * 1000 // a change of verdict comes a millisecond after the time that is meant
+  const iso = new Date(second).toISOString()
+  const clock = iso.slice(11, second % 60_000 === 0 ? 16 : 19)
   if (!clockOnly) return `${iso.slice(0, 10)} ${clock} UTC`
-  const day = Math.floor((ms - NOMINAL_DAY) / DAY)
+  const day = Math.floor((second - NOMINAL_DAY) / DAY)
   if (day === 0) return clock
   if (day === -1) return `${clock} the day before`
   return day === 1 ? `${clock} next day` : `${clock} on day ${day + 1}`

@@ -111,6 +111,7 @@ describe('a trial', () => {
 
   it('says times as they were typed', () => {
     expect([0, 1440, 2880, -10].map(minute => trialTimeWords(NOMINAL_DAY + minute * MINUTE, true))).toEqual(['00:00', '00:00 next day', '00:00 on day 3', '23:50 the day before'])
+    expect([1, 30_000, -1].map(ms => trialTimeWords(NOMINAL_DAY + 60 * MINUTE + ms, true))).toEqual(['01:00', '01:00:30', '01:00'])
     expect(trialTimeWords(Date.UTC(2026, 2, 3, 14, 5), false)).toBe('2026-03-03 14:05 UTC')
     expect(inTrialTimes('Counted: 2026-01-05 14:05 UTC to 2026-01-06 00:10:30 UTC, 10 minutes.', true)).toBe('Counted: 14:05 to 00:10:30 next day, 10 minutes.')
     expect(inTrialTimes('at 2026-03-03 14:05 UTC', false)).toBe('at 2026-03-03 14:05 UTC')
