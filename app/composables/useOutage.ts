@@ -7,6 +7,7 @@ import { LIVE_PHASES } from '~~/shared/record/phases'
 import type { Surroundings } from '~~/shared/record/rules'
 import { emptyState } from '~~/shared/record/state'
 import type { Role } from '~~/shared/schemas/people'
+import { marginAt } from '~~/server/utils/hold/margin'
 import { handBackAfter, planRefusals } from '~~/server/utils/order/for-outage'
 import { keptFact, keepFact } from '~/offline/facts'
 import { drainFiles, keepFile } from '~/offline/files'
@@ -27,7 +28,7 @@ const RECEIPT_MS = 4000
 export type Signed = { status: 'accepted' | 'questioned' | 'refused' | 'kept', why: string[] }
 
 /** What the engines say on this device; the root is compared by the server. */
-export const SURROUNDINGS: Surroundings = { planRefusals, handBackAfter, margin: () => [], filesAwaited: () => [], root: null }
+export const SURROUNDINGS: Surroundings = { planRefusals, handBackAfter, margin: marginAt, filesAwaited: () => [], root: null }
 
 /**
  * One outage on this device: the log as far as it is known, folded, with what is kept here and not

@@ -1,5 +1,7 @@
 import { clockWords, countWords, durationWords, listWords, minuteWords, numberWords } from '../../shared/charts/words'
 import { isoTime } from '../../shared/record/entry'
+import { acceptedWords } from '../../shared/record/margin'
+import { assumptionWords, measureWords } from '../../shared/record/measures'
 import type { CheckLine } from '../../shared/record/record-lines'
 import { caseName, nameOf, pointName } from '../../shared/record/select'
 import type { Mark } from '../../shared/record/state'
@@ -21,7 +23,9 @@ export async function drawPlan(sheet: Sheet, { state, summary }: RecordPaper): P
     plan.startsAt ? `Start planned for ${fullStampWords(Date.parse(plan.startsAt), timeZone)}.` : '',
     duration.darkMean > 0 ? `Without control: ${minuteWords(duration.darkMean)} likely, over by ${minuteWords(duration.dark19in20)} 19 times in 20; turning back takes up to ${minuteWords(duration.rollBack19in20)}. These are estimates.` : '',
     state.approved ? `Approved by ${nameOf(state, state.approved.by)}, ${fullStampWords(state.approved.at, timeZone)}.` : state.planned ? 'Not approved.' : '',
-    plan.measures.length > 0 ? `Measures: ${plan.measures.join('; ')}.` : '',
+    plan.measures.length > 0 ? `Measures: ${plan.measures.map(measure => measureWords(measure, state.snapshot.cases)).join('; ')}.` : '',
+    state.marginAccepted ? `${nameOf(state, state.marginAccepted.mark.by)} accepted ${acceptedWords(state.marginAccepted)}, ${fullStampWords(state.marginAccepted.mark.at, timeZone)}: ${state.marginAccepted.reason}` : '',
+    plan.assumptions.length > 0 ? `Assumed otherwise than proposed: ${plan.assumptions.map(item => assumptionWords(item, state.snapshot)).join('; ')}.` : '',
     plan.census.length > 0 ? `Found in hand before anyone began: ${plan.census.map(found => `${found.tag} (${found.words})`).join('; ')}.` : '',
     plan.note,
   ]

@@ -52,6 +52,7 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
   },
   'plan-submitted': (state, _entry, mark) => { state.planSubmitted = mark; state.planReturned = null; addOnce(state.authors, mark.by) },
   'plan-approved': (state, _entry, mark) => { state.approved = mark; state.phase = 'approved' },
+  'margin-accepted': (state, { body }, mark) => { state.marginAccepted = { ...body, mark } },
   'plan-returned': (state, { body }, mark) => { state.planReturned = { reason: body.reason, mark }; state.planSubmitted = null },
   'in-hand-begun': (state, _entry, mark) => { state.inHandBegun = mark; state.phase = 'in-hand' },
   'called-off': (state, { body }, mark) => { state.calledOff = { reason: body.reason, mark }; state.phase = 'called-off' },

@@ -1,5 +1,7 @@
 import { isHandActive } from '../schemas/point-kinds'
 import { BACK_CHECKS, BEFORE_CHECKS } from './checks'
+import { acceptanceWanted, measuresWanted } from './margin'
+import type { MarginFigure } from './margin'
 import { caseName, firmReadings, groupName, isOver, openDark, pointsInHand, pointsWaiting, productReadings, proofsDue, watchedCases } from './select'
 import type { OutageState, PressureState } from './state'
 
@@ -21,11 +23,11 @@ const LAST_DIGIT_K = 0.11
 export interface GateResults {
   /** rules that the plan's points break, in words */
   planRefusals: string[]
-  /** further reasons of the plan against going dark (margin), in words */
-  margin: string[]
+  /** whether product outlasts the work; null where nobody worked it out */
+  margin: MarginFigure | null
 }
 
-export const NO_RESULTS: GateResults = { planRefusals: [], margin: [] }
+export const NO_RESULTS: GateResults = { planRefusals: [], margin: null }
 
 const list = (names: string[], most = 6) => names.length <= most ? names.join(', ') : `${names.slice(0, most).join(', ')} and ${names.length - most} more`
 
@@ -41,7 +43,7 @@ export function planGate(state: OutageState, results: GateResults): string[] {
   if (unordered.length > 0) missing.push(`no place in the order for ${list(unordered)}`)
   const unknown = plan.points.filter(point => !state.points[point.tag]).map(point => point.tag)
   if (unknown.length > 0) missing.push(`this controller has no point ${list(unknown)}`)
-  return [...missing, ...results.planRefusals]
+  return [...missing, ...results.planRefusals, ...results.margin ? measuresWanted(plan, results.margin) : []]
 }
 
 /** Whether a suction group held on by hand has been steady for ten minutes; a sentence when not. */
@@ -101,7 +103,7 @@ export function goDarkGate(state: OutageState, at: number, results: GateResults)
   }
   const open = state.questioned.filter(item => item.settled === null && item.tag !== null).map(item => item.tag!)
   if (open.length > 0) missing.push(`questioned entries not looked at: ${list([...new Set(open)])}`)
-  return [...missing, ...results.margin]
+  return [...missing, ...results.margin ? acceptanceWanted(state, results.margin) : []]
 }
 
 /** The last product reading before dark was over the limit; a questioned one counts only against it. */

@@ -2,6 +2,7 @@ import { INSTRUMENT_CHECK_DAYS, PLAIN_HOLDING } from '../schemas/equipment'
 import type { AnyEntry } from './entry'
 import { newestVersion } from './kinds'
 import type { EntryKind } from './kinds'
+import { otherMeasure } from './measures'
 
 type Body = Record<string, unknown>
 /** For each kind that has several versions: what a body of version n is in version n + 1. */
@@ -14,7 +15,8 @@ type Upgrades = { [K in EntryKind]?: Record<number, (body: Body) => Body> }
 export const UPGRADES: Upgrades = {
   // Before version 2 no site judged otherwise than its rulebook, but for single cases, and a check lasted 90 days everywhere;
   // no time constant came from sealed outages, and no relief valve was known.
-  'outage-opened': { 1: body => ({ ...body, snapshot: snapshotOfV1(body.snapshot as SnapshotV1) }) },
+  'outage-opened': { 1: body => ({ ...body, snapshot: snapshotOfV1(body.snapshot as SnapshotV1), plan: withFacts(body.plan as { measures: string[] }) }) },
+  'plan-changed': { 1: body => ({ ...body, plan: withFacts(body.plan as { measures: string[] }) }) },
 }
 
 interface SnapshotV1 { site: object, racks: object[], cases: object[] }
@@ -26,6 +28,11 @@ function snapshotOfV1(snapshot: SnapshotV1): object {
     racks: snapshot.racks.map(rack => ({ ...rack, warmestC: null, reliefValves: [] })),
     cases: snapshot.cases.map(item => ({ ...item, tauFrom: 0 })),
   }
+}
+
+/** In version 1 measures were words alone, and a plan assumed what the product did. */
+function withFacts(plan: { measures: string[] }): object {
+  return { ...plan, measures: plan.measures.map(otherMeasure), assumptions: [] }
 }
 
 /**

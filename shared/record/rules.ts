@@ -4,6 +4,8 @@ import type { HandPosition } from '../schemas/point-kinds'
 import { BACK_CHECKS, checkById } from './checks'
 import type { AnyEntry, Entry } from './entry'
 import { correctedTime, happenedAt } from './entry'
+import { isAccepted, marginFaults, namedMinutes, acceptanceWanted } from './margin'
+import type { MarginFigure } from './margin'
 import { callOffGate, goDarkGate, handBackGate, planGate, returnPointsGate, sealGate, submitGate } from './gates'
 import type { EntryKind } from './kinds'
 import { asNewest } from './newest'
@@ -21,8 +23,8 @@ export interface Surroundings {
   planRefusals: (state: OutageState) => string[]
   /** tags that go back to auto before this one (I7, I12 and the order of page hand back) */
   handBackAfter: (state: OutageState, tag: string) => string[]
-  /** reasons of the plan against going dark, in words */
-  margin: (state: OutageState, at: number) => string[]
+  /** whether product outlasts the work, with the start temperatures known at a moment; null: not worked out here */
+  margin: (state: OutageState, at: number) => MarginFigure | null
   /** files named by the log that the store does not hold */
   filesAwaited: (state: OutageState) => string[]
   /** Merkle root of the log so far, or null where the log is not at hand (then it is not compared) */
@@ -66,8 +68,9 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
     ...(entry.body.lostAt === null ? [] : ahead(entry, entry.body.lostAt)),
   ] },
   'plan-changed': { roles: HANDS, phases: ['plan', 'approved', 'in-hand', 'dark'] },
-  'plan-submitted': { roles: HANDS, phases: ['plan'], unfit: (state, _entry, around) => planGate(state, { planRefusals: around.planRefusals(state), margin: [] }) },
-  'plan-approved': { roles: SUPERVISOR, phases: ['plan'], forbids: (state, _entry, actor) => own(state, actor) ? 'nobody approves what they planned themselves (I10)' : null, unfit: waitsForApproval },
+  'plan-submitted': { roles: HANDS, phases: ['plan'], unfit: (state, entry, around) => planGate(state, { planRefusals: around.planRefusals(state), margin: around.margin(state, happenedAt(entry)) }) },
+  'margin-accepted': { roles: SUPERVISOR, phases: ['plan', 'approved', 'in-hand'], forbids: (state, _entry, actor) => own(state, actor) ? 'nobody accepts the margin of what they planned themselves (I10)' : null, unfit: acceptanceUnfit },
+  'plan-approved': { roles: SUPERVISOR, phases: ['plan'], forbids: (state, _entry, actor) => own(state, actor) ? 'nobody approves what they planned themselves (I10)' : null, unfit: (state, entry, around) => [...waitsForApproval(state), ...marginUncovered(state, happenedAt(entry), around)] },
   'plan-returned': { roles: SUPERVISOR, phases: ['plan'], unfit: waitsForApproval },
   'in-hand-begun': { roles: HANDS, phases: ['approved'] },
   'called-off': { roles: HANDS, phases: ['plan', 'approved', 'in-hand'], unfit: state => callOffGate(state) },
@@ -135,6 +138,24 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
       return missing
     },
   },
+}
+
+/** Numbers below nothing that no acceptance covers. */
+function marginUncovered(state: OutageState, at: number, around: Surroundings): string[] {
+  const figure = around.margin(state, at)
+  return figure ? acceptanceWanted(state, figure) : []
+}
+
+/** An acceptance names the numbers as they stand: another one would have been read by nobody. */
+function acceptanceUnfit(state: OutageState, entry: Entry<'margin-accepted'>, around: Surroundings): string[] {
+  const figure = around.margin(state, happenedAt(entry))
+  if (!figure) return []
+  if (marginFaults(figure).length === 0) return ['the margin is not negative: there is nothing to accept']
+  if (isAccepted(state, figure)) return ['it is accepted already']
+  const { minutes, deadlineMinutes } = namedMinutes(figure)
+  const near = (named: number | null, now: number | null) => named === now || (named !== null && now !== null && Math.abs(named - now) <= 1)
+  const missing = near(entry.body.minutes, minutes) && near(entry.body.deadlineMinutes, deadlineMinutes) ? [] : ['the numbers are others by now: read them again']
+  return state.plan.measures.length > 0 ? missing : [...missing, 'choose measures first: what remains after them is accepted']
 }
 
 function waitsForApproval(state: OutageState): string[] {

@@ -159,7 +159,7 @@ export function caseName(state: OutageState, id: string): string {
   return state.snapshot.cases.find(item => item.id === id)?.name ?? 'Unknown case'
 }
 
-export function groupName(state: OutageState, id: string): string {
+export function groupName(state: Pick<OutageState, 'snapshot'>, id: string): string {
   const group = state.snapshot.suctionGroups.find(item => item.id === id)
   const rack = state.snapshot.racks.find(item => item.id === group?.rackId)
   if (!group || !rack) return group?.name ?? 'Unknown suction group'

@@ -106,6 +106,8 @@ export interface OutageState {
   planSubmitted: Mark | null
   planReturned: { reason: string, mark: Mark } | null
   approved: Mark | null
+  /** the numbers that a supervisor accepted last, minutes */
+  marginAccepted: { minutes: number | null, deadlineMinutes: number | null, reason: string, mark: Mark } | null
   inHandBegun: Mark | null
   checks: Partial<Record<CheckId, { outcome: 'done' | 'needless', words: string, photos: string[], mark: Mark }>>
   points: Record<string, PointState>
@@ -153,6 +155,7 @@ export const EMPTY_PLAN: Plan = {
   cases: [],
   census: [],
   measures: [],
+  assumptions: [],
   watchDefrosts: false,
   note: '',
 }
@@ -169,7 +172,7 @@ export function emptyState(id: string): OutageState {
   return {
     foldVersion: FOLD_VERSION, id, code: null, size: 0, phase: 'plan', planned: true,
     snapshot: structuredClone(EMPTY_SNAPSHOT), opened: null, cause: '', plan: structuredClone(EMPTY_PLAN),
-    authors: [], planSubmitted: null, planReturned: null, approved: null, inHandBegun: null,
+    authors: [], planSubmitted: null, planReturned: null, approved: null, marginAccepted: null, inHandBegun: null,
     checks: {}, points: {}, cases: {}, pressures: [], plant: [], darks: [], turnedBack: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
     calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],

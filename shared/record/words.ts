@@ -3,6 +3,7 @@ import { checkById } from './checks'
 import type { AnyEntry, Entry } from './entry'
 import type { EntryKind } from './kinds'
 import { asNewest } from './newest'
+import { acceptedWords } from './margin'
 import { ACT_WORDS } from './kinds/rounds'
 import { VERDICT_WORDS } from './kinds/server'
 import { caseName, groupName, pointName, SEEN_WORDS } from './select'
@@ -27,6 +28,7 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'plan-changed': (_state, { body }) => tell('Plan changed', join(body.note, `${body.plan.points.length} points`)),
   'plan-submitted': (_state, { body }) => tell('Plan sent for approval', body.note),
   'plan-approved': (_state, { body }) => tell('Plan approved', body.note),
+  'margin-accepted': (_state, { body }) => tell(`Accepted: ${acceptedWords(body)}`, body.reason),
   'plan-returned': (_state, { body }) => tell('Plan returned', body.reason),
   'in-hand-begun': () => tell('Putting points in hand begun'),
   'called-off': (_state, { body }) => tell('Called off', body.reason),

@@ -189,7 +189,7 @@ describe('the import of a point list', () => {
     expect([response.status, (await response.json() as ImportPreview).counts]).toEqual([200, { new: 26, changed: 0, unchanged: 0 }])
     const { points } = await view()
     expect(points).toHaveLength(26)
-    expect(points.find(point => point.tag === 'DR-1')).toMatchObject({ kind: 'drive', hand: { hz: 45 }, rackId: made['rack A'], suctionGroupId: made['A medium'], onLoss: 'off' })
+    expect(points.find(point => point.tag === 'DR-1')).toMatchObject({ kind: 'drive', hand: { hz: 60 }, rackId: made['rack A'], suctionGroupId: made['A medium'], onLoss: 'off' })
     expect(points.find(point => point.tag === 'LLS-A3')).toMatchObject({ circuitId: made['A3 dairy'], caseIds: [made['Dairy wall 1–3'], made['Dairy wall 4–7']] })
   })
 

@@ -1,4 +1,5 @@
 /** Writes records as the server does: entries signed with real Ed25519 keys, judged, numbered and folded. Nothing random. */
+import { marginAt } from '../../server/utils/hold/margin'
 import { handBackAfter, planRefusals } from '../../server/utils/order/for-outage'
 import { rulebookById } from '../../server/utils/holding'
 import { assessCase } from '../../server/utils/holding/for-outage'
@@ -144,7 +145,7 @@ export class RecordWriter {
     return {
       planRefusals,
       handBackAfter,
-      margin: () => [],
+      margin: marginAt,
       filesAwaited: state => state.files.filter(file => !this.files.has(file)),
       root: kind === 'sealed' ? logRoot(this.entries) : null,
     }

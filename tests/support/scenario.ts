@@ -98,7 +98,7 @@ export function planOf(snapshot: Snapshot, startsAt: number): Plan {
     duration: { totalMean: 25, darkMean: 25, dark19in20: 34, rollBack19in20: 17 },
     points, order: inHandOrder(snapshot, points).order,
     cases: snapshot.cases.map(item => ({ id: item.id, touched: !item.runsAlone, reason: item.runsAlone ? 'its own controller runs on' : '' })),
-    census: [], measures: ['Night covers on the dairy wall'], watchDefrosts: false, note: 'Doors shut by the store from 01:45.',
+    census: [], measures: [{ kind: 'night-covers', caseIds: [caseId('Dairy wall 1–3')], factor: 1.5, words: '' }], assumptions: [], watchDefrosts: false, note: 'Doors shut by the store from 01:45.',
   }
 }
 

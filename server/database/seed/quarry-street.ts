@@ -62,7 +62,7 @@ export const EXAMPLE_POINTS: PointSeed[] = [
   compressor(7, { place: 'Panel B, selector 3, middle row', ratedA: 19, capacityKw: 9.5, hand: 'off' }),
   {
     tag: 'DR-1', kind: 'drive', name: 'Drive of compressor 1', address: 'B1.A1', place: 'Panel A, drive keypad, top left', means: 'keypad, local speed', guards: ['drive trip'],
-    rack: 'Rack A', suctionGroup: 'A medium', drives: 'C-1', ratedA: 45, hand: { hz: 45 }, onLoss: 'off',
+    rack: 'Rack A', suctionGroup: 'A medium', drives: 'C-1', ratedA: 45, hand: { hz: 60 }, onLoss: 'off',
   },
   condenserFan(1, 'Panel A, selector 1, top row'),
   condenserFan(2, 'Panel A, selector 2, top row'),

@@ -1,4 +1,6 @@
 export { ahri540, capacityKw, DEFAULT_SLOPE_PER_K } from './capacity'
+export { coverPicks, coverRefusals, groupCovers, LOAD_SHARE, MAINS_HZ } from './for-plan'
+export type { CoverMachine, GroupCover } from './for-plan'
 export { parseCoverInput, parseSaturationQuery } from './parse'
 export { planCover } from './plan-cover'
 export type { Cover } from './plan-cover'

@@ -6,6 +6,7 @@ import type { OrderPoint, PlanOrderInput } from '~~/shared/schemas/plan-order'
 import { handWords } from '~~/shared/schemas/point-kinds'
 import type { HandPosition } from '~~/shared/schemas/point-kinds'
 import type { OrderStep, PlannedOrder } from './plan'
+import { coverPicks, coverRefusals } from '../cover'
 import { planOrder } from './plan'
 import { proposeHand } from './propose'
 
@@ -74,7 +75,8 @@ export function planRefusals(state: OutageState): string[] {
   const said = refusals.map(refusal => `${refusal.tag}: ${refusal.because} (${refusal.rule})`)
   const planned = new Map(state.plan.order.map(line => [line.tag, new Set(line.after)]))
   const skipped = order.filter(step => step.after.some(tag => planned.get(step.tag)?.has(tag) === false)).map(step => step.tag)
-  return skipped.length > 0 ? [...said, `the order leaves out what must come before ${skipped.join(', ')}`] : said
+  const load = coverRefusals(state.snapshot, state.plan)
+  return skipped.length > 0 ? [...said, ...load, `the order leaves out what must come before ${skipped.join(', ')}`] : [...said, ...load]
 }
 
 /** Order in which the points in hand go back to auto, from where they stand now. */
@@ -92,14 +94,28 @@ export function handBackAfter(state: OutageState, tag: string): string[] {
   return handBackOrder(state).find(step => step.tag === tag)?.after ?? []
 }
 
-/** Hand positions that the product proposes for all points of a controller. */
-export function proposePoints(snapshot: Snapshot): Plan['points'] {
+/** A point's usual hand position, where the cover does not say what its compressor does (I4). */
+function usualHand(snapshot: Snapshot, picks: ReadonlyMap<string, ReadonlySet<string>>, point: SnapshotPoint): HandPosition | null {
+  const machine = point.kind === 'drive' ? snapshot.points.find(item => item.tag === point.drives) : point
+  const picked = machine?.kind === 'compressor' && machine.suctionGroupId !== null ? picks.get(machine.suctionGroupId) : undefined
+  if (!machine || picked === undefined) return point.hand
+  const isOn = picked.has(machine.tag)
+  return point.kind === 'drive' ? (isOn ? point.hand : 'off') : (isOn ? 'on' : 'off')
+}
+
+/**
+ * Hand positions that the product proposes for all points of a controller. The compressors on are the
+ * cover's, where its facts are known, else those whose usual position is on.
+ */
+export function proposePoints(snapshot: Snapshot, plan: Pick<Plan, 'assumptions'> = { assumptions: [] }): Plan['points'] {
+  const picks = coverPicks(snapshot, plan)
+  const hands = new Map(snapshot.points.map(point => [point.tag, usualHand(snapshot, picks, point)]))
   const groupsOn = new Set(snapshot.points
-    .filter(point => point.kind === 'compressor' && point.hand !== null && handWords(point.hand) === 'on')
+    .filter(point => point.kind === 'compressor' && hands.get(point.tag) === 'on')
     .map(point => point.suctionGroupId))
   return snapshot.points.map((point) => {
     const group = point.suctionGroupId ?? snapshot.circuits.find(circuit => circuit.id === point.circuitId)?.suctionGroupId ?? null
     const expansionValveInCircuit = point.circuitId !== null && snapshot.points.some(other => other.kind === 'expansion-valve' && other.circuitId === point.circuitId)
-    return { tag: point.tag, hand: proposeHand({ kind: point.kind, hand: point.hand }, { compressorOn: group !== null && groupsOn.has(group), expansionValveInCircuit }), reason: '' }
+    return { tag: point.tag, hand: proposeHand({ kind: point.kind, hand: hands.get(point.tag) ?? null }, { compressorOn: group !== null && groupsOn.has(group), expansionValveInCircuit }), reason: '' }
   })
 }

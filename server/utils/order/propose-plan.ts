@@ -46,6 +46,7 @@ export function proposePlan(snapshot: Snapshot, work: WorkKind, startsAt: string
     cases: snapshot.cases.map(item => ({ id: item.id, touched: !item.runsAlone, reason: '' })),
     census: [],
     measures: [],
+    assumptions: [],
     watchDefrosts: false,
     note: '',
   }

@@ -4,6 +4,7 @@ import type { Surroundings } from '../../../shared/record/rules'
 import type { OutageState } from '../../../shared/record/state'
 import { files } from '../../database/schema'
 import type { Queries } from '../database'
+import { marginAt } from '../hold/margin'
 import { handBackAfter, planRefusals } from '../order/for-outage'
 
 /** What the engines and the store say about an entry that is being judged. @param root of the log so far, hexadecimal */
@@ -14,7 +15,7 @@ export async function surroundingsOf(db: Queries, state: OutageState, entry: Any
   return {
     planRefusals,
     handBackAfter,
-    margin: () => [],
+    margin: marginAt,
     filesAwaited: of => of.files.filter(file => !known.has(file)),
     root: sealing ? root() : null,
   }

@@ -14,6 +14,7 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'plan-changed': { plan: planOf(), note: words },
   'plan-submitted': { note: words },
   'plan-approved': { note: words },
+  'margin-accepted': { minutes: -4, deadlineMinutes: null, reason: words },
   'plan-returned': { reason: words },
   'in-hand-begun': {},
   'called-off': { reason: words },

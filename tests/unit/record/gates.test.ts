@@ -17,7 +17,7 @@ function but(writer: RecordWriter, change: (state: OutageState) => void): Outage
 
 describe('asking for approval', () => {
   const writer = storyTo('plan')
-  const gate = (state: OutageState, refusals: string[] = []) => planGate(state, { planRefusals: refusals, margin: [] })
+  const gate = (state: OutageState, refusals: string[] = []) => planGate(state, { planRefusals: refusals, margin: null })
 
   it('needs nothing more of a whole plan', () => expect(gate(writer.state)).toEqual([]))
   it.each<[string, (state: OutageState) => void, string]>([
@@ -103,7 +103,7 @@ describe('going dark', () => {
   })
 
   it('says what the margin says', () => {
-    expect(goDarkGate(ready.state, ready.now, { planRefusals: [], margin: ['the margin is -4 minutes'] })).toEqual(['the margin is -4 minutes'])
+    expect(goDarkGate(ready.state, ready.now, { planRefusals: [], margin: { minutes: -4, shortest: 'Fish service', deadlineMinutes: null, deadlineOf: '' } })).toEqual(['the margin is −4 min: Fish service does not outlast the work. A supervisor must accept it'])
   })
 })
 

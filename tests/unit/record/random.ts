@@ -1,5 +1,6 @@
 /** Random entries that a record may meet, judged and applied as the server does. */
 import fc from 'fast-check'
+import { marginAt } from '../../../server/utils/hold/margin'
 import { handBackAfter, planRefusals } from '../../../server/utils/order/for-outage'
 import { BACK_CHECKS, BEFORE_CHECKS, CHECK_IDS } from '../../../shared/record/checks'
 import type { AnyEntry, StoredEntry } from '../../../shared/record/entry'
@@ -10,6 +11,8 @@ import { newestVersion, schemaOf } from '../../../shared/record/kinds'
 import { SEEN_IN_AUTO } from '../../../shared/record/kinds/hand'
 import { ACTS } from '../../../shared/record/kinds/rounds'
 import { SEAL_STATEMENT } from '../../../shared/record/kinds/review'
+import { namedMinutes } from '../../../shared/record/margin'
+import { otherMeasure } from '../../../shared/record/measures'
 import type { Phase } from '../../../shared/record/phases'
 import type { Judgement } from '../../../shared/record/rules'
 import { judge, RULES } from '../../../shared/record/rules'
@@ -33,6 +36,9 @@ const caseOf = (draw: number) => of(snapshot.cases, draw).id
 
 const WHOLE = planOf()
 
+/** A plan whose work outlasts the product, with a measure chosen that does not mend it. */
+const tooLong = () => planOf({ duration: { ...WHOLE.duration, dark19in20: 70 }, measures: [otherMeasure('doors shut')] })
+
 /** A plan of some points with or without their places in the order; most often the whole one. */
 function somePlan(a: number, b: number) {
   const whole = WHOLE
@@ -47,6 +53,7 @@ const DRAW: { [K in EntryKind]?: (state: OutageState, draws: Deed['draws'], now:
   'plan-changed': (_state, [a, b]) => ({ plan: somePlan(a, b) }),
   'plan-submitted': () => ({}),
   'plan-approved': () => ({}),
+  'margin-accepted': (state, [a], now) => { const figure = marginAt(state, now); return { ...(figure ? namedMinutes(figure) : { minutes: a % 40 - 20, deadlineMinutes: null }), reason: 'it goes on' } },
   'plan-returned': () => ({ reason: 'later' }),
   'in-hand-begun': () => ({}),
   'called-off': () => ({ reason: 'rain' }),
@@ -90,7 +97,7 @@ const DRAW: { [K in EntryKind]?: (state: OutageState, draws: Deed['draws'], now:
 export const DRAWN = Object.keys(DRAW) as PersonKind[]
 /** What somebody would most likely do in each phase. */
 const APT: Partial<Record<Phase, PersonKind[]>> = {
-  'plan': ['plan-submitted', 'plan-approved', 'plan-approved', 'plan-returned', 'plan-changed', 'control-lost'],
+  'plan': ['plan-submitted', 'plan-approved', 'plan-approved', 'margin-accepted', 'plan-returned', 'plan-changed', 'control-lost'],
   'approved': ['in-hand-begun', 'in-hand-begun', 'plan-changed', 'point-in-hand', 'control-lost', 'called-off'],
   'in-hand': ['went-dark', 'went-dark', 'went-dark', 'plan-changed', 'point-in-hand', 'point-in-hand', 'point-excused', 'point-in-auto', 'reading-taken', 'questioned-settled', 'called-off', 'control-lost'],
   'dark': ['control-back', 'control-back', 'turned-back', 'point-in-hand', 'point-excused', 'act-signed', 'decided-otherwise'],
@@ -138,6 +145,7 @@ function allButOne(writer: RecordWriter): void {
 export const STARTS: Start[] = [
   ...PHASES_TOLD.map(phase => startOf(phase, storyTo(phase))),
   ...[1, 2, 3, 4].map(() => startOf('ready for dark', prepared('in-hand', readyForDark))),
+  ...[1, 2].map(() => startOf('a margin below nothing', prepared('plan', writer => writer.sign(technician, 'plan-changed', { plan: tooLong() })))),
   startOf('checks signed', prepared('in-hand', writer => signChecks(writer, BEFORE_CHECKS))),
   startOf('controller checked', prepared('hand-back', writer => signChecks(writer, BACK_CHECKS))),
   startOf('all returned', prepared('hand-back', (writer) => { signChecks(writer, BACK_CHECKS); returnAll(writer) })),
@@ -194,7 +202,7 @@ export function go({ start, deeds }: Walk, look: (happening: Happening) => void)
       v: newestVersion(kind), id: uuidFor(`walk ${index}`, now), outage: state.id, kind, body: bodyOf(kind, draw(state, draws, now)), at: isoTime(now - (late ? 180_000 : 0)), skew: 0,
       by: signer.id, device: signer.device, n: (chain?.n ?? 0) + 1, prev: chain?.hash ?? null,
     } as AnyEntry
-    const judgement = judge(state, entry, { id: signer.id, role: signer.role as Role }, { planRefusals, handBackAfter, margin: () => [], filesAwaited: () => [], root: null })
+    const judgement = judge(state, entry, { id: signer.id, role: signer.role as Role }, { planRefusals, handBackAfter, margin: marginAt, filesAwaited: () => [], root: null })
     const before = taken(state)
     if (judgement.standing !== 'refused') {
       const stored: StoredEntry = { entry, signature: entryHash(entry), seq: entries.length + 1, receivedAt: isoTime(now), standing: judgement.standing, why: judgement.why }

@@ -12,7 +12,7 @@ import type { PhaseTold } from './store'
 
 const kinds = Object.keys(KINDS) as EntryKind[]
 const HANDS: Role[] = ['technician', 'supervisor']
-const BY_SUPERVISOR: EntryKind[] = ['plan-approved', 'plan-returned', 'left-in-exception', 'decided-otherwise', 'question-asked', 'review-begun', 'returned', 'sealed']
+const BY_SUPERVISOR: EntryKind[] = ['plan-approved', 'margin-accepted', 'plan-returned', 'left-in-exception', 'decided-otherwise', 'question-asked', 'review-begun', 'returned', 'sealed']
 const stories = Object.fromEntries(PHASES_TOLD.map(phase => [phase, storyTo(phase)])) as Record<PhaseTold, RecordWriter>
 
 /** Judges a kind without its body being typed. */
@@ -37,7 +37,7 @@ describe('phases', () => {
   const RUN: PhaseTold[] = ['in-hand', 'dark', 'hand-back', 'settle']
   const BEFORE_SEAL = PHASES_TOLD.filter(phase => phase !== 'sealed')
   const BELONGS: Partial<Record<EntryKind, PhaseTold[]>> = {
-    'outage-opened': ['plan'], 'plan-changed': ['plan', 'approved', 'in-hand', 'dark'], 'plan-submitted': ['plan'], 'plan-approved': ['plan'], 'plan-returned': ['plan'],
+    'outage-opened': ['plan'], 'plan-changed': ['plan', 'approved', 'in-hand', 'dark'], 'plan-submitted': ['plan'], 'plan-approved': ['plan'], 'margin-accepted': ['plan', 'approved', 'in-hand'], 'plan-returned': ['plan'],
     'in-hand-begun': ['approved'], 'called-off': ['plan', 'approved', 'in-hand'], 'check-signed': ['approved', ...RUN],
     'point-in-hand': RUN, 'point-excused': ['in-hand', 'dark'], 'point-in-auto': ['in-hand', 'hand-back', 'settle'], 'point-proven': ['hand-back', 'settle'],
     'left-in-exception': ['hand-back', 'settle'], 'hand-back-closed': ['hand-back'], 'defrost-watched': ['hand-back', 'settle'],

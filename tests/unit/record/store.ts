@@ -1,5 +1,6 @@
 /** A store of two cases on one rack, small enough to keep in one's head, and its outage told as far as a phase. */
 import { rulebookById } from '../../../server/utils/holding'
+import { marginAt } from '../../../server/utils/hold/margin'
 import { handBackAfter, handBackOrder, inHandOrder, planRefusals } from '../../../server/utils/order/for-outage'
 import { BACK_CHECKS, BEFORE_CHECKS } from '../../../shared/record/checks'
 import type { AnyEntry } from '../../../shared/record/entry'
@@ -66,7 +67,7 @@ export function planOf(change: Partial<Plan> = {}): Plan {
     startsAt: isoTime(BEGAN + 3_600_000), workKind: { id: null, name: 'software update' }, steps: [step('load'), step('restart', ['load'])], rollBack: [step('old')],
     duration: { totalMean: 20, darkMean: 20, dark19in20: 26, rollBack19in20: 15 },
     points, order: inHandOrder(snapshot, points).order, cases: snapshot.cases.map(item => ({ id: item.id, touched: true, reason: '' })),
-    census: [], measures: [], watchDefrosts: false, note: '', ...change,
+    census: [], measures: [], assumptions: [], watchDefrosts: false, note: '', ...change,
   }
 }
 
@@ -170,7 +171,7 @@ export function goOn(writer: RecordWriter, after: PhaseTold, until: PhaseTold): 
   for (const phase of PHASES_TOLD.slice(PHASES_TOLD.indexOf(after) + 1, PHASES_TOLD.indexOf(until) + 1)) CHAPTERS[phase](writer)
 }
 
-const AROUND: Surroundings = { planRefusals, handBackAfter, margin: () => [], filesAwaited: () => [], root: null }
+const AROUND: Surroundings = { planRefusals, handBackAfter, margin: marginAt, filesAwaited: () => [], root: null }
 
 /** What would become of an entry if it were signed now; nothing is stored. */
 export function judged<K extends EntryKind>(writer: RecordWriter, signer: TestSigner, kind: K, body: BodyInput<K>, around: Partial<Surroundings> = {}): Judgement {

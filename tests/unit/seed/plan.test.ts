@@ -29,7 +29,7 @@ describe('the demo\'s equipment', () => {
     const held = Object.fromEntries(plan.points.map(point => [point.tag, handWords(point.hand)]))
     const on = Object.keys(held).filter(tag => tag.startsWith('C-') && held[tag] === 'on')
     expect(on).toEqual(['C-1', 'C-2', 'C-5'])
-    expect(held['DR-1']).toBe('45 Hz')
+    expect(held['DR-1']).toBe('60 Hz')
     expect(['DH-A4', 'DH-B1', 'DH-B2'].map(tag => held[tag])).toEqual(['off', 'off', 'off'])
   })
 

@@ -7,7 +7,7 @@ import type { Round } from '../chapters'
 import type { Stage } from '../stage'
 import { Story } from '../storyteller'
 import { productCourse, usualCourse } from '../warming'
-import { workOf } from '../work'
+import { measureAt, workOf } from '../work'
 
 const HOUR = 60 * MINUTE
 const DARK_SINCE_MINUTES = 13
@@ -28,7 +28,7 @@ export async function tellAbbotGreenUpdate(stage: Stage): Promise<void> {
   async function plan() {
     const snapshot = await equipmentOf(stage, 'Abbot Green')
     const proposed = proposePlan(snapshot, workOf(equipment, 'Software update'), story.told(technician, begins))
-    story.sign(technician, 'outage-opened', { planned: true, lostAt: null, cause: '', snapshot, plan: { ...proposed, measures: ['Night cover on the dairy wall'], note: 'Fish is iced before the start.' } })
+    story.sign(technician, 'outage-opened', { planned: true, lostAt: null, cause: '', snapshot, plan: { ...proposed, measures: [measureAt(snapshot, 'night-covers', ['Dairy wall'])], note: 'Fish is iced before the start.' } })
     story.pass(6).sign(technician, 'plan-submitted', { note: '' })
     await story.send()
     story.pass(52).sign(supervisor, 'plan-approved', { note: 'The dairy wall is the short one: watch it.' })

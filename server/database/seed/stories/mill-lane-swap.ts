@@ -4,7 +4,7 @@ import { DAY, localClock, MINUTE } from '../../../utils/window/local-time'
 import { equipmentOf } from '../chapters'
 import type { Stage } from '../stage'
 import { Story } from '../storyteller'
-import { workOf } from '../work'
+import { measureAt, workOf } from '../work'
 
 const HOUR = 60 * MINUTE
 
@@ -18,7 +18,7 @@ export async function tellMillLaneSwap(stage: Stage): Promise<void> {
   const plan = {
     ...proposed,
     census: [{ tag: 'EF-3', words: 'Relay lever found in hand on; nobody at the store knows since when' }],
-    measures: ['Night covers on both walls', 'Ready meals go into the cold room before the start'],
+    measures: [measureAt(snapshot, 'night-covers', ['Dairy wall', 'Produce wall']), measureAt(snapshot, 'product-moved', ['Ready meals'], 'into the cold room')],
     note: 'New controller is set up on the bench with the settings saved after the failure.',
   }
   story.pass(41).sign(technician2, 'plan-changed', { plan, note: 'Census walked with Piers Hallam' })

@@ -11,7 +11,7 @@ import type { Round } from '../chapters'
 import type { Stage } from '../stage'
 import { Story } from '../storyteller'
 import { productCourse, usualCourse } from '../warming'
-import { workOf } from '../work'
+import { measureAt, workOf } from '../work'
 
 const HOUR = 60 * MINUTE
 /** Minutes without control: the three dark steps of the work. */
@@ -39,7 +39,7 @@ export async function tellQuarryStreetUpdate(stage: Stage): Promise<void> {
     const proposed = proposePlan(snapshot, workOf(equipment, 'Software update'), story.told(technician, begins))
     story.sign(technician, 'outage-opened', { planned: true, lostAt: null, cause: '', snapshot, plan: proposed })
     await story.send()
-    const changed = { ...proposed, measures: ['Night covers on both dairy walls and the deli island'], note: 'Doors stay shut from 02:00; the night crew stocks dry goods only.' }
+    const changed = { ...proposed, measures: [measureAt(snapshot, 'night-covers', ['Dairy wall 1–3', 'Dairy wall 4–7', 'Deli island 2'])], note: 'Doors stay shut from 02:00; the night crew stocks dry goods only.' }
     story.pass(14).sign(technician, 'plan-changed', { plan: changed, note: 'Night covers and the night crew settled with the store.' })
     await story.send()
     story.pass(3).sign(technician, 'plan-submitted', { note: 'Maker asks for this version before the summer set points.' })
