@@ -5,7 +5,8 @@ import { emptyState } from '~~/shared/record/state'
 import { assessCase } from '../holding/for-outage'
 import type { CurvePoint } from './hold-time'
 
-const STEP_MINUTES = 5
+/** As far apart as rounds usually are. */
+const STEP_MINUTES = 10
 const LONGEST_MINUTES = 600
 const MINUTE = 60_000
 const NO_ID = '00000000-0000-0000-0000-000000000000'
@@ -13,7 +14,7 @@ const NO_ID = '00000000-0000-0000-0000-000000000000'
 const LOST_AT = Date.UTC(2026, 0, 1)
 
 /**
- * The last minute after control is lost, in steps of five, at which a product that follows the curve may
+ * The last minute after control is lost, in steps of ten, at which a product that follows the curve may
  * still be kept by the site's rulebook: from then on it must be used, moved or discarded. Null: not within ten hours.
  * @param curve °C by minutes from the loss of control
  */

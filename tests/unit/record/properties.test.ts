@@ -109,7 +109,7 @@ describe('whatever is signed', () => {
         const counted = pointsInHand(happening.after).map(point => point.tag).sort()
         if (counted.join() !== hands.tags.join()) expect(counted).toEqual(hands.tags)
       })
-    }), { ...RUNS, numRuns: 700 })
+    }), { ...RUNS, numRuns: 1000 })
 
     expect([...seen.phases].sort()).toEqual([...PHASES].sort())
     expect(DRAWN.filter(kind => kind !== 'outage-opened' && !seen.accepted.get(kind)), 'never accepted').toEqual([])

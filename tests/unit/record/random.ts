@@ -1,7 +1,7 @@
 /** Random entries that a record may meet, judged and applied as the server does. */
 import fc from 'fast-check'
 import { marginAt } from '../../../server/utils/hold/margin'
-import { handBackAfter, planRefusals } from '../../../server/utils/order/for-outage'
+import { handBackAfter, handBackOrder, planRefusals } from '../../../server/utils/order/for-outage'
 import { BACK_CHECKS, BEFORE_CHECKS, CHECK_IDS } from '../../../shared/record/checks'
 import type { AnyEntry, StoredEntry } from '../../../shared/record/entry'
 import { entryHash, isoTime } from '../../../shared/record/entry'
@@ -121,7 +121,7 @@ function startOf(name: string, writer: RecordWriter): Start {
   return { name, entries: writer.entries, state: writer.state, now: writer.now }
 }
 
-function prepared(phase: 'plan' | 'approved' | 'in-hand' | 'hand-back' | 'settle', prepare: (writer: RecordWriter) => unknown): RecordWriter {
+function prepared(phase: 'plan' | 'approved' | 'in-hand' | 'hand-back' | 'settle' | 'submitted', prepare: (writer: RecordWriter) => unknown): RecordWriter {
   const writer = storyTo(phase)
   prepare(writer)
   return writer
@@ -149,10 +149,13 @@ export const STARTS: Start[] = [
   startOf('checks signed', prepared('in-hand', writer => signChecks(writer, BEFORE_CHECKS))),
   startOf('controller checked', prepared('hand-back', writer => signChecks(writer, BACK_CHECKS))),
   startOf('all returned', prepared('hand-back', (writer) => { signChecks(writer, BACK_CHECKS); returnAll(writer) })),
+  startOf('proof due', prepared('hand-back', (writer) => { signChecks(writer, BACK_CHECKS); writer.sign(technician, 'point-in-auto', { tag: handBackOrder(writer.state)[0]!.tag, seen: 'not-called' }) })),
   ...[1, 2, 3].map(() => startOf('all but one in hand', prepared('in-hand', allButOne))),
   ...[1, 2].map(() => startOf('sent', prepared('plan', writer => writer.sign(technician, 'plan-submitted', {})))),
   ...[1, 2].map(() => startOf('two claims', prepared('approved', writer => SIGNERS.slice(0, 2).forEach(signer => writer.pass(1).sign(signer, 'point-in-hand', inHand('DH-1'), { expect: 'questioned' }))))),
   ...[1, 2].map(() => startOf('in hand again', prepared('settle', (writer) => { settle(writer); writer.sign(technician, 'point-in-hand', inHand('EF-1')) }))),
+  ...[1, 2].map(() => startOf('under review', prepared('submitted', writer => writer.sign(supervisor, 'review-begun', {})))),
+  startOf('asked', prepared('settle', writer => writer.sign(supervisor, 'question-asked', { about: null, words: 'why?' }))),
   startOf('settled', prepared('settle', settle)),
 ]
 
