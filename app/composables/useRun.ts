@@ -29,7 +29,7 @@ export function useSiteClock() {
 
 /** Acts that end a screen or open a gate: the screen waits for the server's answer; all others go on once kept. */
 const WAITED_FOR: ReadonlySet<EntryKind> = new Set([
-  'plan-changed', 'plan-submitted', 'plan-approved', 'plan-returned', 'in-hand-begun', 'called-off',
+  'plan-changed', 'plan-submitted', 'plan-approved', 'plan-returned', 'margin-accepted', 'in-hand-begun', 'called-off',
   'went-dark', 'control-back', 'hand-back-closed', 'submitted', 'returned', 'sealed', 'left-in-exception', 'decided-otherwise',
 ])
 

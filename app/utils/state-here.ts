@@ -28,7 +28,7 @@ export function stateHere(base: OutageState, own: readonly OutboxEntry[], person
   for (const { entry, signature, keptAt, receipt } of ahead) {
     const judged = receipt ? { standing: receipt.status, why: receipt.why } : judgedHere(state, entry, person, around)
     applyStored(state, { entry, signature, seq: state.size + 1, receivedAt: receipt?.receivedAt ?? keptAt, standing: judged.standing, why: judged.why })
-    const body: { caseId?: unknown } = entry.body
+    const body: Record<string, unknown> = entry.body
     if (typeof body.caseId === 'string') checkCase(state, body.caseId, happenedAt(entry), checkedHere)
   }
   const moment = Math.max(now ?? 0, ...ahead.map(kept => happenedAt(kept.entry)))

@@ -56,7 +56,16 @@ export function normalWithin(within: number, mean: number, sd: number): number {
   return normalBelow((within - mean) / sd)
 }
 
-function simulate({ steps, order, before }: Network, within: number | undefined): Chance {
+function simulate(network: Network, within: number | undefined): Chance {
+  const ends = drawEnds(network)
+  return {
+    p95: ends[Math.ceil(0.95 * DRAWS) - 1]!,
+    pWithin: within === undefined ? null : countUpTo(ends, within + SAME_MINUTES) / DRAWS,
+  }
+}
+
+/** When the whole network was over in each draw, minutes, ascending; the same draws each time. */
+export function drawEnds({ steps, order, before }: Network): Float64Array {
   const uniform = uniformStream(SEED)
   const draw = steps.map(({ shortest, likely, longest }) => durationDrawer(shortest, likely, longest))
   const end = new Float64Array(steps.length)
@@ -71,11 +80,7 @@ function simulate({ steps, order, before }: Network, within: number | undefined)
     }
     ends[trial] = last
   }
-  ends.sort()
-  return {
-    p95: ends[Math.ceil(0.95 * DRAWS) - 1]!,
-    pWithin: within === undefined ? null : countUpTo(ends, within + SAME_MINUTES) / DRAWS,
-  }
+  return ends.sort()
 }
 
 /** How many of the ascending values are at most the given one. */
