@@ -1,4 +1,4 @@
-import { computed, onScopeDispose, ref, shallowRef } from 'vue'
+import { computed, onScopeDispose, ref, shallowRef, watch } from 'vue'
 import type { StoredEntry } from '~~/shared/record/entry'
 import { fold } from '~~/shared/record/fold'
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
@@ -12,7 +12,6 @@ import { handBackAfter, planRefusals } from '~~/server/utils/order/for-outage'
 import { keptFact, keepFact } from '~/offline/facts'
 import { drainFiles, keepFile } from '~/offline/files'
 import { keptOutbox, onKeptChange } from '~/offline/kept'
-import { signWith } from '~/offline/keys'
 import { forgetLog, keepLog, keptLog } from '~/offline/logs'
 import type { OutboxEntry, PushResult, Trouble } from '~/offline/outbox-ports'
 import { isWaiting } from '~/offline/outbox-ports'
@@ -59,6 +58,7 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
   const here = computed(() => stateHere(base.value, own.value.filter(item => item.refusal === null), person, SURROUNDINGS, alone.value))
   const state = computed(() => here.value.state)
   const checkedHere = computed(() => here.value.checkedHere)
+  watch(() => state.value.phase, phase => signer.during(id, phase), { immediate: true })
 
   const readKept = async () => { kept.value = await outbox.entries(id) }
 
@@ -142,12 +142,11 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
   /**
    * Signs an entry. Resolves once it is on this device, with the standing that this device foresees;
    * `receipt` resolves with the server's answer, or with `kept` when none came in good time.
+   * @throws NotUnlocked when the PIN is asked for and not given
    */
   async function sign<K extends EntryKind>(kind: K, body: BodyInput<K>): Promise<{ foreseen: Signed, receipt: Promise<Signed> }> {
-    const { key } = signer
-    if (!key) throw new Error('This device is not enrolled for signing')
-    const signing = { person: key.person, device: key.device, sign: (bytes: Uint8Array) => signWith(key, bytes) }
-    const entry = await outbox.keep(signing, id, kind, body, skew.value, base.value.chain[key.device] ?? null)
+    const key = await signer.unlocked(kind)
+    const entry = await outbox.keep(key, id, kind, body, skew.value, base.value.chain[key.device] ?? null)
     await readKept()
     const doubt = state.value.questioned.find(item => item.entry === entry.id)
     return { foreseen: doubt ? { status: 'questioned', why: doubt.why } : { status: 'accepted', why: [] }, receipt: receiptOf(entry.id) }

@@ -4,6 +4,7 @@ import { navigateTo, useRouter } from '#imports'
 import { clockWords } from '~~/shared/charts/words'
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
 import type { OutageHandle, Signed } from '~/composables/useOutage'
+import { NotUnlocked } from '~/stores/signer'
 import { encodePhoto } from '~/utils/photos'
 
 export interface Run extends OutageHandle { now: Readonly<Ref<number>> }
@@ -60,7 +61,7 @@ export function useSigning() {
       if (good && then !== undefined && router.currentRoute.value.fullPath === here) await navigateTo(then)
       return good
     } catch (error) {
-      trouble.value = [error instanceof Error && error.name === 'ZodError' ? faultOf(error) : `This could not be signed: ${error instanceof Error ? error.message : String(error)}`]
+      trouble.value = [error instanceof NotUnlocked ? error.message : error instanceof Error && error.name === 'ZodError' ? faultOf(error) : `This could not be signed: ${error instanceof Error ? error.message : String(error)}`]
       return false
     } finally {
       busy.value = false

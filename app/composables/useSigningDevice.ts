@@ -1,5 +1,4 @@
 import type { ComputedRef } from 'vue'
-import { forgetKey } from '~/offline/keys'
 import { fetchDevices } from '~/queries/account'
 import { useSigner } from '~/stores/signer'
 
@@ -21,8 +20,7 @@ export function useSigningDevice(): { state: ComputedRef<SigningState>, reload: 
     if (!held) return
     const known = await fetchDevices().catch(() => null) // no answer proves nothing
     if (known?.find(device => device.id === held.id)?.revokedAt) {
-      await forgetKey(user.value.id)
-      await signer.load(user.value.id)
+      await signer.forget(user.value.id)
     }
   }
   onMounted(reload)

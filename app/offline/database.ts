@@ -4,10 +4,16 @@ import type { StoredEntry } from '~~/shared/record/entry'
 import type { Phase } from '~~/shared/record/phases'
 import type { Snapshot } from '~~/shared/record/snapshot'
 import type { Role } from '~~/shared/schemas/people'
+import type { PinTries } from '~~/shared/signing/pin'
 import type { ChainEnd, OutboxEntry } from './outbox-ports'
+import type { SealedBytes } from './sealed-key'
 
-/** A person's signing key on this device. The private half cannot be taken out of the browser. */
-export interface KeptKey { person: string, device: string, name: string, publicKey: string, privateKey: CryptoKey, enrolledAt: string }
+interface KeyOwner { person: string, device: string, name: string, publicKey: string, enrolledAt: string }
+/** A person's signing key on this device, under their PIN and under a key that only this browser can use. */
+export interface PinKey extends KeyOwner { sealed: SealedBytes, deviceKey: CryptoKey, tries: PinTries }
+/** A key made before there were PINs: it can be used, but not taken out to be sealed, so a new one takes its place. */
+export interface PlainKey extends KeyOwner { privateKey: CryptoKey }
+export type KeptKey = PinKey | PlainKey
 
 /** A photo or drawing on its way to the server. */
 export interface KeptFile { sha256: string, outage: string, person: string, blob: Blob, keptAt: string, /** the server will not have it, and why */ refusal?: string }

@@ -1,6 +1,4 @@
-import type { Account } from '~~/shared/schemas/people'
-
-export interface DeviceItem { id: string, name: string, publicKey: string, enrolledAt: string, revokedAt: string | null }
+import type { Account, DeviceItem } from '~~/shared/schemas/people'
 
 /** Who is signed in, with the sites that are theirs. */
 export function useAccount() {
@@ -8,10 +6,11 @@ export function useAccount() {
   return useAsyncData('account', () => request<Account>('/api/account'))
 }
 
-/** The person's own signing devices, oldest first. */
-export function useDevices() {
+/** The signing devices of who is signed in, or, for an administrator, of another person; oldest first. */
+export function useDevices(personId?: string) {
   const request = useRequestFetch()
-  return useAsyncData('devices', () => request<DeviceItem[]>('/api/devices'))
+  const path: string = personId ? `/api/people/${personId}/devices` : '/api/devices'
+  return useAsyncData(`devices-${personId ?? 'own'}`, () => request<DeviceItem[]>(path))
 }
 
 export function fetchDevices(): Promise<DeviceItem[]> {
@@ -21,6 +20,11 @@ export function fetchDevices(): Promise<DeviceItem[]> {
 export function revokeDevice(id: string): Promise<{ id: string, revokedAt: string }> {
   const path: string = `/api/devices/${id}`
   return $fetch<{ id: string, revokedAt: string }>(path, { method: 'DELETE' })
+}
+
+export function renameDevice(id: string, name: string): Promise<{ id: string, name: string }> {
+  const path: string = `/api/devices/${id}`
+  return $fetch<{ id: string, name: string }>(path, { method: 'PATCH', body: { name } })
 }
 
 export function changePassword(current: string, next: string): Promise<{ changed: boolean }> {

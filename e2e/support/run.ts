@@ -3,13 +3,23 @@ import type { Page } from '@playwright/test'
 import { DEMO_PASSWORD } from '../../tests/support/client'
 import { hydrated } from './fixtures'
 
-/** Enrols the browser of somebody who is signed in as their signing device. */
+export const PIN = '407152'
+
+/** Enrols the browser of somebody who is signed in as their signing device, and gives its PIN from then on wherever it is asked for. */
 export async function enrol(page: Page) {
   await page.goto('/account/device')
   await hydrated(page)
+  for (const label of ['Choose a signing PIN', 'The same PIN once more']) {
+    await page.getByLabel(label, { exact: true }).click()
+    await page.keyboard.type(PIN)
+  }
   await page.getByLabel('Password').fill(DEMO_PASSWORD)
   await page.getByRole('button', { name: 'Enrol this browser' }).click()
   await expect(page).not.toHaveURL(/account\/device/)
+  await page.addLocatorHandler(page.getByRole('dialog', { name: /^PIN / }), async (dialog) => {
+    await dialog.getByLabel('Signing PIN', { exact: true }).click()
+    await page.keyboard.type(PIN)
+  })
 }
 
 /** Presses a button that signs, and waits until it has. */

@@ -78,9 +78,28 @@ export const passwordChangeSchema = z.object({
 }).refine(value => value.current !== value.next, { path: ['next'], message: 'Choose a password that differs from the present one' })
 
 export const DEVICE_NAME_MAX = 60
+const deviceName = z.string().trim().min(1, 'Name this device').max(DEVICE_NAME_MAX, `At most ${DEVICE_NAME_MAX} characters`)
+export const deviceRenameSchema = z.object({ name: deviceName })
 export const deviceEnrolSchema = z.object({
   id: z.string().uuid(),
-  name: z.string().trim().min(1, 'Name this device').max(DEVICE_NAME_MAX),
+  name: deviceName,
   publicKey: z.string().regex(/^[A-Za-z0-9_-]{43}$/, 'A public key is 32 bytes in base64url'),
   password: z.string().min(1, 'Enter your password').max(PASSWORD_MAX),
+  /** the device of the same person whose key this one takes the place of: it is revoked */
+  replaces: z.string().uuid().nullable().default(null),
 })
+
+/** A signing device; times in ISO 8601, UTC. */
+export interface DeviceItem {
+  id: string
+  name: string
+  publicKey: string
+  enrolledAt: string
+  /** When the server last took an entry of it. */
+  lastSeenAt: string | null
+  revokedAt: string | null
+  /** Who revoked it, by name. */
+  revokedBy: string | null
+  /** It was revoked because its browser made a new key. */
+  replaced: boolean
+}

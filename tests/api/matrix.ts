@@ -56,12 +56,14 @@ export const MATRIX: Row[] = [
   { route: 'POST /api/account/password', expected: ALL(422), path: () => '/api/account/password', body: () => ({}) },
 
   { route: 'GET /api/devices', expected: ALL(200), path: () => '/api/devices' },
+  { route: 'PATCH /api/devices/[id]', expected: [401, 404, 404, 404, 404, 404], path: ids => `/api/devices/${ids.device}`, body: () => ({ name: 'Not mine' }), unknown: `/api/devices/${NOTHING}` },
   { route: 'POST /api/devices', expected: [401, 422, 422, 403, 422, 403], path: () => '/api/devices', body: () => ({}) },
   // Another's device: not theirs, so not there, but for an administrator. Asked last, since it is revoked then.
   { route: 'DELETE /api/devices/[id]', expected: [401, 404, 404, 404, 404, 200], path: ids => `/api/devices/${ids.device}`, unknown: `/api/devices/${NOTHING}` },
 
   { route: 'GET /api/people', expected: ADMIN(200), path: () => '/api/people' },
   { route: 'POST /api/people', expected: ADMIN(422), path: () => '/api/people', body: () => ({}) },
+  { route: 'GET /api/people/[id]/devices', expected: ADMIN(200), path: ids => `/api/people/${ids.person}/devices`, unknown: `/api/people/${NOTHING}/devices` },
   { route: 'PATCH /api/people/[id]', expected: ADMIN(200), path: ids => `/api/people/${ids.person}`, body: () => ({}), unknown: `/api/people/${NOTHING}` },
 
   { route: 'GET /api/sites', expected: ALL(200), path: () => '/api/sites' },

@@ -1,4 +1,4 @@
-import { eq, or } from 'drizzle-orm'
+import { and, eq, isNull, or } from 'drizzle-orm'
 import { deviceEnrolSchema } from '~~/shared/schemas/people'
 import { devices } from '~~/server/database/schema'
 import { requireRole } from '~~/server/utils/access'
@@ -7,15 +7,22 @@ import { conflict } from '~~/server/utils/errors'
 import { readBodyAs } from '~~/server/utils/parse'
 import { requirePassword } from '~~/server/utils/people/fresh'
 
-/** Registers a device's public key for the person, who gives their password once more. */
+/** Registers a device's public key for the person, who gives their password once more; the key that it replaces is revoked with it. */
 export default defineEventHandler(async (event) => {
   const person = requireRole(event, 'technician', 'supervisor')
-  const { id, name, publicKey, password } = await readBodyAs(event, deviceEnrolSchema)
+  const { id, name, publicKey, password, replaces } = await readBodyAs(event, deviceEnrolSchema)
   await requirePassword(event, person, password, 'password')
   const db = useDatabase()
   const [known] = await db.select().from(devices).where(or(eq(devices.id, id), eq(devices.publicKey, publicKey)))
   if (known && (known.personId !== person.id || known.id !== id || known.publicKey !== publicKey)) return conflict('This key or device is registered already', 'publicKey')
-  if (!known) await db.insert(devices).values({ id, personId: person.id, name, publicKey, enrolledAt: new Date() })
+  const now = new Date()
+  await db.transaction(async (tx) => {
+    if (!known) await tx.insert(devices).values({ id, personId: person.id, name, publicKey, enrolledAt: now })
+    if (replaces !== null && replaces !== id) {
+      await tx.update(devices).set({ revokedAt: now, revokedBy: person.id, replacedBy: id })
+        .where(and(eq(devices.id, replaces), eq(devices.personId, person.id), isNull(devices.revokedAt)))
+    }
+  })
   setResponseStatus(event, known ? 200 : 201)
   return { id, name, publicKey }
 })

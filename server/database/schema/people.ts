@@ -36,6 +36,8 @@ export const devices = pgTable('devices', {
   publicKey: text().notNull(), // 32 bytes, base64url
   enrolledAt: timestamp({ withTimezone: true }).notNull(),
   revokedAt: timestamp({ withTimezone: true }),
+  revokedBy: uuid().references(() => people.id, { onDelete: 'restrict' }),
+  replacedBy: uuid(), // the device whose key took its place on the same browser
   lastSeenAt: timestamp({ withTimezone: true }),
 }, table => [
   uniqueIndex('devices_public_key').on(table.publicKey),

@@ -1,7 +1,7 @@
 import { and, eq } from 'drizzle-orm'
 import { canonicalText, sha256Hex } from '../../../shared/record/canonical'
 import type { AnyEntry, Standing } from '../../../shared/record/entry'
-import { entryBytes, signedEntrySchema } from '../../../shared/record/entry'
+import { entryBytes, happenedAt, signedEntrySchema } from '../../../shared/record/entry'
 import { isEntryKind, isServerKind, schemaOf } from '../../../shared/record/kinds'
 import { ENTRY_MAX_BYTES } from '../../../shared/record/kinds/common'
 import type { OutageState } from '../../../shared/record/state'
@@ -23,7 +23,7 @@ export type Admitted
   = | { done: PushResult }
   /** validly signed, but its body is wrong: refused, and its place in the chain is taken */
     | { faulty: AnyEntry, refusal: Refusal }
-    | { entry: AnyEntry, signature: string }
+    | { entry: AnyEntry, signature: string, /** why it is questioned though it fits, in words */ doubt: string | null }
 
 export function refuse(id: string | null, code: Refusal['code'], reason: string, field: string | null = null): Refusal {
   return { id, status: 'refused', code, field, reason, recorded: false }
@@ -50,16 +50,27 @@ export async function admit(db: Queries, person: Person, state: OutageState, ite
 
   const [device] = await db.select().from(devices).where(and(eq(devices.id, entry.device), eq(devices.personId, person.id)))
   if (!device) return wrong(403, 'This device is not enrolled for you')
-  if (device.revokedAt) return wrong(403, 'This device was revoked')
   if (!verifyBytes(entryBytes(entry), signature, device.publicKey)) return wrong(422, 'The signature does not fit the entry', `${at}.signature`)
+  const revoked = device.revokedAt?.getTime() ?? null
+  if (revoked !== null && happenedAt(entry) >= revoked) return wrong(403, `This device was revoked at ${utcWords(revoked)}, before this was signed`)
 
   const chain = state.chain[entry.device]
   if (entry.n !== (chain?.n ?? 0) + 1) return wrong(409, `This device's entry ${entry.n} cannot come after its entry ${chain?.n ?? 0}`, `${at}.entry.n`)
   if (entry.prev !== (chain?.hash ?? null)) return wrong(409, 'The entry does not name the hash of the one before it', `${at}.entry.prev`)
-  return checkBody(entry, signature, at)
+  return checkBody(entry, signature, at, revoked === null ? null : lateDoubt(revoked))
 }
 
-function checkBody(entry: AnyEntry, signature: string, at: string): Admitted {
+/**
+ * Why an entry is questioned that a revoked device signed before it was revoked: the signature is good, but
+ * the time is the device's word, and whoever found a lost one could give another. @param revoked Unix ms
+ */
+function lateDoubt(revoked: number): string {
+  return `signed by a device that was revoked at ${utcWords(revoked)}, and it came after that`
+}
+
+const utcWords = (ms: number) => `${new Date(ms).toISOString().slice(0, 16).replace('T', ' ')} UTC`
+
+function checkBody(entry: AnyEntry, signature: string, at: string, doubt: string | null): Admitted {
   const faulty = (reason: string, field: string): Admitted => ({ faulty: entry, refusal: { id: entry.id, status: 'refused', code: 422, field, reason, recorded: true } })
   if (!isEntryKind(entry.kind) || isServerKind(entry.kind)) return faulty(`Nobody signs an entry of the kind "${String(entry.kind)}"`, `${at}.entry.kind`)
   const schema = schemaOf(entry.kind, entry.v)
@@ -72,7 +83,7 @@ function checkBody(entry: AnyEntry, signature: string, at: string): Admitted {
     return faulty(reason, `${at}.entry.body${field ? `.${field}` : ''}`)
   }
   if (canonicalText(body.data) !== canonicalText(entry.body)) return faulty('The body is not written as its kind lays down (a default left out, or spaces at an end)', `${at}.entry.body`)
-  return { entry, signature }
+  return { entry, signature, doubt }
 }
 
 /** NUL stands in no text that a person writes, and the database keeps none. */

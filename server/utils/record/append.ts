@@ -4,6 +4,7 @@ import type { AnyEntry, Entry } from '../../../shared/record/entry'
 import { entryHash } from '../../../shared/record/entry'
 import { frontierRoot } from '../../../shared/record/merkle'
 import { asNewest } from '../../../shared/record/newest'
+import type { Judgement } from '../../../shared/record/rules'
 import { judge } from '../../../shared/record/rules'
 import { FOLD_VERSION } from '../../../shared/record/state'
 import { controllers, outages, refusals, sites } from '../../database/schema'
@@ -65,7 +66,8 @@ async function appendOne(draft: Draft, person: Person, item: unknown, at: string
   if ('faulty' in admitted) return recordRefusal(draft, admitted.faulty, admitted.refusal)
   const { entry, signature } = admitted
   await renameSigner(draft, person, entry.device)
-  const { standing, why } = judge(draft.state, entry, person, await surroundingsOf(draft.db, draft.state, entry, () => frontierRoot(draft.frontier)))
+  const judged = judge(draft.state, entry, person, await surroundingsOf(draft.db, draft.state, entry, () => frontierRoot(draft.frontier)))
+  const { standing, why } = doubted(judged, draft.state.opened === null ? null : admitted.doubt)
   // There is no log yet to keep a questioned entry in, nor one that comes before the opening.
   if (draft.state.opened === null && entry.kind !== 'outage-opened') return refuse(entry.id, 409, 'This outage is not open yet', `${at}.entry.outage`)
   if (draft.state.opened === null && standing === 'questioned') return refuse(entry.id, 422, why.join('; '), `${at}.entry.body.lostAt`)
@@ -78,6 +80,11 @@ async function appendOne(draft: Draft, person: Person, item: unknown, at: string
   const stored = await addEntry(draft, entry, signature, standing, why)
   if (entry.kind === 'outage-opened' && standing === 'accepted') await numberOutage(draft, entry.body.snapshot.site.id)
   return { id: entry.id, status: standing, seq: stored.seq, receivedAt: stored.receivedAt, why }
+}
+
+/** A doubt about the signer is a reason to question what else would be accepted. An opening has nothing to be questioned in. */
+function doubted({ standing, why }: Judgement, doubt: string | null): Judgement {
+  return doubt === null || standing === 'refused' ? { standing, why } : { standing: 'questioned', why: [doubt, ...why] }
 }
 
 /** The refusal leaves n, hash and reason in the log, so that the device's chain stays whole. */

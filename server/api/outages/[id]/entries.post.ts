@@ -1,8 +1,10 @@
 import { z } from 'zod'
+import type { SignedEntry } from '~~/shared/record/entry'
 import { pushSchema } from '~~/shared/record/entry'
 import { requirePerson } from '~~/server/utils/access'
 import { useDatabase } from '~~/server/utils/database'
 import { readBodyAs, readParamsAs } from '~~/server/utils/parse'
+import { markSeen } from '~~/server/utils/people/devices'
 import type { PushAnswer } from '~~/server/utils/record/append'
 import { appendEntries } from '~~/server/utils/record/append'
 
@@ -17,10 +19,18 @@ export default defineEventHandler(async (event) => {
   const person = requirePerson(event)
   const { id } = readParamsAs(event, params, 'outage')
   const { entries } = await readBodyAs(event, pushSchema, PUSH_MAX_BYTES)
-  const answer = await appendEntries(useDatabase(), person, id, entries, Date.now())
+  const [db, now] = [useDatabase(), Date.now()]
+  const answer = await appendEntries(db, person, id, entries, now)
+  await markSeen(db, person.id, devicesTaken(entries, answer), now)
   setResponseStatus(event, statusOf(answer))
   return withReason(answer)
 })
+
+/** Devices whose signatures were found good. */
+function devicesTaken(entries: unknown[], { results }: PushAnswer): string[] {
+  const taken = entries.filter((_item, index) => results[index]?.status !== 'refused')
+  return [...new Set(taken.map(item => (item as SignedEntry).entry.device))]
+}
 
 function statusOf({ results }: PushAnswer): number {
   const refused = results.filter(result => result.status === 'refused')

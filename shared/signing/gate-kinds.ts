@@ -1,0 +1,10 @@
+import type { EntryKind } from '../record/kinds'
+
+/** Acts that open a gate, in the words with which the PIN is asked for: always, however lately it was given. */
+export const GATES: Partial<Record<EntryKind, string>> = {
+  'plan-approved': 'to approve the plan',
+  'went-dark': 'to go dark',
+  'control-back': 'to sign that control is back',
+  'submitted': 'to submit the record',
+  'sealed': 'to countersign and seal',
+}
