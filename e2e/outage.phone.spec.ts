@@ -108,7 +108,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await page.getByLabel('I have read the record through').check({ force: true })
     await typeSignature(page, 'Tess Marlow')
     await sign(page, 'Sign: submit the record')
-    await expect(page.getByRole('heading', { level: 1, name: 'Submitted' })).toBeVisible()
+    await expect(page.getByRole('heading', { level: 1, name: 'Submitted' })).toBeVisible({ timeout: 30_000 })
     await expect(page.getByText('All in the record')).toBeVisible()
   })
 
@@ -118,6 +118,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await desk.getByLabel('What is missing').fill('Say who was told at the shop')
     await desk.getByLabel('A question to be answered').fill('Who was told at the shop?')
     await sign(desk, 'Sign: returned')
+    await expect(desk.getByRole('heading', { level: 1, name: 'Settle' })).toBeVisible()
     await page.goto(`/outages/${id}/questions`)
     await page.getByLabel('Answer').fill('The night manager, by telephone')
     await sign(page, 'Sign the answer')
@@ -126,12 +127,13 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await page.getByLabel('I have read the record through').check({ force: true })
     await typeSignature(page, 'Tess Marlow')
     await sign(page, 'Sign: submit the record')
+    await expect(page.getByRole('heading', { level: 1, name: 'Submitted' })).toBeVisible({ timeout: 30_000 })
     await expect(page.getByText('All in the record')).toBeVisible()
     await desk.goto(`/outages/${id}/review`)
     await desk.getByLabel('I have reviewed the record').check({ force: true })
     await typeSignature(desk, 'Sam Ridley')
     await sign(desk, 'Sign: countersign and seal')
-    await expect(desk.getByRole('heading', { level: 1, name: 'Sealed' })).toBeVisible()
+    await expect(desk.getByRole('heading', { level: 1, name: 'Sealed' })).toBeVisible({ timeout: 30_000 })
   })
 
   await test.step('the auditor reads it and takes the PDF', async () => {

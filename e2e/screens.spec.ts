@@ -35,6 +35,16 @@ test('the technician\'s screens', async ({ page }) => {
   for (const path of ['', '/round', '/points', `/points/${encodeURIComponent(tag!)}`, '/pressures', '/steps', '/act', `/act/${caseId}`, '/turn-back', '/back', '/note', '/plan', '/questioned', '/correct', '/questions']) await look(page, `/outages/${dark.id}${path}`, true)
   const planned = items.find(item => item.phase === 'plan')!
   for (const path of ['', '/plan-edit', '/call-off', '/lost', '/checks', '/go-dark', '/return', '/proofs', '/exception', '/defrost', '/submit']) await look(page, `/outages/${planned.id}${path}`, true)
+  await test.step('the PIN', async () => {
+    await page.goto(`/outages/${dark.id}/note`)
+    await page.getByLabel('Note').fill('Not signed')
+    await page.getByRole('button', { name: 'Sign the note' }).click()
+    // Looked at without a locator: those give the PIN by themselves.
+    await page.waitForFunction(() => document.activeElement?.closest('dialog[open]'))
+    await axe(page, { enhanced: true })
+    await page.keyboard.press('Escape')
+    await page.waitForFunction(() => document.body.innerText.includes('Nothing is signed: the PIN was not given.'))
+  })
 })
 
 test('the screens of the others', async ({ page, open }) => {
@@ -50,5 +60,6 @@ test('the screens of the others', async ({ page, open }) => {
   const admin = await open('desk')
   await signInAs(admin, people.administrator)
   const sites = await (await admin.request.get('/api/sites')).json() as { id: string }[]
-  for (const path of ['/', '/people', '/people/new', '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/history`, '/people/history', '/work-kinds/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
+  const technician = (await (await admin.request.get('/api/people')).json() as { id: string, email: string }[]).find(person => person.email === people.technician)!
+  for (const path of ['/', '/people', '/people/new', `/people/${technician.id}`, '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/history`, '/people/history', '/work-kinds/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
 })
