@@ -6,6 +6,7 @@ export default defineConfig({
   resolve: base.resolve,
   test: {
     environment: 'node',
+    isolate: false,
     include: ['tests/unit/holding/every.ts'],
     // A mutant that outlives so many logs outlives more of them.
     env: { ORACLE_LOGS: '2000' },

@@ -3,13 +3,19 @@
 import { readdir, rm } from 'node:fs/promises'
 import { cpus } from 'node:os'
 import { join } from 'node:path'
-import { fileURLToPath } from 'node:url'
+import { fileURLToPath, pathToFileURL } from 'node:url'
 import { build } from 'vite'
 import { closeAll, closeOnSignals, run } from './lib/processes.mjs'
 
 const root = fileURLToPath(new URL('..', import.meta.url)).replace(/\/$/, '')
 // Below node_modules, so that what is not bundled is found from there.
 const room = join(root, 'node_modules/.cache/holdover-bench')
+
+/** A bundle lies elsewhere than its sources: what these find beside themselves they go on finding. */
+const ownAddress = {
+  name: 'own-address',
+  transform: (code, id) => code.includes('import.meta.url') ? code.replaceAll('import.meta.url', JSON.stringify(pathToFileURL(id).href)) : null,
+}
 
 /** Bundles a benchmark, so that it runs as the built program does: without a transpiler's detours between modules. */
 async function bundle(file) {
@@ -18,6 +24,7 @@ async function bundle(file) {
     root,
     logLevel: 'error',
     resolve: { alias: { '~~': root, '@@': root, '#shared': join(root, 'shared') } },
+    plugins: [ownAddress],
     build: { ssr: join(root, 'bench', file), outDir: room, emptyOutDir: false, rollupOptions: { output: { entryFileNames: `${file}.mjs` } } },
   })
   return join(room, `${file}.mjs`)

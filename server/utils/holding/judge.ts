@@ -17,11 +17,11 @@ import { carefulMs, linearMs, stretchesOf, sumOver } from './stretches'
 import type { Counting } from './stretches'
 import type { Assessment, EffectiveClass, Rule, Rulebook } from './types'
 import { isOver } from './units'
-import { temperatureWords } from './words'
+import { temperatureKind, temperatureWords } from './words'
 import { reasonsFor } from './reasons'
 
-const ACT_ON_UNKNOWN = 'Take a product temperature now: the last one is older than the interval.'
-const ACT_WITHOUT_READING = 'Take a product temperature now: there is none to judge by.'
+const actOnUnknown = (foodClass: EffectiveClass) => `Take ${temperatureKind(foodClass)} now: the last one is older than the interval.`
+const actWithoutReading = (foodClass: EffectiveClass) => `Take ${temperatureKind(foodClass)} now: there is none to judge by.`
 
 function findBy(rule: Rule<number>, of: Case): Finding {
   switch (rule.kind) {
@@ -91,7 +91,7 @@ function assessNothing(log: HoldingLog, foodClass: EffectiveClass, rulebook: Rul
     suspect: log.suspect,
     clause: foodClass.within.clause,
     source: foodClass.within.source,
-    act: ACT_WITHOUT_READING,
+    act: actWithoutReading(foodClass),
     why: [`No reading of ${foodClass.judgedBy} temperature was given, and no other kind clears or condemns product.`],
   }
 }
@@ -130,7 +130,7 @@ export function assess(input: AssessInput): Assessment {
     suspect: log.suspect,
     clause: outcome.authority.clause,
     source: outcome.authority.source,
-    act: isUnknown ? ACT_ON_UNKNOWN : outcome.act,
+    act: isUnknown ? actOnUnknown(foodClass) : outcome.act,
     why: reasonsFor(of, outcome, counting, isUnknown, findings.flatMap(({ remarks }) => remarks)),
   }
 }

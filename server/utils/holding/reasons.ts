@@ -6,7 +6,7 @@ import type { TemperatureUnit } from '~~/shared/schemas/assess'
 import type { Case, Outcome } from './rules/finding'
 import { carefulMs } from './stretches'
 import type { Counting } from './stretches'
-import { instantWords, MARK_WORDS, minutesWords, temperatureWords } from './words'
+import { instantWords, MARK_WORDS, minutesWords, temperatureKind, temperatureWords } from './words'
 
 /** How many periods are listed one by one before the rest is only counted. */
 const MOST_PERIODS = 20
@@ -64,6 +64,6 @@ export function reasonsFor(of: Case, outcome: Outcome, counting: Counting, isUnk
   if (of.log.tooCold)
     reasons.push(`A reading was below ${temperatureWords(of.foodClass.lowMark!, of.unit)}: product may be freezing.`)
   if (of.log.suspect)
-    reasons.push(`A reading of another kind was above the limit: take a ${of.foodClass.judgedBy} temperature.`)
+    reasons.push(`A reading of another kind was above the limit: take ${temperatureKind(of.foodClass)}.`)
   return [...reasons, ...of.foodClass.notes]
 }

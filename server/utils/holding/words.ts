@@ -24,6 +24,11 @@ export function temperatureWords(value: number, unit: TemperatureUnit): string {
   return `${figureWords(value)} °${unit}`
 }
 
+/** What is to be measured for a class. */
+export function temperatureKind({ judgedBy }: { judgedBy: 'product' | 'air' }): string {
+  return judgedBy === 'air' ? 'an air temperature' : 'a product temperature'
+}
+
 /** A duration in minutes, from ms. */
 export function minutesWords(ms: number): string {
   const minutes = figureWords(ms / MINUTE)
