@@ -28,6 +28,7 @@ export default defineNuxtConfig({
   routeRules: {
     // The run is a shell without data; it folds the log that it fetches (and, later, the one kept on the phone).
     '/outages/**': { ssr: false },
+    '/verify': { ssr: false },
   },
   compatibilityDate: '2026-01-01',
   nitro: {

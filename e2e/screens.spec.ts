@@ -49,6 +49,7 @@ test('the technician\'s screens', async ({ page }) => {
 
 test('the screens of the others', async ({ page, open }) => {
   test.setTimeout(300_000)
+  await look(page, '/verify', false)
   await signInAs(page, people.supervisor)
   const { items } = await (await page.request.get('/api/outages')).json() as { items: Item[] }
   const submitted = items.find(item => item.phase === 'submitted')!

@@ -10,6 +10,7 @@ import type { Role } from '~~/shared/schemas/people'
 import { marginAt } from '~~/server/utils/hold/margin'
 import { handBackAfter, planRefusals } from '~~/server/utils/order/for-outage'
 import { keptFact, keepFact } from '~/offline/facts'
+import { watchLog } from '~/offline/checkpoints'
 import { drainFiles, keepFile } from '~/offline/files'
 import { keptOutbox, onKeptChange } from '~/offline/kept'
 import { forgetLog, keepLog, keptLog } from '~/offline/logs'
@@ -36,6 +37,7 @@ export const SURROUNDINGS: Surroundings = { planRefusals, handBackAfter, margin:
 export function useOutage(id: string, person: { id: string, role: Role }) {
   const signer = useSigner()
   const outbox = keptOutbox()
+  const sameLog = watchLog(id)
   const entries = shallowRef<StoredEntry[]>([])
   const base = shallowRef(emptyState(id))
   const kept = shallowRef<OutboxEntry[]>([])
@@ -104,6 +106,9 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
         heardAt.value = Date.now()
         failure.value = null
         alone.value = null
+        await sameLog.look(entries.value, page, device => base.value.signers[device]?.publicKey)
+        // What this phone holds is not overwritten by another log.
+        if (sameLog.parting.value) break
         await keepHere(fresh)
         if (fresh.length === 0 || base.value.size >= page.size) break
       }
@@ -127,6 +132,7 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
   }
 
   async function send(): Promise<Map<string, PushResult>> {
+    if (sameLog.parting.value) return new Map()
     const { answers, trouble: met } = await outbox.drain(id, person.id).catch(() => ({ answers: new Map<string, PushResult>(), trouble: 'failed' as Trouble }))
     trouble.value = met
     if (met === null) await drainFiles(id, person.id, putFile).catch(() => undefined)
@@ -145,6 +151,7 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
    * @throws NotUnlocked when the PIN is asked for and not given
    */
   async function sign<K extends EntryKind>(kind: K, body: BodyInput<K>): Promise<{ foreseen: Signed, receipt: Promise<Signed> }> {
+    if (sameLog.parting.value) throw new Error('this log is not the one that this phone saw')
     const key = await signer.unlocked(kind)
     const entry = await outbox.keep(key, id, kind, body, skew.value, base.value.chain[key.device] ?? null)
     await readKept()
@@ -184,6 +191,7 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
   }
 
   async function open(): Promise<void> {
+    await sameLog.open()
     await readHeld()
     if (!signer.loaded) await signer.load(person.id)
     await sync()
@@ -207,7 +215,7 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
     if (import.meta.client) window.removeEventListener('online', online)
   })
 
-  return { id, person, signer, state, entries, base, kept: own, pending, refused, checkedHere, loaded, failure, trouble, unkept, heardAt, skew, measure, open, sync, sign, attach, dismiss, root }
+  return { id, person, signer, state, entries, base, kept: own, parting: sameLog.parting, pending, refused, checkedHere, loaded, failure, trouble, unkept, heardAt, skew, measure, open, sync, sign, attach, dismiss, root }
 }
 
 export type OutageHandle = ReturnType<typeof useOutage>

@@ -1,7 +1,10 @@
 import { uuidv7 } from '~~/shared/record/uuid'
 import { pushEntries } from '~/queries/entries'
+import { isParted } from './checkpoints'
 import { browserLocks } from './locks'
 import { createOutbox } from './outbox'
+import { Unsent } from './outbox-ports'
+import type { Send } from './outbox-ports'
 import type { Outbox } from './outbox'
 import { outboxStore } from './outbox-store'
 
@@ -14,8 +17,14 @@ const listeners = new Set<Listener>()
 
 /** The outbox of this browser: one for all screens of a tab. */
 export function keptOutbox(): Outbox {
-  outbox ??= createOutbox({ store: outboxStore, send: pushEntries, locks: browserLocks(), now: Date.now, newId: uuidv7, changed: tellChanged })
+  outbox ??= createOutbox({ store: outboxStore, send: pushUnlessParted, locks: browserLocks(), now: Date.now, newId: uuidv7, changed: tellChanged })
   return outbox
+}
+
+/** Nothing is sent to build on a log that is not the one this device saw. */
+const pushUnlessParted: Send = async (outage, entries) => {
+  if (await isParted(outage)) throw new Unsent('failed')
+  return pushEntries(outage, entries)
 }
 
 /** Tells this tab's screens and the other tabs that what is kept of an outage has changed. */

@@ -1,8 +1,9 @@
+import type { Checkpoint } from '~~/shared/record/checkpoint'
 import type { AnyEntry, StoredEntry } from '~~/shared/record/entry'
 import { Unsent } from '~/offline/outbox-ports'
 import type { PushResult, Trouble } from '~/offline/outbox-ports'
 
-export interface EntriesPage { entries: StoredEntry[], size: number, phase: string, code: string | null, now: string }
+export interface EntriesPage { entries: StoredEntry[], size: number, phase: string, code: string | null, checkpoint: Checkpoint | null, now: string }
 
 /** Entries of an outage after a seq; a page of at most 500. */
 export function fetchEntries(outage: string, after: number): Promise<EntriesPage> {

@@ -12,7 +12,7 @@ import type { OutageState } from '../state'
 import { emptyState, FOLD_VERSION } from '../state'
 import { canonicalText } from '../canonical'
 import type { RecordFault, Verification, VerifiedFacts, VerifiedSeal, VerifiedSigner } from './result'
-import type { ReadCheckpoint, RecordHead } from './shape'
+import type { RecordHead } from './shape'
 import { readCheckpoint, readItem, recordHeadSchema } from './shape'
 import type { CheckSignature } from './signatures'
 
@@ -31,17 +31,16 @@ class Walk {
   hashed = true
   private readonly chains = new Map<string, { n: number, hash: string }>()
   private readonly ids = new Set<string>()
-  private readonly checkpoints = new Map<number, ReadCheckpoint>()
+  private readonly checkpoints = new Map<number, unknown>()
   private readonly signatures: { fault: RecordFault, good: boolean | Promise<boolean> }[] = []
   private readonly firstCheckpoint: number
 
   constructor(readonly head: RecordHead, private readonly check: CheckSignature) {
     for (const item of head.checkpoints) {
-      const found = readCheckpoint(item)
-      const size = found?.checkpoint.statement.size ?? 0
-      if (!found) this.fault(null, 'checkpoints', 'one of them has not the form of a checkpoint')
+      const size = (item as { statement?: { size?: unknown } } | null)?.statement?.size
+      if (typeof size !== 'number' || !Number.isInteger(size) || size < 1) this.fault(null, 'checkpoints', 'one of them has not the form of a checkpoint')
       else if (this.checkpoints.has(size)) this.fault(null, 'checkpoints', `there are two of size ${size}`)
-      this.checkpoints.set(size, found)
+      else this.checkpoints.set(size, item)
     }
     this.firstCheckpoint = Math.min(...this.checkpoints.keys())
     if (head.checkpoints.length > 0 && Math.max(...this.checkpoints.keys()) > head.entries.length) this.fault(null, 'checkpoints', `the server signed that there are ${Math.max(...this.checkpoints.keys())} entries, and here are ${head.entries.length}: the rest is gone`)
@@ -110,21 +109,28 @@ class Walk {
     const { entry, standing } = stored
     if (entry.kind === 'sealed' && standing === 'accepted') this.takeSeal(stored, entry.body)
     this.frontier = addLeaf(this.frontier, leaf)
+    this.takeCheckpoint(stored)
+  }
+
+  /** The server's word on the log with this entry in it. Behind the first that does not fit all others would fail alike. */
+  private takeCheckpoint(stored: StoredEntry): void {
     const size = this.frontier.size
-    const checkpoint = this.checkpoints.get(size)
-    if (!checkpoint) {
-      if (size > this.firstCheckpoint) this.fault(stored, 'checkpoint', 'the server\'s checkpoint of it is missing')
-      return
+    if (!this.treeHolds || size < this.firstCheckpoint) return
+    const wrong = (why: string) => {
+      this.treeHolds = false
+      this.fault(stored, 'checkpoint', why)
     }
-    const { statement, signature } = checkpoint.checkpoint
+    if (!this.checkpoints.has(size)) return wrong('the server\'s checkpoint of it is missing')
+    const found = readCheckpoint(this.checkpoints.get(size))
+    if (!found) return wrong('it has not the form of a checkpoint')
+    const { statement, signature } = found.checkpoint
+    if (statement.outage !== this.head.outage.id) return wrong('it is of another outage')
     const key = this.signers.get(statement.key)
-    if (statement.outage !== this.head.outage.id) this.fault(stored, 'checkpoint', 'it is of another outage')
-    if (!key || key.role !== 'server') return this.fault(stored, 'checkpoint', 'no entry names the server\'s key that signed it')
-    this.signatures.push({ fault: { seq: stored.seq, id: entry.id, field: 'checkpoint', why: 'its signature does not fit the server\'s key' }, good: this.check(key.publicKey, signature, checkpoint.bytes) })
-    if (!this.treeHolds) return
-    if (statement.root === frontierRoot(this.frontier) && statement.time === stored.receivedAt) return
-    this.treeHolds = false
-    this.fault(stored, 'checkpoint', 'the root that the server signed when it stored this entry is another: this entry, or what the server noted beside it (seq, receivedAt, standing, why), was changed')
+    if (key?.role !== 'server') return wrong('no entry names the server\'s key that signed it')
+    if (statement.root !== frontierRoot(this.frontier) || statement.time !== stored.receivedAt) return wrong('the root that the server signed when it stored this entry is another: this entry, or what the server noted beside it (seq, receivedAt, standing, why), was changed')
+    const good = this.check(key.publicKey, signature, found.bytes)
+    if (good === false) return wrong('its signature does not fit the server\'s key')
+    if (good !== true) this.signatures.push({ fault: { seq: stored.seq, id: stored.entry.id, field: 'checkpoint', why: 'its signature does not fit the server\'s key' }, good })
   }
 
   private takeSeal(stored: StoredEntry, body: BodyOf<'sealed'>): void {
