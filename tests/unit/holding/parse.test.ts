@@ -40,6 +40,9 @@ describe('a good body', () => {
     const readings = Array.from({ length: 5_000 }, (_, index) => ({ at: at(index / 100), value: 40 }))
     expect(faultOf({ readings, now: at(50) })).toBeNull()
     expect(faultOf({ readings: [...readings, { at: at(50), value: 40 }], now: at(50) })).toEqual({ field: 'readings', reason: 'must hold at most 5000 readings' })
+    // Too long is said before anything of its members.
+    expect(faultOf({ readings: Array.from({ length: 5_001 }, () => 0) })).toEqual({ field: 'readings', reason: 'must hold at most 5000 readings' })
+    expect(faultOf({ readings: Array.from({ length: 5_000 }, () => 0) })).toMatchObject({ field: 'readings[0]' })
   })
 })
 
