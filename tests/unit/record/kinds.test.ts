@@ -126,8 +126,8 @@ describe('the envelope', () => {
     expect(signedEntrySchema.safeParse({ entry, signature: wrong }).success).toBe(false)
   })
 
-  it('takes one to fifty entries at once', () => {
+  it('takes one to a hundred entries at once', () => {
     const many = (count: number) => pushSchema.safeParse({ entries: Array.from({ length: count }, () => ({})) }).success
-    expect([0, 1, 50, 51].map(many)).toEqual([false, true, true, false])
+    expect([0, 1, 100, 101].map(many)).toEqual([false, true, true, false])
   })
 })
