@@ -1,8 +1,10 @@
+import { randomUUID } from 'node:crypto'
 import { cp } from 'node:fs/promises'
 import { join } from 'node:path'
+import { SHELL_PATH, SHELL_ROUTES } from './shared/shell-routes'
 
 export default defineNuxtConfig({
-  modules: ['@nuxt/eslint', '@nuxtjs/tailwindcss', '@pinia/nuxt', '@sidebase/nuxt-auth'],
+  modules: ['@nuxt/eslint', '@nuxtjs/tailwindcss', '@pinia/nuxt', '@sidebase/nuxt-auth', '@vite-pwa/nuxt'],
   // Component names follow their file, not their folder: <UiButton> lives in components/ui/UiButton.vue.
   components: [{ path: '~/components', pathPrefix: false }],
   imports: { dirs: ['queries', 'stores', 'offline'] },
@@ -16,7 +18,11 @@ export default defineNuxtConfig({
         { name: 'description', content: 'Plan, run and record a refrigeration controller\'s time out of service.' },
         { name: 'theme-color', content: '#F4EFE3' },
       ],
-      link: [{ rel: 'icon', type: 'image/svg+xml', href: '/mark.svg' }],
+      link: [
+        { rel: 'icon', type: 'image/svg+xml', href: '/mark.svg' },
+        { rel: 'apple-touch-icon', href: '/icons/mark-180.png' },
+        { rel: 'manifest', href: '/manifest.webmanifest' },
+      ],
     },
   },
   css: ['~/assets/css/main.css'],
@@ -26,9 +32,8 @@ export default defineNuxtConfig({
     dataDir: '', // NUXT_DATA_DIR, from HOLDOVER_DATA
   },
   routeRules: {
-    // The run is a shell without data; it folds the log that it fetches (and, later, the one kept on the phone).
-    '/outages/**': { ssr: false },
-    '/verify': { ssr: false },
+    // The run is a shell without data; it folds the log that it fetches and the one kept on the phone.
+    ...Object.fromEntries(SHELL_ROUTES.flatMap(route => [[route, { ssr: false }], [`${route}/**`, { ssr: false }]])),
   },
   compatibilityDate: '2026-01-01',
   nitro: {
@@ -55,6 +60,36 @@ export default defineNuxtConfig({
     sessionRefresh: { enablePeriodically: false, enableOnWindowFocus: false },
   },
   eslint: { config: { stylistic: { semi: false, quotes: 'single', commaDangle: 'always-multiline', braceStyle: '1tbs' } } },
+  // The worker is built as holdover-worker.js and served as /sw.js (server/routes), where it can be switched off.
+  pwa: {
+    strategies: 'injectManifest',
+    srcDir: 'service-worker',
+    filename: 'holdover-worker.ts',
+    injectRegister: false,
+    client: { registerPlugin: false },
+    injectManifest: {
+      globPatterns: ['_nuxt/**/*.{js,css,woff2}', 'mark.svg', 'icons/*.png'],
+      // The shell is fetched from the running server at each new build, with the policy that belongs to it.
+      additionalManifestEntries: [{ url: SHELL_PATH, revision: randomUUID() }],
+    },
+    manifest: {
+      id: '/',
+      name: 'Holdover',
+      short_name: 'Holdover',
+      description: 'Plan, run and record a refrigeration controller\'s time out of service.',
+      lang: 'en',
+      start_url: '/',
+      scope: '/',
+      display: 'standalone',
+      background_color: '#F4EFE3',
+      theme_color: '#F4EFE3',
+      icons: [
+        { src: '/icons/mark-192.png', sizes: '192x192', type: 'image/png' },
+        { src: '/icons/mark-512.png', sizes: '512x512', type: 'image/png' },
+        { src: '/icons/mark-maskable-512.png', sizes: '512x512', type: 'image/png', purpose: 'maskable' },
+      ],
+    },
+  },
   // One style sheet holds Tailwind's layers; without this the module would add its own beside it.
   tailwindcss: { cssPath: '~/assets/css/main.css', viewer: false },
 })

@@ -198,14 +198,20 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
     schedule()
   }
 
+  /** Another tab, or what sends in the background, changed what is kept: the log that it kept is taken first, so that no entry is out of sight. */
+  async function hearChange(): Promise<void> {
+    const held = await keptLog(id, person.id).catch(() => null)
+    take((held?.entries ?? []).filter(stored => stored.seq > base.value.size))
+    await readKept().catch(() => undefined)
+  }
+
   const online = () => { void sync() }
   let deaf: () => void = () => undefined
   if (import.meta.client) {
     window.addEventListener('online', online)
     deaf = onKeptChange((outage) => {
       if (outage !== id) return
-      // A receipt that another tab or the background brought: the log is asked, so that the entry is seen in its place.
-      void readKept().then(() => { if (own.value.some(item => item.receipt && item.receipt.seq > base.value.size)) void pull() })
+      void hearChange()
     })
   }
   onScopeDispose(() => {

@@ -6,6 +6,7 @@ import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
 import type { OutageHandle, Signed } from '~/composables/useOutage'
 import { NotUnlocked } from '~/stores/signer'
 import { encodePhoto } from '~/utils/photos'
+import { signingFault } from '~/utils/signing-fault'
 
 export interface Run extends OutageHandle { now: Readonly<Ref<number>> }
 
@@ -61,7 +62,7 @@ export function useSigning() {
       if (good && then !== undefined && router.currentRoute.value.fullPath === here) await navigateTo(then)
       return good
     } catch (error) {
-      trouble.value = [error instanceof NotUnlocked ? error.message : error instanceof Error && error.name === 'ZodError' ? faultOf(error) : `This could not be signed: ${error instanceof Error ? error.message : String(error)}`]
+      trouble.value = [error instanceof NotUnlocked ? error.message : error instanceof Error && error.name === 'ZodError' ? faultOf(error) : signingFault(error)]
       return false
     } finally {
       busy.value = false

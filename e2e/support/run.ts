@@ -16,6 +16,11 @@ export async function enrol(page: Page) {
   await page.getByLabel('Password').fill(DEMO_PASSWORD)
   await page.getByRole('button', { name: 'Enrol this browser' }).click()
   await expect(page).not.toHaveURL(/account\/device/)
+  await givePin(page)
+}
+
+/** Gives the PIN on a page wherever it is asked for. */
+export async function givePin(page: Page) {
   await page.addLocatorHandler(page.getByRole('dialog', { name: /^PIN / }), async (dialog) => {
     await dialog.getByLabel('Signing PIN', { exact: true }).click()
     await page.keyboard.type(PIN)

@@ -1,5 +1,6 @@
 import { randomBytes } from 'node:crypto'
-import { contentPolicy, safetyHeaders, withNonce } from '~~/server/utils/content-policy'
+import { isShellPath } from '~~/shared/shell-routes'
+import { contentPolicy, safetyHeaders, shellPolicy, withNonce } from '~~/server/utils/content-policy'
 import { ownOrigin } from '~~/server/utils/origin'
 
 /** Safety headers on every answer; on a page also its content policy, with a nonce that is new each time. */
@@ -10,6 +11,12 @@ export default defineNitroPlugin((nitro) => {
   nitro.hooks.hook('render:html', (html, { event }) => {
     // The development server puts scripts and styles of its own into the page.
     if (import.meta.dev) return
+    // The shell is the same for everybody and is kept by phones.
+    if (isShellPath(getRequestURL(event).pathname)) {
+      const policy = shellPolicy([...html.head, ...html.bodyPrepend, ...html.body, ...html.bodyAppend].join('\n'))
+      setResponseHeaders(event, { 'content-security-policy': policy, 'cache-control': 'no-store' })
+      return
+    }
     const nonce = randomBytes(16).toString('base64')
     // The body is what components rendered and holds no script; the frame around it does.
     html.head = html.head.map(part => withNonce(part, nonce))

@@ -125,6 +125,10 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     state.backAt = backAt
     state.phase = 'hand-back'
   },
+  'silence-announced': (state, entry) => {
+    const heard = state.heard[entry.device]
+    if (heard) heard.until = correctedTime(entry, entry.body.until)
+  },
   'note-added': (state, { body }, mark) => { state.notes.push({ ...body, mark }) },
 
   'correction': (state, { body }, mark) => {

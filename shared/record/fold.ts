@@ -28,6 +28,7 @@ export function applyStored(state: OutageState, stored: StoredEntry): void {
   if (stored.seq <= state.size) return
   const { entry } = stored
   state.size = stored.seq
+  state.heard[entry.device] = { at: Date.parse(stored.receivedAt), until: state.heard[entry.device]?.until ?? null }
   const mark: Mark = { by: entry.by, at: happenedAt(entry), seq: stored.seq, entry: entry.id }
   const read = asNewest(entry)
   if (stored.standing === 'accepted') applyAccepted(state, read, mark)

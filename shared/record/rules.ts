@@ -117,6 +117,7 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
     const from = state.darks.at(-1)?.from ?? 0
     return correctedTime(entry, entry.body.backAt) < from ? ['control cannot be back before it was lost'] : ahead(entry, entry.body.backAt)
   } },
+  'silence-announced': { roles: HANDS, phases: BEFORE_SEAL, unfit: (_state, entry) => correctedTime(entry, entry.body.until) <= happenedAt(entry) ? ['the time lies in the past'] : [] },
   'note-added': { roles: HANDS, phases: BEFORE_SEAL },
 
   'correction': { roles: HANDS, phases: BEFORE_SEAL, unfit: (state, { body }) => body.reading === null || Object.values(state.cases).some(item => item.readings.some(reading => reading.entry === body.corrects)) ? [] : ['there is no such reading'] },

@@ -10,7 +10,7 @@ import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 5
+export const FOLD_VERSION = 6
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
@@ -138,6 +138,8 @@ export interface OutageState {
   refusals: { device: string, n: number, id: string, reason: string, seq: number }[]
   /** each device's own chain here: its count and the hash of its last entry, refused ones included */
   chain: Record<string, { n: number, hash: string }>
+  /** each device: when the server last received something of it, and until when it said that it has no signal, Unix ms */
+  heard: Record<string, { at: number, until: number | null }>
   /** Largest |skew| seen, ms, and whose device */
   largestSkew: { ms: number, device: string } | null
 }
@@ -176,6 +178,6 @@ export function emptyState(id: string): OutageState {
     checks: {}, points: {}, cases: {}, pressures: [], plant: [], darks: [], turnedBack: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
     calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],
-    refusals: [], chain: {}, largestSkew: null,
+    refusals: [], chain: {}, heard: {}, largestSkew: null,
   }
 }

@@ -1,6 +1,8 @@
+import { clockWords } from '../charts/words'
 import { handWords } from '../schemas/point-kinds'
 import { checkById } from './checks'
 import type { AnyEntry, Entry } from './entry'
+import { correctedTime, isoTime } from './entry'
 import type { EntryKind } from './kinds'
 import { asNewest } from './newest'
 import { acceptedWords } from './margin'
@@ -49,6 +51,7 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'step-ticked': (state, { body }) => tell(`${[...state.plan.steps, ...state.plan.rollBack].find(step => step.id === body.step)?.name ?? body.step}: ${body.state}`, body.words),
   'turned-back': (_state, { body }) => tell('Turned back', body.reason),
   'control-back': (_state, { body }) => tell('Control is back', body.words),
+  'silence-announced': (state, entry) => tell(`No signal until ${clockWords(isoTime(correctedTime(entry, entry.body.until)), state.snapshot.site.timeZone)}`, entry.body.words),
   'note-added': (_state, { body }) => tell('Note', body.words),
   'correction': (_state, { body }) => tell('Correction', join(body.reading === 'struck' ? 'struck' : body.reading && `now ${body.reading.value.toFixed(1)}`, body.reason)),
   'questioned-settled': (_state, { body }) => tell('Questioned entry dealt with', body.words),

@@ -1,4 +1,5 @@
 // Sources: OWASP HTTP Headers and Cross-Site Request Forgery Prevention cheat sheets; Content Security Policy Level 3 (W3C).
+import { createHash } from 'node:crypto'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { visitor } from '../support/client'
 import { startTestServer } from '../support/server'
@@ -13,7 +14,7 @@ afterAll(() => server?.stop())
 const nonceOf = (policy: string) => /'nonce-([^']+)'/.exec(policy)?.[1]
 
 describe('a page', () => {
-  it.each(['/setup', '/sign-in', '/outages/new', '/nothing-here'])('%s lets only its own scripts and styles run', async (path) => {
+  it.each(['/setup', '/sign-in', '/nothing-here'])('%s lets only its own scripts and styles run', async (path) => {
     const response = await visitor(server.url).fetch(path, { headers: { accept: 'text/html' } })
     const policy = response.headers.get('content-security-policy') ?? ''
     const html = await response.text()
@@ -32,6 +33,41 @@ describe('a page', () => {
     const policies = await Promise.all([1, 2].map(async () => (await visitor(server.url).fetch('/setup', { headers: { accept: 'text/html' } })).headers.get('content-security-policy')!))
     expect(nonceOf(policies[0]!)).not.toBe(nonceOf(policies[1]!))
   })
+})
+
+describe('the shell that phones keep', () => {
+  it.each(['/outages', '/outages/new'])('%s names its inline scripts by hash and holds no data', async (path) => {
+    const response = await visitor(server.url).fetch(path, { headers: { accept: 'text/html' } })
+    const html = await response.text()
+    const policy = response.headers.get('content-security-policy')!
+    expect(policy).not.toContain('nonce-')
+    for (const [, text] of html.matchAll(/<script>([\s\S]*?)<\/script>/g)) expect(policy).toContain(`'sha256-${createHash('sha256').update(text!).digest('base64')}'`)
+    expect(html).toContain('<div id="__nuxt"></div>')
+  })
+
+  it('is one and the same for all', async () => {
+    const read = async (path: string) => (await visitor(server.url).fetch(path, { headers: { accept: 'text/html' } })).text()
+    expect(await read('/outages')).toBe(await read('/outages/lost'))
+  })
+})
+
+describe('the service worker', () => {
+  it('is served under one address and is asked for anew each time', async () => {
+    const response = await visitor(server.url).fetch('/sw.js')
+    expect([response.status, response.headers.get('cache-control')]).toEqual([200, 'no-cache'])
+    const text = await response.text()
+    expect(text).toContain('"/outages"')
+    expect(text).not.toMatch(/"url":"\/?api\//)
+  })
+
+  it('can be switched off from the server', async () => {
+    const off = await startTestServer({ env: { HOLDOVER_WORKER: '0' } })
+    try {
+      expect(await (await visitor(off.url).fetch('/sw.js')).text()).toContain('registration.unregister()')
+    } finally {
+      await off.stop()
+    }
+  }, 60_000)
 })
 
 describe('every answer', () => {

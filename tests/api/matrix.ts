@@ -82,6 +82,7 @@ export const MATRIX: Row[] = [
   { route: 'POST /api/controllers/[id]/points/preview', expected: SITE_ADMIN(200), path: ids => `/api/controllers/${ids.controller}/points/preview`, body: () => ({ text: 'tag,kind,name\n' }), unknown: `/api/controllers/${NOTHING}/points/preview` },
   { route: 'POST /api/controllers/[id]/points/import', expected: SITE_ADMIN(422), path: ids => `/api/controllers/${ids.controller}/points/import`, body: () => ({}), unknown: `/api/controllers/${NOTHING}/points/import` },
 
+  { route: 'GET /api/equipment', expected: [401, 200, 200, 403, 200, 403], path: () => '/api/equipment' },
   { route: 'GET /api/work-kinds', expected: ALL(200), path: () => '/api/work-kinds' },
   { route: 'POST /api/work-kinds', expected: ADMIN(422), path: () => '/api/work-kinds', body: () => ({}) },
   { route: 'PATCH /api/work-kinds/[id]', expected: ADMIN(200), path: (ids, asker) => `/api/work-kinds/${ids.workKind(asker)}`, body: () => ({}), unknown: `/api/work-kinds/${NOTHING}` },

@@ -27,6 +27,10 @@ export interface TestServer {
   now: () => number
   /** Moves the server's clock on. */
   advance: (minutes: number) => Promise<void>
+  /** Ends the server and leaves its database and files, as a failure does. */
+  down: () => Promise<void>
+  /** Starts it again at the same address. */
+  up: () => Promise<void>
   /** Ends the server and takes its database and files away. */
   stop: () => Promise<void>
 }
@@ -46,7 +50,8 @@ export async function startTestServer({ demo = false, port, env = {} }: TestServ
   const listenPort = port ?? await anyFreePort()
   const url = `http://127.0.0.1:${listenPort}`
 
-  const server = startServer(['-r', join(root, 'tests/support/clock.cjs'), join(root, '.output/server/index.mjs')], {
+  const [authSecret, serverKey] = [randomBytes(32).toString('base64url'), randomBytes(32).toString('base64url')]
+  const start = () => startServer(['-r', join(root, 'tests/support/clock.cjs'), join(root, '.output/server/index.mjs')], {
     cwd: root,
     quiet: !process.env.HOLDOVER_TEST_TALK,
     env: {
@@ -54,8 +59,8 @@ export async function startTestServer({ demo = false, port, env = {} }: TestServ
       NODE_ENV: 'production',
       HOST: '127.0.0.1', PORT: String(listenPort), NITRO_HOST: '127.0.0.1', NITRO_PORT: String(listenPort),
       AUTH_ORIGIN: `${url}/api/auth`,
-      NUXT_AUTH_SECRET: randomBytes(32).toString('base64url'),
-      HOLDOVER_SERVER_KEY: randomBytes(32).toString('base64url'),
+      NUXT_AUTH_SECRET: authSecret,
+      HOLDOVER_SERVER_KEY: serverKey,
       NUXT_DATABASE_URL: databaseUrl,
       NUXT_DATA_DIR: dataDirectory,
       HOLDOVER_DEMO: demo ? '1' : '0',
@@ -64,6 +69,12 @@ export async function startTestServer({ demo = false, port, env = {} }: TestServ
       ...env,
     },
   })
+  let server = start()
+  async function up() {
+    server = start()
+    const health = await waitForHealth(`${url}/api/health`, server)
+    if (!health.ready) throw new Error(`The server under test did not come up:\n${health.words}`)
+  }
   async function stop() {
     await server.stop()
     await dropDatabase(adminUrl!, database)
@@ -86,6 +97,8 @@ export async function startTestServer({ demo = false, port, env = {} }: TestServ
       await writeFile(`${clock}.new`, String(offset))
       await rename(`${clock}.new`, clock)
     },
+    down: async () => { await server.stop() },
+    up,
     stop,
   }
 }

@@ -8,5 +8,6 @@ export const darkKinds = {
   'step-ticked': { 1: z.object({ step: z.string().min(1).max(40), state: z.enum(['begun', 'done']), words }).strict() },
   'turned-back': { 1: z.object({ reason: saying('Say why') }).strict() },
   'control-back': { 1: z.object({ backAt: time, words }).strict() },
+  'silence-announced': { 1: z.object({ until: time, words }).strict() }, // no signal until then: nobody need worry
   'note-added': { 1: z.object({ words: saying('Write the note'), photos }).strict() },
 }

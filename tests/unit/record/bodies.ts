@@ -35,6 +35,7 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'step-ticked': { step: 'load', state: 'begun', words },
   'turned-back': { reason: words },
   'control-back': { backAt: isoTime(BEGAN), words },
+  'silence-announced': { until: isoTime(BEGAN), words },
   'note-added': { words, photos: [] },
   'correction': { corrects: entryId, reason: words, reading: { value: 39 } },
   'questioned-settled': { entry: entryId, words },

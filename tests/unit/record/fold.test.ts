@@ -196,6 +196,18 @@ describe('the rest of the record', () => {
     expect([state.notes[0]!.words, state.questions[0]!.answer?.words, state.defrostsWatched[0]!.circuitId]).toEqual(['Rain', 'A flat tyre', CIRCUIT])
   })
 
+  it('keeps when each device was last heard, and until when it has no signal', () => {
+    const writer = storyTo('dark')
+    const until = writer.now + 30 * 60_000
+    writer.sign(technician, 'silence-announced', { until: isoTime(until) })
+    const announced = writer.now
+    expect(writer.state.heard[technician.device]).toEqual({ at: announced, until })
+    writer.pass(40).sign(technician, 'note-added', { words: 'back' })
+    expect(writer.state.heard[technician.device]).toEqual({ at: announced + 40 * 60_000, until })
+    const late = writer.sign(technician, 'silence-announced', { until: isoTime(until) }, { expect: 'questioned' })
+    expect(writer.state.questioned.at(-1)).toMatchObject({ entry: late.id, why: ['the time lies in the past'] })
+  })
+
   it('keeps a step that has the name of what every object has', () => {
     const writer = storyTo('in-hand')
     const step = { ...planOf().steps[0]!, id: 'constructor' }

@@ -67,7 +67,7 @@ const DRAW: { [K in EntryKind]?: (state: OutageState, draws: Deed['draws'], now:
   },
   'point-excused': (_state, [a]) => ({ tag: of(TAGS, a), reason: 'stuck', measure: 'watched' }),
   'point-in-auto': (state, [a, b]) => ({ tag: of(a % 2 === 0 ? TAGS : [...pointsInHand(state).map(point => point.tag), 'C-1'], a >> 1), seen: of(SEEN_IN_AUTO, b) }),
-  'point-proven': (state, [a]) => ({ tag: of([...proofsDue(state).map(point => point.tag), 'C-1'], a) }),
+  'point-proven': (state, [a]) => ({ tag: of([...proofsDue(state).map(point => point.tag), ...proofsDue(state).map(point => point.tag), 'C-1'], a) }),
   'left-in-exception': (_state, [a, b]) => ({ points: [of(TAGS, a), of(TAGS, b)].map(tag => ({ tag, owner: 'Piet Harrow', by: isoTime(BEGAN + 86_400_000), reason: 'parts' })) }),
   'hand-back-closed': () => ({}),
   'defrost-watched': () => ({ circuitId: CIRCUIT, words: 'melted' }),
@@ -80,6 +80,7 @@ const DRAW: { [K in EntryKind]?: (state: OutageState, draws: Deed['draws'], now:
   'step-ticked': (_state, [a, b]) => ({ step: of(['load', 'restart', 'old', 'dance'], a), state: of(['begun', 'done'], b) }),
   'turned-back': () => ({ reason: 'bad file' }),
   'control-back': (_state, _draws, now) => ({ backAt: isoTime(now) }),
+  'silence-announced': (_state, [a], now) => ({ until: isoTime(now + (a % 90 - 10) * 60_000) }),
   'note-added': () => ({ words: 'rain' }),
   'correction': (state, [a, b]) => {
     const readings = Object.values(state.cases).flatMap(item => item.readings)
@@ -101,8 +102,8 @@ const APT: Partial<Record<Phase, PersonKind[]>> = {
   'approved': ['in-hand-begun', 'in-hand-begun', 'plan-changed', 'point-in-hand', 'control-lost', 'called-off'],
   'in-hand': ['went-dark', 'went-dark', 'went-dark', 'plan-changed', 'point-in-hand', 'point-in-hand', 'point-excused', 'point-in-auto', 'reading-taken', 'questioned-settled', 'called-off', 'control-lost'],
   'dark': ['control-back', 'control-back', 'turned-back', 'point-in-hand', 'point-excused', 'act-signed', 'decided-otherwise'],
-  'hand-back': ['hand-back-closed', 'hand-back-closed', 'left-in-exception', 'point-in-auto', 'point-in-auto', 'point-proven', 'check-signed', 'control-lost'],
-  'settle': ['submitted', 'submitted', 'reading-taken', 'point-in-hand', 'point-in-auto', 'left-in-exception', 'questioned-settled', 'question-answered', 'control-lost'],
+  'hand-back': ['hand-back-closed', 'hand-back-closed', 'left-in-exception', 'point-in-auto', 'point-in-auto', 'point-proven', 'point-proven', 'check-signed', 'control-lost'],
+  'settle': ['submitted', 'submitted', 'reading-taken', 'point-in-hand', 'point-in-auto', 'point-proven', 'left-in-exception', 'questioned-settled', 'question-answered', 'control-lost'],
   'submitted': ['review-begun', 'sealed', 'sealed', 'sealed', 'returned', 'question-asked', 'question-answered', 'questioned-settled', 'point-in-hand'],
 }
 

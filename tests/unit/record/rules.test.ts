@@ -43,7 +43,7 @@ describe('phases', () => {
     'left-in-exception': ['hand-back', 'settle'], 'hand-back-closed': ['hand-back'], 'defrost-watched': ['hand-back', 'settle'],
     'reading-taken': ['approved', ...RUN], 'pressure-read': ['approved', ...RUN], 'act-signed': ['approved', ...RUN, 'submitted'], 'decided-otherwise': [...RUN, 'submitted'],
     'went-dark': ['in-hand'], 'control-lost': ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], 'step-ticked': ['approved', ...RUN], 'turned-back': ['dark'], 'control-back': ['dark'],
-    'note-added': BEFORE_SEAL, 'correction': BEFORE_SEAL, 'questioned-settled': BEFORE_SEAL, 'question-asked': [...RUN, 'submitted'], 'question-answered': BEFORE_SEAL,
+    'silence-announced': BEFORE_SEAL, 'note-added': BEFORE_SEAL, 'correction': BEFORE_SEAL, 'questioned-settled': BEFORE_SEAL, 'question-asked': [...RUN, 'submitted'], 'question-answered': BEFORE_SEAL,
     'submitted': ['settle'], 'review-begun': ['submitted'], 'returned': ['submitted'], 'sealed': ['submitted'],
   }
   it.each(kinds.filter(kind => !isServerKind(kind)).map(kind => [kind] as const))('%s belongs in its phases', (kind) => {

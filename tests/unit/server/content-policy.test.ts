@@ -1,6 +1,7 @@
 // Source: Content Security Policy Level 3 (W3C), nonces; OWASP HTTP Headers cheat sheet.
+import { createHash } from 'node:crypto'
 import { describe, expect, it } from 'vitest'
-import { contentPolicy, safetyHeaders, withNonce } from '~~/server/utils/content-policy'
+import { contentPolicy, safetyHeaders, shellPolicy, withNonce } from '~~/server/utils/content-policy'
 
 describe('contentPolicy', () => {
   it('lets no inline script run without the nonce, and no eval', () => {
@@ -10,6 +11,16 @@ describe('contentPolicy', () => {
 
   it('allows nothing off the machine', () => {
     expect(contentPolicy('abc')).not.toMatch(/https?:|\*/)
+  })
+})
+
+describe('shellPolicy', () => {
+  it('names inline scripts and styles by their SHA-256, and no data', () => {
+    const hash = (text: string) => `'sha256-${createHash('sha256').update(text).digest('base64')}'`
+    const html = '<head><script type="module" src="/a.js"></script><style>a{}</style></head><script>b()\n</script><script type="application/json">[1]</script>'
+    const parts = shellPolicy(html).split('; ')
+    expect(parts).toContain(`script-src 'self' ${hash('b()\n')}`)
+    expect(parts).toContain(`style-src 'self' ${hash('a{}')}`)
   })
 })
 
