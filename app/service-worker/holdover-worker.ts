@@ -1,7 +1,7 @@
 /// <reference lib="webworker" />
 import { cleanupOutdatedCaches, createHandlerBoundToURL, precacheAndRoute } from 'workbox-precaching'
 import { NavigationRoute, registerRoute } from 'workbox-routing'
-import { isShellPath, SHELL_PATH } from '../../shared/shell-routes'
+import { isShellPath, SHELL_PATH } from '~~/shared/shell-routes'
 
 declare const self: ServiceWorkerGlobalScope
 
