@@ -1,8 +1,11 @@
 import { computed } from 'vue'
 import type { DiscCase } from '~~/shared/charts/disc'
 import { celsius, firstDarkAt, inUnit, openDark, productReadings } from '~~/shared/record/select'
+import { nextToDo } from '~~/shared/record/next-to-do'
+import { actNeeded } from '~~/server/utils/hold/act-needed'
 import { forecastCases } from '~~/server/utils/hold/for-outage'
 import { latestTurnBack } from '~~/server/utils/hold/turn-back'
+import { assessCase } from '~~/server/utils/holding/for-outage'
 
 const MINUTE = 60_000
 
@@ -23,6 +26,11 @@ export function useDarkView() {
     const readings = productReadings(item)
     const last = readings.at(-1) ?? null
     const usual = inUnit(known.usualC, unit.value)
+    // A reading signed within the last seconds counts at once.
+    const at = Math.max(coarse.value, from.value, ...item.readings.map(reading => reading.at))
+    const assessed = assessCase(state.value, known.id, at)
+    const judged = assessed && { ...assessed, deadline: assessed.deadline === null ? null : Date.parse(assessed.deadline) }
+    const need = actNeeded(state.value, known.id, at, assessed)
     return {
       id: known.id,
       name: known.name,
@@ -35,9 +43,9 @@ export function useDarkView() {
       fitted: forecast.readings,
       held: forecast.held,
       dueAt: forecast.dueAt,
-      openAct: item.openAct !== null,
-      verdict: item.verdict?.verdict ?? null,
-      deadline: item.verdict?.deadline ?? null,
+      judged,
+      need,
+      toDo: nextToDo(state.value, known.id, { judged, cause: need?.cause ?? null, dueAt: state.value.phase === 'dark' ? forecast.dueAt : null }, at),
       readings: atDark(readings.map(reading => ({ minute: (reading.at - from.value) / MINUTE, value: inUnit(celsius(reading.value, reading.unit), unit.value) }))),
       forecast: forecast.curve.map(point => ({ minute: (point.at - from.value) / MINUTE, value: inUnit(point.c, unit.value) })),
     }

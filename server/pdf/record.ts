@@ -12,9 +12,10 @@ import type { FontBytes } from './fonts'
 import { drawForecasts, drawPlantWarnings } from './forecast-sections'
 import { drawFront } from './front'
 import { drawChecks, drawDarks, drawPlan } from './plan-sections'
-import { drawPoints, drawRounds, drawVerdicts } from './run-sections'
+import { drawPoints, drawRounds } from './run-sections'
 import { paperSize, Sheet } from './sheet'
 import { Typesetter } from './typesetter'
+import { drawInstruments, drawVerdicts } from './verdict-sections'
 
 /** All that the paper is made from; the same input makes the same bytes. */
 export interface RecordPaper {
@@ -73,6 +74,7 @@ async function draw(doc: PDFKit.PDFDocument, paper: RecordPaper, fonts: FontByte
   await drawPlantWarnings(sheet, paper)
   await drawForecasts(sheet, paper)
   await drawVerdicts(sheet, paper)
+  await drawInstruments(sheet, paper)
   await drawLooseEnds(sheet, paper)
   await drawEntries(sheet, paper)
   await drawProof(sheet, paper)

@@ -1,9 +1,8 @@
 import { clockWords, countWords, minuteWords, numberWords, temperatureWords } from '../../shared/charts/words'
 import { isoTime } from '../../shared/record/entry'
-import { VERDICT_WORDS } from '../../shared/record/kinds/server'
-import type { PointLine, VerdictLine } from '../../shared/record/record-lines'
+import type { PointLine } from '../../shared/record/record-lines'
 import { celsius, groupName, inUnit, isOver, judgedReadings, nameOf } from '../../shared/record/select'
-import { fullStampWords, unreadWords } from '../../shared/record/summary-words'
+import { fullStampWords } from '../../shared/record/summary-words'
 import { handWords } from '../../shared/schemas/point-kinds'
 import type { PaperMark } from './marks'
 import { drawMark } from './marks'
@@ -90,37 +89,4 @@ async function drawMatrix(sheet: Sheet, { state, summary }: RecordPaper): Promis
   }
   sheet.y += 3
   sheet.paragraph('Heavy and red: over the limit. *: corrected by a later entry. Readings without a word are product temperatures. Where a case was read twice in a round, the later reading stands here; both stand among the entries.', { style: { size: 7.5 } })
-}
-
-/** Verdicts but those that were only unknown for a while and within again. */
-function tellingVerdicts(verdicts: readonly VerdictLine[]): VerdictLine[] {
-  const before = new Map<string, VerdictLine['verdict']>()
-  return verdicts.filter((line) => {
-    const known = before.get(line.caseId) ?? 'within'
-    if (line.verdict !== 'unknown') before.set(line.caseId, line.verdict)
-    return line.verdict !== 'unknown' && line.verdict !== known
-  })
-}
-
-/** Verdicts as they changed, and what was done about them. */
-export async function drawVerdicts(sheet: Sheet, { summary, state }: RecordPaper): Promise<void> {
-  const { timeZone } = summary.heading
-  const clock = (at: number) => clockWords(isoTime(at), timeZone, true)
-  sheet.begin('Verdicts and acts')
-  sheet.paragraph(`Judged by ${state.snapshot.rulebook.name}, version ${state.snapshot.rulebook.version}. A verdict is entered when it changes; until the first one a case is within its limit.`)
-  const telling = tellingVerdicts(summary.verdicts)
-  if (telling.length > 0) {
-    await drawTable(sheet, [{ label: 'No.', width: 26 }, { label: 'Time', width: 46 }, { label: 'Case', width: 0.26 }, { label: 'Verdict', width: 0.3 }, { label: 'Gets worse', width: 50 }, { label: 'Rule', width: 0.44 }],
-      telling.map(line => [String(line.seq), clock(line.at), line.name, `${VERDICT_WORDS[line.verdict]}${line.minutesAbove > 0 ? `, ${minuteWords(line.minutesAbove)} above` : ''}`, line.deadline === null ? '' : clock(line.deadline), [`${line.source}, ${line.clause}`, line.act].filter(Boolean).join(': ')]))
-  } else {
-    sheet.paragraph('No case was found above its limit.')
-  }
-  const unread = unreadWords(summary)
-  if (unread.length > 0) { sheet.y += 4; sheet.paragraph(`Not known for a while, for want of a reading in time: ${unread.join(', ')}. Each such verdict stands among the entries.`) }
-  if (summary.acts.length > 0) {
-    sheet.heading('Acts')
-    await drawTable(sheet, [{ label: 'No.', width: 26 }, { label: 'Time', width: 46 }, { label: 'Case', width: 0.26 }, { label: 'Act', width: 0.26 }, { label: 'Product, quantity, place', width: 0.48 }, { label: 'By', width: 78 }],
-      summary.acts.map(act => [String(act.seq), clock(act.at), act.name, act.act, [act.product, act.quantity === null ? '' : `${act.quantity} ${act.unit}`.trim(), act.place, act.words].filter(Boolean).join(' · '), act.by]))
-  }
-  for (const line of summary.decidedOtherwise) { sheet.y += 4; sheet.paragraph(`No. ${line.seq}, ${clock(line.at)}: for ${line.name} ${line.by} decided otherwise: ${line.reason}`) }
 }

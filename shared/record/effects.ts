@@ -1,17 +1,14 @@
+import { closeAct, correctProof, endBySigning, openAct, proveAct } from './act-course'
 import { BACK_CHECKS } from './checks'
 import type { AnyEntry, Entry, StoredEntry } from './entry'
 import { correctedTime, happenedAt } from './entry'
 import { goDarkGate, NO_RESULTS } from './gates'
 import type { EntryKind } from './kinds'
-import type { Act } from './kinds/rounds'
 import type { Plan } from './plan'
 import { expectedSeen } from './select'
 import type { CaseState, Mark, OutageState, PointState } from './state'
 
 type Effect<K extends EntryKind> = (state: OutageState, entry: Entry<K>, mark: Mark) => void
-
-/** Acts after which nothing of the case is left to judge. */
-const EMPTYING: readonly Act[] = ['moved', 'used', 'emptied', 'discarded']
 
 /** What an accepted entry does to the state. Each changes the draft that the fold hands it. */
 export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
@@ -27,7 +24,13 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     const item = state.cases[body.caseId]
     if (!item) return
     item.verdict = { verdict: body.verdict, deadline: body.deadline === null ? null : Date.parse(body.deadline), minutesAbove: body.minutesAbove, clause: body.clause, source: body.source, act: body.act, why: body.why, at: Date.parse(body.judgedAt), seq: mark.seq }
-    if (body.verdict === 'act' || body.verdict === 'discard') item.openAct = mark.seq
+    if (body.verdict === 'act' || body.verdict === 'discard') openAct(item, body.verdict, item.verdict.deadline, mark)
+    // A verdict grows milder by itself only where its rule says so, or where a reading was corrected.
+    else if (body.verdict !== 'unknown' && asksByVerdict(item)) closeAct(item, 'verdict', mark)
+  },
+  'act-opened': (state, { body }, mark) => {
+    const item = state.cases[body.caseId]
+    if (item) openAct(item, body.cause, body.deadline === null ? null : Date.parse(body.deadline), mark)
   },
   'plant-warned': (state, { body }, mark) => {
     state.plant = state.plant.filter(item => item.fault !== body.fault || item.about !== body.about)
@@ -91,21 +94,26 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
   'hand-back-closed': (state, _entry, mark) => { state.handBackClosed = mark; state.phase = 'settle' },
   'defrost-watched': (state, { body }, mark) => { state.defrostsWatched.push({ ...body, mark }) },
 
-  'reading-taken': (state, entry, mark) => addReading(state, entry, mark, false),
+  'reading-taken': (state, entry, mark) => {
+    addReading(state, entry, mark, false)
+    proveAct(state, entry.body.caseId, mark)
+  },
   'pressure-read': (state, { body }, mark) => addPressure(state, body, mark, false),
-  'act-signed': (state, { body }, mark) => {
-    const item = state.cases[body.caseId]
+  'act-signed': (state, entry, mark) => {
+    const { caseId, coolBy, ...act } = entry.body
+    const item = state.cases[caseId]
     if (!item) return
-    const { caseId: _, ...act } = body
-    item.acts.push({ ...act, mark })
-    if (body.act === 'accepted-warm') { item.acceptedWarm = true; return }
-    if (EMPTYING.includes(body.act)) item.empty = true
-    if (item.verdict?.verdict !== 'discard' || body.act === 'discarded') item.openAct = null
+    item.acts.push({ ...act, coolBy: coolBy === null ? null : correctedTime(entry, coolBy), mark })
+    if (act.act === 'accepted-warm') item.acceptedWarm = true
+    else endBySigning(item, act, mark)
   },
   'decided-otherwise': (state, { body }, mark) => {
     const item = state.cases[body.caseId]
-    if (item) { item.decidedOtherwise = { reason: body.reason, mark }; item.openAct = null }
+    if (!item) return
+    item.decidedOtherwise = { reason: body.reason, clause: body.clause, mark }
+    closeAct(item, 'decision', mark)
   },
+  'instrument-checked': (state, { body }, mark) => { state.instrumentChecks.push({ ...body, at: mark.at, mark }) },
 
   'went-dark': (state, entry, mark) => beginDark(state, correctedTime(entry, entry.body.lostAt), 'gate', '', [], mark),
   'control-lost': (state, entry, mark) => {
@@ -140,6 +148,7 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
       reading.correctedBy = mark.entry
       reading.struck = body.reading === 'struck'
       if (body.reading !== 'struck') reading.value = body.reading.value
+      correctProof(state, item, reading)
     }
   },
   'questioned-settled': (state, { body }, mark) => {
@@ -217,6 +226,12 @@ function beginDark(state: OutageState, from: number, how: 'gate' | 'fact', words
   for (const point of Object.values(state.points)) if (point.status === 'returned' || point.status === 'proven') { point.status = 'auto'; point.proof = null }
 }
 
+/** The open act is one that the verdict itself asked for. */
+function asksByVerdict(item: CaseState): boolean {
+  const cause = item.openings.find(opening => opening.seq === item.openAct)?.cause
+  return cause === 'act' || cause === 'discard'
+}
+
 function addOnce(list: string[], value: string): void {
   if (!list.includes(value)) list.push(value)
 }
@@ -226,5 +241,5 @@ function newPoint(tag: string, kind: PointState['kind']): PointState {
 }
 
 function newCase(id: string): CaseState {
-  return { id, touched: false, readings: [], verdict: null, openAct: null, acts: [], decidedOtherwise: null, acceptedWarm: false, empty: false }
+  return { id, touched: false, readings: [], verdict: null, openAct: null, openings: [], acts: [], decidedOtherwise: null, acceptedWarm: false, empty: false }
 }

@@ -1,4 +1,5 @@
 import { isHandActive } from '../schemas/point-kinds'
+import { openActFaults } from './act-words'
 import { BACK_CHECKS, BEFORE_CHECKS } from './checks'
 import { acceptanceWanted, measuresWanted } from './margin'
 import type { MarginFigure } from './margin'
@@ -162,8 +163,7 @@ export function submitGate(state: OutageState): string[] {
   const missing = [...handBackGate(state)]
   if (state.handBackClosed === null) missing.push('hand back is not closed')
   missing.push(...settledFaults(state))
-  const acts = Object.values(state.cases).filter(item => item.openAct !== null).map(item => caseName(state, item.id))
-  if (acts.length > 0) missing.push(`an act is to be signed for ${list(acts)}`)
+  missing.push(...openActFaults(state))
   const open = state.questions.filter(question => question.answer === null).length
   if (open > 0) missing.push(`${open} ${open === 1 ? 'question' : 'questions'} to answer`)
   return missing

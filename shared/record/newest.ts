@@ -17,6 +17,8 @@ export const UPGRADES: Upgrades = {
   // no time constant came from sealed outages, and no relief valve was known.
   'outage-opened': { 1: body => ({ ...body, snapshot: snapshotOfV1(body.snapshot as SnapshotV1), plan: withFacts(body.plan as { measures: string[] }) }) },
   'plan-changed': { 1: body => ({ ...body, plan: withFacts(body.plan as { measures: string[] }) }) },
+  'act-signed': { 1: body => ({ ...body, coolBy: null, takenBy: '', left: false }) },
+  'decided-otherwise': { 1: body => ({ ...body, clause: '' }) },
 }
 
 interface SnapshotV1 { site: object, racks: object[], cases: object[] }

@@ -2,13 +2,14 @@ import { happenedAt, isoTime } from './entry'
 import type { StoredEntry } from './entry'
 import { VERDICT_WORDS } from './kinds/server'
 import type { Verdict } from './kinds/server'
+import { checkStanding, readingDoubt } from './instruments'
 import { acceptedOf } from './record-lines'
 import { caseName, nameOf } from './select'
 import type { OutageState, ReadingState } from './state'
 
 /** Excel reads UTF-8 only behind this mark. */
 const BYTE_ORDER_MARK = '\uFEFF'
-const HEAD = ['seq', 'round', 'case', 'time', 'time_utc', 'value', 'unit', 'value_signed', 'limit', 'limit_unit', 'method', 'instrument', 'by', 'verdict', 'standing', 'corrected', 'struck', 'words'] as const
+const HEAD = ['seq', 'round', 'case', 'time', 'time_utc', 'value', 'unit', 'value_signed', 'limit', 'limit_unit', 'method', 'instrument', 'instrument_check', 'by', 'verdict', 'standing', 'corrected', 'struck', 'words'] as const
 
 /**
  * One cell by RFC 4180. Words that a spreadsheet would take for a formula get an apostrophe before
@@ -57,7 +58,7 @@ export function readingsCsv(state: OutageState, entries: readonly StoredEntry[])
     const instrument = state.snapshot.instruments.find(item => item.id === body.instrumentId)?.name ?? null
     return [csvRow([
       stored.seq, body.round, caseName(state, body.caseId), local(happenedAt(entry)), isoTime(happenedAt(entry)),
-      reading?.struck ? null : reading?.value ?? body.value, body.unit, body.value, limit?.value ?? null, limit?.unit ?? null, body.method, instrument, nameOf(state, entry.by),
+      reading?.struck ? null : reading?.value ?? body.value, body.unit, body.value, limit?.value ?? null, limit?.unit ?? null, body.method, instrument, checkWords(state, body.instrumentId, happenedAt(entry)), nameOf(state, entry.by),
       verdictThen(body.caseId, stored), stored.standing, reading?.correctedBy ? 'yes' : 'no', reading?.struck ? 'yes' : 'no', body.words,
     ])]
   })
@@ -74,4 +75,13 @@ function verdictsThen(state: OutageState, entries: readonly StoredEntry[]): (cas
     if (last) return VERDICT_WORDS[last.verdict]
     return happenedAt(reading.entry) >= darkAt ? VERDICT_WORDS.within : null
   }
+}
+
+/** How the check of a reading's instrument stood; null where it names none. */
+function checkWords(state: OutageState, instrumentId: string | null, at: number): string | null {
+  if (instrumentId === null) return null
+  const doubt = readingDoubt(state, { instrumentId, at })
+  if (doubt === null) return 'in time'
+  if (doubt === 'out') return 'out of tolerance'
+  return checkStanding(state, instrumentId, at).lastOn === null ? 'never checked' : 'overdue'
 }

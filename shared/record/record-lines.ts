@@ -147,12 +147,12 @@ export interface ForecastLine {
   early: boolean
 }
 
-export interface VerdictLine extends Line { caseId: string, name: string, verdict: Verdict, deadline: number | null, clause: string, source: string, act: string | null, minutesAbove: number }
+export interface VerdictLine extends Line { caseId: string, name: string, verdict: Verdict, deadline: number | null, clause: string, source: string, act: string | null, minutesAbove: number, why: string[] }
 
 export function verdictLines(state: OutageState, entries: readonly StoredEntry[]): VerdictLine[] {
   return acceptedOf(entries, 'verdict-changed').map(({ stored, entry: { body } }) => ({
     ...lineOf(state, stored), caseId: body.caseId, name: caseName(state, body.caseId), verdict: body.verdict,
-    deadline: body.deadline === null ? null : Date.parse(body.deadline), clause: body.clause, source: body.source, act: body.act, minutesAbove: body.minutesAbove,
+    deadline: body.deadline === null ? null : Date.parse(body.deadline), clause: body.clause, source: body.source, act: body.act, minutesAbove: body.minutesAbove, why: body.why,
   }))
 }
 

@@ -7,6 +7,7 @@ import { correctedTime, happenedAt } from './entry'
 import { isAccepted, marginFaults, namedMinutes, acceptanceWanted } from './margin'
 import type { MarginFigure } from './margin'
 import { callOffGate, goDarkGate, handBackGate, planGate, returnPointsGate, sealGate, submitGate } from './gates'
+import { readsIcePoint } from './instruments'
 import type { EntryKind } from './kinds'
 import { asNewest } from './newest'
 import { PHASE_WORDS, PHASES } from './phases'
@@ -61,6 +62,7 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   'outage-numbered': serverOnly,
   'verdict-changed': serverOnly,
   'plant-warned': serverOnly,
+  'act-opened': serverOnly,
   'entry-refused': serverOnly,
 
   'outage-opened': { roles: HANDS, phases: ['plan'], unfit: (state, entry) => [
@@ -98,13 +100,13 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
 
   'reading-taken': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => knownCase(state, body.caseId) },
   'pressure-read': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => state.snapshot.suctionGroups.some(group => group.id === body.suctionGroupId) ? [] : ['there is no such suction group'] },
-  'act-signed': { roles: HANDS, phases: [...RUN, 'approved', 'submitted'], unfit: (state, { body }) => {
-    const missing = knownCase(state, body.caseId)
-    if (body.act === 'discarded' && (body.product === '' || body.quantity === null)) missing.push('name the product and the quantity that is discarded')
-    if (body.act === 'moved' && body.place === '') missing.push('say where the product was moved to')
-    return missing
-  } },
+  'act-signed': { roles: HANDS, phases: [...RUN, 'approved', 'submitted'], unfit: actUnfit },
   'decided-otherwise': { roles: SUPERVISOR, phases: [...RUN, 'submitted'], unfit: (state, { body }) => knownCase(state, body.caseId) },
+  'instrument-checked': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => {
+    const instrument = state.snapshot.instruments.find(item => item.id === body.instrumentId)
+    if (!instrument) return ['there is no such instrument at this site']
+    return readsIcePoint(body.value, body.unit, instrument.accuracyC) === body.within ? [] : ['what is said of the ice point does not follow from the reading']
+  } },
 
   'went-dark': { roles: HANDS, phases: ['in-hand'], unfit: (state, entry, around) => {
     const at = happenedAt(entry)
@@ -157,6 +159,18 @@ function acceptanceUnfit(state: OutageState, entry: Entry<'margin-accepted'>, ar
   const near = (named: number | null, now: number | null) => named === now || (named !== null && now !== null && Math.abs(named - now) <= 1)
   const missing = near(entry.body.minutes, minutes) && near(entry.body.deadlineMinutes, deadlineMinutes) ? [] : ['the numbers are others by now: read them again']
   return state.plan.measures.length > 0 ? missing : [...missing, 'choose measures first: what remains after them is accepted']
+}
+
+/** What an act must say; a promise lies ahead of the moment at which it is made. */
+function actUnfit(state: OutageState, entry: Entry<'act-signed'>): string[] {
+  const { act, caseId, product, quantity, place, coolBy, takenBy } = entry.body
+  const missing = knownCase(state, caseId)
+  if (act === 'discarded' && (product === '' || quantity === null)) missing.push('name the product and the quantity that is discarded')
+  if (act === 'discarded' && takenBy === '') missing.push('say who took what is discarded')
+  if (act === 'moved' && place === '') missing.push('say where the product was moved to')
+  if (act === 'cool-by' && coolBy === null) missing.push('say by when it is to be cooled')
+  if (act === 'cool-by' && coolBy !== null && correctedTime(entry, coolBy) <= happenedAt(entry)) missing.push('the time by which it is to be cooled is past already')
+  return missing
 }
 
 function waitsForApproval(state: OutageState): string[] {

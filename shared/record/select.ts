@@ -159,6 +159,10 @@ export function caseName(state: OutageState, id: string): string {
   return state.snapshot.cases.find(item => item.id === id)?.name ?? 'Unknown case'
 }
 
+export function instrumentName(state: OutageState, id: string): string {
+  return state.snapshot.instruments.find(item => item.id === id)?.name ?? 'Unknown instrument'
+}
+
 export function groupName(state: Pick<OutageState, 'snapshot'>, id: string): string {
   const group = state.snapshot.suctionGroups.find(item => item.id === id)
   const rack = state.snapshot.racks.find(item => item.id === group?.rackId)

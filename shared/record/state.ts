@@ -4,7 +4,7 @@ import type { HandPosition, PointKind } from '../schemas/point-kinds'
 import type { CheckId } from './checks'
 import type { SeenInAuto, SeenInHand } from './kinds/hand'
 import type { Act } from './kinds/rounds'
-import type { PlantFault, Verdict } from './kinds/server'
+import type { ActCause, PlantFault, Verdict } from './kinds/server'
 import type { Phase } from './phases'
 import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
@@ -66,17 +66,45 @@ export interface ReadingState {
   words: string
 }
 
-export interface ActState { act: Act, product: string, quantity: number | null, unit: string, place: string, words: string, photos: string[], mark: Mark }
+export interface ActState {
+  act: Act
+  product: string
+  quantity: number | null
+  unit: string
+  place: string
+  /** by when it is to be cooled, Unix ms */
+  coolBy: number | null
+  takenBy: string
+  /** product was left in the case after it */
+  left: boolean
+  words: string
+  photos: string[]
+  mark: Mark
+}
+
+/** One time that an act was asked for on a case, and what ended it. */
+export interface ActOpening {
+  seq: number
+  at: number
+  cause: ActCause
+  deadline: number | null
+  /** worse: a more pressing one took its place */
+  closed: { how: 'act' | 'reading' | 'decision' | 'verdict' | 'worse', mark: Mark } | null
+}
+
+/** A thermometer held in ice and water during this outage. */
+export interface InstrumentCheck { instrumentId: string, at: number, value: number, unit: 'F' | 'C', within: boolean, words: string, mark: Mark }
 
 export interface CaseState {
   id: string
   touched: boolean
   readings: ReadingState[]
   verdict: { verdict: Verdict, deadline: number | null, minutesAbove: number, clause: string, source: string, act: string | null, why: string[], at: number, seq: number } | null
-  /** seq of the verdict that demands an act not yet signed */
+  /** seq of the entry that opened the act which is still open */
   openAct: number | null
+  openings: ActOpening[]
   acts: ActState[]
-  decidedOtherwise: { reason: string, mark: Mark } | null
+  decidedOtherwise: { reason: string, clause: string, mark: Mark } | null
   acceptedWarm: boolean
   /** emptied, moved or discarded: nothing left to judge */
   empty: boolean
@@ -112,6 +140,7 @@ export interface OutageState {
   checks: Partial<Record<CheckId, { outcome: 'done' | 'needless', words: string, photos: string[], mark: Mark }>>
   points: Record<string, PointState>
   cases: Record<string, CaseState>
+  instrumentChecks: InstrumentCheck[]
   pressures: PressureState[]
   /** warnings of the plant that are not over */
   plant: { fault: PlantFault, about: string, words: string, act: string, at: number, seq: number }[]
@@ -175,7 +204,7 @@ export function emptyState(id: string): OutageState {
     foldVersion: FOLD_VERSION, id, code: null, size: 0, phase: 'plan', planned: true,
     snapshot: structuredClone(EMPTY_SNAPSHOT), opened: null, cause: '', plan: structuredClone(EMPTY_PLAN),
     authors: [], planSubmitted: null, planReturned: null, approved: null, marginAccepted: null, inHandBegun: null,
-    checks: {}, points: {}, cases: {}, pressures: [], plant: [], darks: [], turnedBack: null, steps: {}, backAt: null,
+    checks: {}, points: {}, cases: {}, instrumentChecks: [], pressures: [], plant: [], darks: [], turnedBack: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
     calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],
     refusals: [], chain: {}, heard: {}, largestSkew: null,

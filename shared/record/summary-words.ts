@@ -1,6 +1,7 @@
 import { clockWords, countWords, dateWords, durationWords, listWords, minuteWords, numberWords, offsetWords, temperatureWords } from '../charts/words'
+import { doubtWords } from './instrument-words'
 import { VERDICT_WORDS } from './kinds/server'
-import type { RecordSummary } from './summary'
+import type { ActLine, RecordSummary } from './summary'
 import { isoTime } from './entry'
 
 /** A row of the front page; its parts alternate between what is told and what only stands beside it. */
@@ -11,6 +12,11 @@ const plain = (text: string) => ({ text, strong: false })
 
 /** "1 200 kg" and the like, without a unit where none was given. */
 const amount = (quantity: number | null, unit: string) => quantity === null ? '' : `${quantity} ${unit}`.trim()
+
+/** Product, quantity, place and the rest of an act, the parts that were given. */
+export function actDetail({ product, quantity, unit, place, takenBy, left, words }: ActLine): string {
+  return [product, amount(quantity, unit), place, takenBy && `taken by ${takenBy}`, left ? 'product is left in the case' : '', words].filter(Boolean).join(' · ')
+}
 
 /** The rows beside the disc, in their order. */
 export function summaryRows(summary: RecordSummary): SummaryRow[] {
@@ -91,9 +97,11 @@ export function attentionOf(summary: RecordSummary, breaches: readonly string[] 
     { what: 'Proofs due', items: summary.points.proofsDue > 0 ? [countWords(summary.points.proofsDue, 'point')] : [] },
     { what: 'Left by exception', items: summary.pointLines.filter(line => line.exception).map(line => `${line.tag}: ${line.exception!.owner}, by ${fullStampWords(line.exception!.until, timeZone)}: ${line.exception!.reason}`) },
     { what: 'Excused points', items: summary.pointLines.filter(line => line.excused && !line.inHand).map(line => `${line.tag}: ${line.excused!.reason}; instead: ${line.excused!.measure}`) },
+    { what: 'Acts still open', items: summary.openings.filter(line => line.ended === null).map(line => `${line.name}: ${line.cause}; ${line.ends}`) },
     { what: 'Verdicts', items: summary.verdicts.filter(line => line.verdict !== 'within' && line.verdict !== 'unknown').map(line => `${clock(line.at)} ${line.name} ${VERDICT_WORDS[line.verdict]}${line.clause ? ` (${line.clause})` : ''}`) },
     { what: 'Acts', items: summary.acts.map(act => `${clock(act.at)} ${act.name}: ${act.act.toLowerCase()}${[act.product, amount(act.quantity, act.unit), act.place].filter(Boolean).map(part => `, ${part}`).join('')}`) },
-    { what: 'Decided otherwise', items: summary.decidedOtherwise.map(line => `${line.name}: ${line.reason}`) },
+    { what: 'Decided otherwise', items: summary.decidedOtherwise.map(line => `${line.name}: ${[line.clause, line.reason].filter(Boolean).join(', ')}`) },
+    { what: 'Thermometers', items: summary.instruments.flatMap(line => doubtWords(line) ?? []) },
     { what: 'Late rounds', items: [...summary.rounds.lines.filter(line => line.late > 0).map(line => `Round ${line.round}: ${countWords(line.late, 'reading')} late, by ${minuteWords(line.latestBy)} at most`), ...(summary.rounds.never > 0 ? [`${countWords(summary.rounds.never, 'case')} not read when due`] : [])] },
     { what: 'No reading in time', items: unreadWords(summary) },
     { what: 'Longer than planned', items: longerWords(summary) },

@@ -1,6 +1,8 @@
 import type { Role } from '../schemas/people'
+import { CAUSE_WORDS, endsBy, measureWords } from './act-words'
 import type { StoredEntry } from './entry'
-import { ACT_WORDS } from './kinds/rounds'
+import { instrumentLines } from './instruments'
+import type { InstrumentLine } from './instruments'
 import { SEAL_STATEMENT, SUBMIT_STATEMENT } from './kinds/review'
 import type { CheckLine, CorrectionLine, ForecastLine, LateReading, Line, PointLine, RoundLine, VerdictLine } from './record-lines'
 import type { ForecastSummary } from './forecast-summary'
@@ -24,7 +26,9 @@ export interface RecordFacts {
 
 export interface SignatureLine extends Line { what: 'submitted' | 'sealed', role: Role | 'server', meaning: string, drawing: string, words: string, /** false once the record was returned for answers */ stands: boolean }
 export interface PlantLine extends Line { words: string, act: string, over: boolean }
-export interface ActLine extends Line { caseId: string, name: string, act: string, discarded: boolean, product: string, quantity: number | null, unit: string, place: string, words: string }
+export interface ActLine extends Line { caseId: string, name: string, act: string, discarded: boolean, product: string, quantity: number | null, unit: string, place: string, takenBy: string, left: boolean, words: string }
+/** An act that was asked for; `ended` null while it is open, and then `ends` says what would end it. */
+export interface OpeningLine { seq: number, at: number, caseId: string, name: string, cause: string, ended: (Line & { how: string }) | null, ends: string }
 export interface QuestionedLine { seq: number, entry: string, why: string[], settled: (Line & { words: string }) | null }
 export interface ClockLine { device: string, deviceName: string, name: string, /** largest difference, ms; positive: the device is ahead */ ms: number, entries: number }
 export interface QuestionLine extends Line { words: string, answer: (Line & { words: string }) | null }
@@ -46,7 +50,9 @@ export interface RecordSummary {
   forecasts: ForecastSummary
   verdicts: VerdictLine[]
   acts: ActLine[]
-  decidedOtherwise: (Line & { name: string, reason: string })[]
+  openings: OpeningLine[]
+  instruments: InstrumentLine[]
+  decidedOtherwise: (Line & { name: string, reason: string, clause: string })[]
   questioned: QuestionedLine[]
   questions: QuestionLine[]
   clocks: ClockLine[]
@@ -78,7 +84,9 @@ export function summaryOf(state: OutageState, entries: readonly StoredEntry[], f
     forecasts: forecastSummary(state, facts.forecasts),
     verdicts,
     acts: actLines(state),
-    decidedOtherwise: acceptedOf(entries, 'decided-otherwise').map(({ stored, entry }) => ({ ...lineOf(state, stored), name: caseName(state, entry.body.caseId), reason: entry.body.reason })),
+    openings: openingLines(state),
+    instruments: instrumentLines(state),
+    decidedOtherwise: acceptedOf(entries, 'decided-otherwise').map(({ stored, entry }) => ({ ...lineOf(state, stored), name: caseName(state, entry.body.caseId), reason: entry.body.reason, clause: entry.body.clause })),
     questioned: state.questioned.map(item => ({ seq: item.seq, entry: item.entry, why: item.why, settled: item.settled ? { ...lineOfMark(state, item.settled.mark), words: item.settled.words } : null })),
     questions: state.questions.map(item => ({ ...lineOfMark(state, item.mark), words: item.words, answer: item.answer ? { ...lineOfMark(state, item.answer.mark), words: item.answer.words } : null })),
     clocks: clockLines(state, entries),
@@ -149,8 +157,20 @@ function signatureLines(state: OutageState, entries: readonly StoredEntry[]): Si
 
 function actLines(state: OutageState): ActLine[] {
   return Object.values(state.cases).flatMap(item => item.acts.map(act => ({
-    ...lineOfMark(state, act.mark), caseId: item.id, name: caseName(state, item.id), act: ACT_WORDS[act.act], discarded: act.act === 'discarded',
-    product: act.product, quantity: act.quantity, unit: act.unit, place: act.place, words: act.words,
+    ...lineOfMark(state, act.mark), caseId: item.id, name: caseName(state, item.id), act: capital(measureWords(state, act)), discarded: act.act === 'discarded',
+    product: act.product, quantity: act.quantity, unit: act.unit, place: act.place, takenBy: act.takenBy, left: act.left, words: act.words,
+  }))).sort((a, b) => a.seq - b.seq)
+}
+
+const capital = (words: string) => `${words.charAt(0).toUpperCase()}${words.slice(1)}`
+const ENDED_WORDS = { act: 'by what was signed', reading: 'by a reading at or under the limit', decision: 'decided otherwise', verdict: 'its verdict grew milder', worse: 'a more pressing act took its place' }
+
+/** Every act that was asked for, in the order of the log. */
+function openingLines(state: OutageState): OpeningLine[] {
+  return Object.values(state.cases).flatMap(item => item.openings.map((opening): OpeningLine => ({
+    seq: opening.seq, at: opening.at, caseId: item.id, name: caseName(state, item.id), cause: CAUSE_WORDS[opening.cause],
+    ended: opening.closed && { ...lineOfMark(state, opening.closed.mark), how: ENDED_WORDS[opening.closed.how] },
+    ends: endsBy(state, item),
   }))).sort((a, b) => a.seq - b.seq)
 }
 

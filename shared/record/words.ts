@@ -1,6 +1,7 @@
 import { clockWords } from '../charts/words'
 import { handWords } from '../schemas/point-kinds'
 import { checkById } from './checks'
+import { CAUSE_WORDS, siteClock } from './act-words'
 import type { AnyEntry, Entry } from './entry'
 import { correctedTime, isoTime } from './entry'
 import type { EntryKind } from './kinds'
@@ -8,7 +9,7 @@ import { asNewest } from './newest'
 import { acceptedWords } from './margin'
 import { ACT_WORDS } from './kinds/rounds'
 import { VERDICT_WORDS } from './kinds/server'
-import { caseName, groupName, pointName, SEEN_WORDS } from './select'
+import { caseName, groupName, instrumentName, pointName, SEEN_WORDS } from './select'
 import type { OutageState } from './state'
 
 /** An entry told in words: what was done, and what was seen. */
@@ -44,8 +45,14 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'defrost-watched': (state, { body }) => tell(`Defrost watched: ${state.snapshot.circuits.find(circuit => circuit.id === body.circuitId)?.name ?? ''}`, body.words),
   'reading-taken': (state, { body }) => tell(`${caseName(state, body.caseId)}, round ${body.round}`, join(`${body.value.toFixed(1)} °${body.unit}`, body.method !== 'product' && body.method, body.words)),
   'pressure-read': (state, { body }) => tell(`${groupName(state, body.suctionGroupId)}, round ${body.round}`, join(`suction ${body.suctionPsig} psig`, body.dischargePsig !== null && `discharge ${body.dischargePsig} psig`, body.words)),
-  'act-signed': (state, { body }) => tell(`${caseName(state, body.caseId)}: ${ACT_WORDS[body.act].toLowerCase()}`, join(body.product, body.quantity !== null && `${body.quantity} ${body.unit}`.trim(), body.place, body.words)),
-  'decided-otherwise': (state, { body }) => tell(`${caseName(state, body.caseId)}: decided otherwise`, body.reason),
+  'act-opened': (state, { body }) => tell(`${caseName(state, body.caseId)}: an act is needed`, CAUSE_WORDS[body.cause]),
+  'act-signed': (state, entry) => {
+    const { caseId, act, product, quantity, unit, place, coolBy, takenBy, left, words } = entry.body
+    const did = coolBy === null ? ACT_WORDS[act].toLowerCase() : `to be cooled by ${siteClock(state, correctedTime(entry, coolBy))}`
+    return tell(`${caseName(state, caseId)}: ${did}`, join(product, quantity !== null && `${quantity} ${unit}`.trim(), place, takenBy && `taken by ${takenBy}`, left && 'product is left in the case', words))
+  },
+  'decided-otherwise': (state, { body }) => tell(`${caseName(state, body.caseId)}: decided otherwise`, join(body.clause, body.reason)),
+  'instrument-checked': (state, { body }) => tell(`${instrumentName(state, body.instrumentId)} checked in ice and water`, join(`${body.value.toFixed(1)} °${body.unit}`, body.within ? 'reads the ice point' : 'out of tolerance', body.words)),
   'went-dark': () => tell('Control taken away'),
   'control-lost': (_state, { body }) => tell('Control lost', body.words),
   'step-ticked': (state, { body }) => tell(`${[...state.plan.steps, ...state.plan.rollBack].find(step => step.id === body.step)?.name ?? body.step}: ${body.state}`, body.words),

@@ -25,7 +25,7 @@ export const busy: Scenario = {
     'dark': (writer) => {
       const warm = reading(writer, 'Dairy wall 4–7', 43.2, { words: 'top shelf, =SUM(A1)' })
       writer.pass(0.2).sign(technician, 'act-signed', { caseId: caseId('Dairy wall 4–7'), act: 'ice', quantity: null, words: 'dry ice on the top shelf' })
-      writer.pass(0.2).sign(technician, 'act-signed', { caseId: caseId('Fish service'), act: 'discarded', product: 'oysters', quantity: 3.5, unit: 'kg', place: 'bin room' })
+      writer.pass(0.2).sign(technician, 'act-signed', { caseId: caseId('Fish service'), act: 'discarded', product: 'oysters', quantity: 3.5, unit: 'kg', place: 'bin room', takenBy: 'Piet Harrow' })
       writer.pass(0.1).sign(technician, 'correction', { corrects: warm.id, reason: 'misread the display', reading: { value: 42.3 } })
       const struck = reading(writer, 'Meat 1–3', 61)
       writer.pass(0.1).sign(technician, 'correction', { corrects: struck.id, reason: 'probe was in my hand', reading: 'struck' })
@@ -35,7 +35,7 @@ export const busy: Scenario = {
       const question = writer.pass(0.1).sign(supervisor, 'question-asked', { about: null, words: 'Are the night covers down?' })
       writer.pass(0.1).sign(technician, 'question-answered', { question: question.id, words: 'Yes, on all of the dairy wall.' })
       writer.pass(0.1).sign(technician, 'turned-back', { reason: 'the new software does not start' })
-      writer.pass(0.1).sign(supervisor, 'decided-otherwise', { caseId: caseId('Dairy wall 4–7'), reason: 'under two hours, 3-501.19' })
+      writer.pass(0.1).sign(supervisor, 'decided-otherwise', { caseId: caseId('Dairy wall 4–7'), reason: 'under two hours', clause: '3-501.19' })
     },
     'hand-back': (writer) => {
       writer.pass(0.1).sign(supervisor, 'left-in-exception', { points: [{ tag: 'ASH-1', owner: 'Bram Oster', by: isoTime(writer.now + 86_400_000), reason: 'relay to be changed tomorrow' }] })

@@ -2,6 +2,7 @@
 import { marginAt } from '../../server/utils/hold/margin'
 import { handBackAfter, planRefusals } from '../../server/utils/order/for-outage'
 import { rulebookById } from '../../server/utils/holding'
+import { actNeeded } from '../../server/utils/hold/act-needed'
 import { assessCase } from '../../server/utils/holding/for-outage'
 import { plantChanges } from '../../server/utils/record/plant-entries'
 import { privateKeyOf, publicKeyText, signBytes } from '../../server/utils/record/keys'
@@ -157,11 +158,14 @@ export class RecordWriter {
     if (this.state.darks.length === 0 || this.state.phase === 'sealed' || this.state.phase === 'submitted') return
     for (const item of watchedCases(this.state)) {
       const judged = item.empty ? null : assessCase(this.state, item.id, this.now)
-      if (!judged || judged.verdict === (item.verdict?.verdict ?? 'within')) continue
-      this.serverEntry('verdict-changed', {
-        caseId: item.id, verdict: judged.verdict, deadline: judged.deadline === null ? null : isoTime(Date.parse(judged.deadline)),
-        minutesAbove: judged.minutesAbove.careful, clause: judged.clause, source: judged.source, act: judged.act, why: judged.why, judgedAt: isoTime(this.now),
-      })
+      if (judged && judged.verdict !== (item.verdict?.verdict ?? 'within')) {
+        this.serverEntry('verdict-changed', {
+          caseId: item.id, verdict: judged.verdict, deadline: judged.deadline === null ? null : isoTime(Date.parse(judged.deadline)),
+          minutesAbove: judged.minutesAbove.careful, clause: judged.clause, source: judged.source, act: judged.act, why: judged.why, judgedAt: isoTime(this.now),
+        })
+      }
+      const need = actNeeded(this.state, item.id, this.now, judged)
+      if (need && !need.entered && (need.cause === 'deadline-near' || need.cause === 'hold-short')) this.serverEntry('act-opened', { caseId: item.id, cause: need.cause, deadline: need.deadline === null ? null : isoTime(need.deadline), openedAt: isoTime(this.now) })
     }
   }
 }

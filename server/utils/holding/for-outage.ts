@@ -4,11 +4,14 @@ import { firstDarkAt, judgedReadings } from '~~/shared/record/select'
 import type { SnapshotCase } from '~~/shared/record/snapshot'
 import type { OutageState } from '~~/shared/record/state'
 import type { TemperatureUnit } from '~~/shared/schemas/assess'
-import { assess } from './judge'
+import { assessTimed } from './judge'
 import { rulebookById } from './rulebooks'
 import { siteFor } from './site-settings'
 import type { Assessment } from './types'
 import { convertDifference, convertTemperature } from './units'
+
+/** A case judged; `ruleMinutes` is the whole time of the rule that sets the deadline, null where there is none. */
+export interface JudgedCase extends Assessment { ruleMinutes: number | null }
 
 /** Verdicts from the best to the worst. */
 const RANK: Record<Assessment['verdict'], number> = { within: 0, unknown: 1, above: 2, act: 3, discard: 4 }
@@ -18,7 +21,7 @@ const RANK: Record<Assessment['verdict'], number> = { within: 0, unknown: 1, abo
  * yet, no reading, or nothing left in the case. A questioned reading can make it worse, never better.
  * @param now Unix ms
  */
-export function assessCase(state: OutageState, caseId: string, now: number): Assessment | null {
+export function assessCase(state: OutageState, caseId: string, now: number): JudgedCase | null {
   const known = state.snapshot.cases.find(item => item.id === caseId)
   const item = state.cases[caseId]
   const darkAt = firstDarkAt(state)
@@ -30,12 +33,12 @@ export function assessCase(state: OutageState, caseId: string, now: number): Ass
   return without && all && RANK[without.verdict] > RANK[all.verdict] ? without : all
 }
 
-function assessReadings(state: OutageState, known: SnapshotCase, darkAt: number, taken: Reading[], now: number): Assessment | null {
+function assessReadings(state: OutageState, known: SnapshotCase, darkAt: number, taken: Reading[], now: number): JudgedCase | null {
   const readings = oneInstantEach(taken)
   if (readings.length === 0) return null
   const { rulebook, site } = state.snapshot
   const unit = site.temperatureUnit
-  return assess({
+  const { assessment, ruleMinutes } = assessTimed({
     rulebook: rulebook.id,
     version: rulebook.version,
     foodClass: known.foodClass,
@@ -51,6 +54,7 @@ function assessReadings(state: OutageState, known: SnapshotCase, darkAt: number,
     now: isoTime(now),
     site: { ...siteFor(site.holding, known.foodClass), ...known.stricter ? { limit: stricterLimit(state, known) } : {} },
   })
+  return { ...assessment, ruleMinutes }
 }
 
 /** The accuracy of the instrument that a reading names, degrees of the site's unit; without one the engine takes what the code demands. */

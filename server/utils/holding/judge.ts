@@ -51,10 +51,10 @@ function worstOf(outcomes: Outcome[], otherwise: Outcome): Outcome {
 }
 
 /** The first instant at which something worse than the verdict is to come; null when the last reading is within. */
-function deadlineOf(findings: Finding[], verdict: GradedVerdict, lastAbove: boolean): string | null {
+function comingWorse(findings: Finding[], verdict: GradedVerdict, lastAbove: boolean): Finding['next'][number] | null {
   if (!lastAbove) return null
-  const instants = findings.flatMap(({ next }) => next).filter(coming => isWorse(coming.verdict, verdict)).map(({ at }) => at)
-  return instants.length === 0 ? null : new Date(Math.min(...instants)).toISOString()
+  const coming = findings.flatMap(({ next }) => next).filter(each => isWorse(each.verdict, verdict))
+  return coming.reduce<Finding['next'][number] | null>((first, each) => first && first.at <= each.at ? first : each, null)
 }
 
 /** The case that a log makes under a class; null when no reading is of the kind that the class is judged by. */
@@ -96,18 +96,29 @@ function assessNothing(log: HoldingLog, foodClass: EffectiveClass, rulebook: Rul
   }
 }
 
+/** An assessment, with the whole time of the rule that sets its deadline, minutes; null where there is no deadline. */
+export interface TimedAssessment {
+  assessment: Assessment
+  ruleMinutes: number | null
+}
+
 /**
  * Judges a log. The input is taken as `parseAssessInput` leaves it; temperatures in its own unit, times in ISO 8601.
  * @throws RangeError when the rulebook, its version or its class does not exist
  */
 export function assess(input: AssessInput): Assessment {
+  return assessTimed(input).assessment
+}
+
+/** The same, with the time that the deadline is counted against. */
+export function assessTimed(input: AssessInput): TimedAssessment {
   const rulebook = rulebookById(input.rulebook, input.version)
   const plainClass = rulebook && classById(rulebook, input.foodClass)
   if (!rulebook || !plainClass) throw new RangeError(`No rulebook ${input.rulebook} with a class ${input.foodClass}`)
   const foodClass = effectiveClass(plainClass, input.site)
   const log = readLog(input, foodClass, rulebook.unit)
   const of = caseOf(log, foodClass, rulebook)
-  if (!of) return assessNothing(log, foodClass, rulebook)
+  if (!of) return { assessment: assessNothing(log, foodClass, rulebook), ruleMinutes: null }
 
   const findings = foodClass.rules.map(rule => findBy(rule, of))
   const stays = findings.flatMap(finding => finding.stays ?? [])
@@ -116,10 +127,11 @@ export function assess(input: AssessInput): Assessment {
   const isStale = !of.lastAbove && log.now - of.last.at > log.intervalMs
   const isUnknown = outcome.verdict === 'within' && isStale
   const counting = limitCounting(foodClass)
+  const coming = comingWorse(findings, outcome.verdict, of.lastAbove)
 
-  return {
+  const assessment: Assessment = {
     verdict: isUnknown ? 'unknown' : outcome.verdict,
-    deadline: deadlineOf(findings, outcome.verdict, of.lastAbove),
+    deadline: coming && new Date(coming.at).toISOString(),
     limit: { value: foodClass.limit, unit: rulebook.unit },
     minutesAbove: {
       careful: sumOver(of.stretches, stretch => carefulMs(stretch, counting)) / MINUTE,
@@ -133,4 +145,5 @@ export function assess(input: AssessInput): Assessment {
     act: isUnknown ? actOnUnknown(foodClass) : outcome.act,
     why: reasonsFor(of, outcome, counting, isUnknown, findings.flatMap(({ remarks }) => remarks)),
   }
+  return { assessment, ruleMinutes: coming?.minutes ?? null }
 }

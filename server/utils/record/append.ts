@@ -19,6 +19,7 @@ import type { Draft } from './draft'
 import { addEntry, addServerEntry, draftOf, renameSigner, saveProjection } from './draft'
 import { followUp } from './follow'
 import type { OutageRow } from './log'
+import { renewCheck } from './renew-check'
 import { serverSigner } from './server-signer'
 import { surroundingsOf } from './surroundings'
 
@@ -78,6 +79,7 @@ async function appendOne(draft: Draft, person: Person, item: unknown, at: string
     await openOutage(draft, person, entry)
   }
   const stored = await addEntry(draft, entry, signature, standing, why)
+  if (entry.kind === 'instrument-checked' && standing === 'accepted') await renewCheck(draft, entry)
   if (entry.kind === 'outage-opened' && standing === 'accepted') await numberOutage(draft, entry.body.snapshot.site.id)
   return { id: entry.id, status: standing, seq: stored.seq, receivedAt: stored.receivedAt, why }
 }

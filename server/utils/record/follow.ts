@@ -1,13 +1,20 @@
+import { eq } from 'drizzle-orm'
 import { isoTime } from '../../../shared/record/entry'
 import { watchedCases } from '../../../shared/record/select'
+import type { CaseState } from '../../../shared/record/state'
+import { outages } from '../../database/schema'
+import type { Database } from '../database'
+import { actNeeded } from '../hold/act-needed'
 import { forecastCase } from '../hold/for-outage'
 import { LATE_MS } from '../hold/history'
 import { assessCase } from '../holding/for-outage'
+import type { JudgedCase } from '../holding/for-outage'
 import type { Draft } from './draft'
-import { addServerEntry } from './draft'
+import { addServerEntry, draftOf, saveProjection } from './draft'
 import { plantChanges } from './plant-entries'
+import { serverSigner } from './server-signer'
 
-/** Entries of the server's own after others were added: a warning of the plant or a verdict where it changed. */
+/** Entries of the server's own after others were added: a warning of the plant or a verdict where it changed, an act where one is needed. */
 export async function followUp(draft: Draft): Promise<void> {
   const { state } = draft
   for (const body of plantChanges(state, draft.now)) await addServerEntry(draft, 'plant-warned', body)
@@ -15,20 +22,45 @@ export async function followUp(draft: Draft): Promise<void> {
   for (const item of watchedCases(state)) {
     if (item.empty) continue
     const judged = assessCase(state, item.id, draft.now)
-    if (!judged || judged.verdict === (item.verdict?.verdict ?? 'within')) continue
-    if (judged.verdict === 'unknown' && !isLate(draft, item.id)) continue
-    await addServerEntry(draft, 'verdict-changed', {
-      caseId: item.id,
-      verdict: judged.verdict,
-      deadline: judged.deadline === null ? null : isoTime(Date.parse(judged.deadline)),
-      minutesAbove: judged.minutesAbove.careful,
-      clause: judged.clause,
-      source: judged.source,
-      act: judged.act,
-      why: judged.why,
-      judgedAt: isoTime(draft.now),
-    })
+    if (judged) await enterVerdict(draft, item, judged)
+    const need = actNeeded(state, item.id, draft.now, judged)
+    if (need === null || need.entered || need.cause === 'act' || need.cause === 'discard') continue
+    await addServerEntry(draft, 'act-opened', { caseId: item.id, cause: need.cause, deadline: need.deadline === null ? null : isoTime(need.deadline), openedAt: isoTime(draft.now) })
   }
+}
+
+async function enterVerdict(draft: Draft, item: CaseState, judged: JudgedCase): Promise<void> {
+  if (judged.verdict === (item.verdict?.verdict ?? 'within')) return
+  if (judged.verdict === 'unknown' && !isLate(draft, item.id)) return
+  await addServerEntry(draft, 'verdict-changed', {
+    caseId: item.id,
+    verdict: judged.verdict,
+    deadline: judged.deadline === null ? null : isoTime(Date.parse(judged.deadline)),
+    minutesAbove: judged.minutesAbove.careful,
+    clause: judged.clause,
+    source: judged.source,
+    act: judged.act,
+    why: judged.why,
+    judgedAt: isoTime(draft.now),
+  })
+}
+
+/**
+ * Looks at an outage anew although nobody has signed anything: time alone brings a verdict, or an act.
+ * @param now Unix ms
+ * @returns whether an entry was added
+ */
+export async function lookAgain(db: Database, outageId: string, now: number): Promise<boolean> {
+  return db.transaction(async (tx) => {
+    const [row] = await tx.select().from(outages).where(eq(outages.id, outageId)).for('update')
+    if (!row) return false
+    const draft = await draftOf(tx, outageId, row, await serverSigner(tx), now)
+    const before = draft.state.size
+    await followUp(draft)
+    if (draft.state.size === before) return false
+    await saveProjection(draft)
+    return true
+  })
 }
 
 /** A reading that is missing is news only without control, and once the case's own time for it is over. */

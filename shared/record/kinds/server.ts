@@ -16,6 +16,10 @@ export const VERDICT_WORDS: Record<Verdict, string> = {
 export const PLANT_FAULTS = ['current-above-plate', 'discharge-high', 'suction-below-forecast', 'suction-near-cut-out'] as const
 export type PlantFault = (typeof PLANT_FAULTS)[number]
 
+/** Why an act is open on a case, the least pressing first. */
+export const ACT_CAUSES = ['hold-short', 'deadline-near', 'act', 'discard'] as const
+export type ActCause = (typeof ACT_CAUSES)[number]
+
 /** Kinds that only the server signs. */
 export const serverKinds = {
   'signer-named': { 1: z.object({
@@ -46,6 +50,13 @@ export const serverKinds = {
     act: z.string().max(600),
     over: z.boolean(), // the reading that it came from has been followed by a better one
     judgedAt: time,
+  }).strict() },
+  /** an act that no verdict opens by itself: its deadline came near, or its hold grew short */
+  'act-opened': { 1: z.object({
+    caseId: uuid,
+    cause: z.enum(['hold-short', 'deadline-near']),
+    deadline: time.nullable(), // when the verdict gets worse; for a short hold, when the limit is reached by the forecast
+    openedAt: time,
   }).strict() },
   'entry-refused': { 1: z.object({ device: uuid, n: z.number().int().min(1), id: uuid, hash: z.string().regex(/^[0-9a-f]{64}$/), reason: z.string().max(1000) }).strict() },
 }

@@ -1,7 +1,7 @@
 /** A body of every kind of entry that a person or the server signs, as its schema writes it. */
 import type { BodyInput, EntryKind } from '../../../shared/record/kinds'
 import { SEAL_STATEMENT, SUBMIT_STATEMENT } from '../../../shared/record/kinds/review'
-import { BEGAN, CIRCUIT, DAIRY, DRAWING, GROUP, opening, planOf, pressure, reading } from './store'
+import { BEGAN, CIRCUIT, DAIRY, DRAWING, GROUP, INSTRUMENT, opening, planOf, pressure, reading } from './store'
 import { isoTime } from '../../../shared/record/entry'
 import { uuidFor } from '../../support/record'
 
@@ -28,8 +28,9 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'defrost-watched': { circuitId: CIRCUIT, words },
   'reading-taken': reading(DAIRY, 38.5, { words }),
   'pressure-read': { ...pressure(47.5), dischargePsig: 228, words },
-  'act-signed': { caseId: DAIRY, act: 'discarded', product: 'yoghurt', quantity: 12.5, unit: 'kg', place: 'bin', words, photos: [] },
-  'decided-otherwise': { caseId: DAIRY, reason: words, photos: [] },
+  'act-signed': { caseId: DAIRY, act: 'discarded', product: 'yoghurt', quantity: 12.5, unit: 'kg', place: 'bin', coolBy: null, takenBy: 'Piet Harrow', left: false, words, photos: [] },
+  'decided-otherwise': { caseId: DAIRY, reason: words, clause: '3-501.19', photos: [] },
+  'instrument-checked': { instrumentId: INSTRUMENT, value: 32.4, unit: 'F', within: true, words },
   'went-dark': { lostAt: isoTime(BEGAN) },
   'control-lost': { lostAt: isoTime(BEGAN), words, photos: [] },
   'step-ticked': { step: 'load', state: 'begun', words },
@@ -49,5 +50,6 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'outage-numbered': { code: 'Q001-0001' },
   'verdict-changed': { caseId: DAIRY, verdict: 'act', deadline: isoTime(BEGAN), minutesAbove: 12.5, clause: '3-501.16', source: 'FDA', act: 'Cool it', why: ['above'], judgedAt: isoTime(BEGAN) },
   'plant-warned': { fault: 'discharge-high', about: GROUP, words: 'discharge 380 psig', act: 'Add a condenser fan', over: false, judgedAt: isoTime(BEGAN) },
+  'act-opened': { caseId: DAIRY, cause: 'deadline-near', deadline: isoTime(BEGAN), openedAt: isoTime(BEGAN) },
   'entry-refused': { device: entryId, n: 3, id: entryId, hash: 'e'.repeat(64), reason: words },
 }

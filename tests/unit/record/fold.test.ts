@@ -151,10 +151,10 @@ describe('verdicts and acts', () => {
     writer.serverEntry('verdict-changed', verdict)
     const seq = writer.entries.length
     expect([writer.state.cases[DAIRY]!.verdict?.verdict, writer.state.cases[DAIRY]!.openAct]).toEqual(['act', seq])
-    writer.serverEntry('verdict-changed', { ...verdict, verdict: 'within', deadline: null, act: null })
+    writer.serverEntry('verdict-changed', { ...verdict, verdict: 'unknown', deadline: null, act: null })
     expect(writer.state.cases[DAIRY]!.openAct).toBe(seq)
-    writer.sign(technician, 'act-signed', { caseId: DAIRY, act: 'cooled', product: '', quantity: null, place: '' })
-    expect([writer.state.cases[DAIRY]!.openAct, writer.state.cases[DAIRY]!.empty, writer.state.cases[DAIRY]!.acts.length]).toEqual([null, false, 1])
+    writer.sign(technician, 'act-signed', { caseId: DAIRY, act: 'used', product: 'milk', quantity: null, place: '' })
+    expect([writer.state.cases[DAIRY]!.openAct, writer.state.cases[DAIRY]!.empty, writer.state.cases[DAIRY]!.acts.length]).toEqual([null, true, 1])
   })
 
   it('a discard is met by nothing less', () => {
@@ -162,15 +162,15 @@ describe('verdicts and acts', () => {
     writer.serverEntry('verdict-changed', { ...verdict, verdict: 'discard' })
     writer.sign(technician, 'act-signed', { caseId: DAIRY, act: 'moved', product: '', quantity: null, place: 'cooler' })
     expect([writer.state.cases[DAIRY]!.empty, writer.state.cases[DAIRY]!.openAct]).not.toContain(null)
-    writer.sign(technician, 'act-signed', { caseId: DAIRY, act: 'discarded', product: 'milk', quantity: 3, unit: 'l', place: 'bin' })
+    writer.sign(technician, 'act-signed', { caseId: DAIRY, act: 'discarded', product: 'milk', quantity: 3, unit: 'l', place: 'bin', takenBy: 'Piet Harrow' })
     expect(writer.state.cases[DAIRY]!.openAct).toBeNull()
   })
 
   it('a supervisor decides otherwise', () => {
     const writer = storyTo('dark')
     writer.serverEntry('verdict-changed', { ...verdict, verdict: 'discard' })
-    writer.sign(supervisor, 'decided-otherwise', { caseId: DAIRY, reason: 'hard cheese, 3-501.19' })
-    expect(writer.state.cases[DAIRY]).toMatchObject({ openAct: null, decidedOtherwise: { reason: 'hard cheese, 3-501.19' } })
+    writer.sign(supervisor, 'decided-otherwise', { caseId: DAIRY, reason: 'hard cheese', clause: '3-501.19' })
+    expect(writer.state.cases[DAIRY]).toMatchObject({ openAct: null, decidedOtherwise: { reason: 'hard cheese', clause: '3-501.19' } })
   })
 
   it('a case accepted as started warm is no act done', () => {

@@ -1,5 +1,6 @@
 /** Each line of each gate, one at a time: what is missing is named. Rules of this project, no published source. */
 import { describe, expect, it } from 'vitest'
+import { openAct } from '../../../shared/record/act-course'
 import { BACK_CHECKS, BEFORE_CHECKS } from '../../../shared/record/checks'
 import { callOffGate, goDarkGate, handBackGate, NO_RESULTS, planGate, sealGate, settledFaults, steadyFault, submitGate } from '../../../shared/record/gates'
 import { isoTime } from '../../../shared/record/entry'
@@ -190,7 +191,7 @@ describe('submitting', () => {
   it('needs nothing more when all has settled', () => expect(submitGate(ready.state)).toEqual([]))
   it.each<[string, (state: OutageState) => void, string]>([
     ['hand back closed', (state) => { state.handBackClosed = null }, 'hand back is not closed'],
-    ['acts signed', (state) => { state.cases[DAIRY]!.openAct = 3 }, 'an act is to be signed for Dairy wall'],
+    ['acts ended', (state) => { openAct(state.cases[DAIRY]!, 'discard', null, state.opened!) }, 'Dairy wall: an act is open, it must be discarded: sign what is discarded'],
     ['questions answered', (state) => { state.questions.push({ entry: 'x', about: null, words: '?', mark: state.opened!, answer: null }) }, '1 question to answer'],
     ['nothing in hand', (state) => { state.points['C-1']!.status = 'hand' }, 'still in hand: C-1'],
     ['defrosts watched', (state) => { state.plan.watchDefrosts = true }, 'one defrost to be watched of each kind: electric'],

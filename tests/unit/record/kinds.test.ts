@@ -33,7 +33,7 @@ describe.each(bodies)('%s', (kind, body) => {
   it('misses each field that it needs', () => {
     const needed = Object.keys(body as object).filter(field => fault(kind, Object.fromEntries(Object.entries(body as object).filter(([name]) => name !== field))) !== null)
     const optional = Object.keys(body as object).filter(field => !needed.includes(field))
-    expect(optional.filter(field => !['words', 'photos', 'note', 'reason', 'cause', 'product', 'unit', 'place'].includes(field))).toEqual([])
+    expect(optional.filter(field => !['words', 'photos', 'note', 'reason', 'cause', 'product', 'unit', 'place', 'coolBy', 'takenBy', 'left'].includes(field))).toEqual([])
     for (const field of needed) expect(fault(kind, { ...(body as object), [field]: undefined })).toContain(field)
   })
 
@@ -79,7 +79,7 @@ describe('the registry', () => {
   it('knows its kinds and no inherited name', () => {
     expect(kinds.every(isEntryKind)).toBe(true)
     for (const name of ['constructor', '__proto__', 'toString', 'note_added', '']) expect(isEntryKind(name)).toBe(false)
-    expect(kinds.filter(isServerKind).sort()).toEqual(['entry-refused', 'outage-numbered', 'plant-warned', 'signer-named', 'verdict-changed'])
+    expect(kinds.filter(isServerKind).sort()).toEqual(['act-opened', 'entry-refused', 'outage-numbered', 'plant-warned', 'signer-named', 'verdict-changed'])
   })
 
   it('has no schema for a version to come', () => {

@@ -21,7 +21,7 @@ import type { OutageState } from '../../../shared/record/state'
 import type { Role } from '../../../shared/schemas/people'
 import type { RecordWriter } from '../../support/record'
 import { secondTechnician, supervisor, technician, uuidFor } from '../../support/record'
-import { BEGAN, CIRCUIT, DRAWING, inHand, opening, PHASES_TOLD, planOf, pressure, readAll, reading, readyForDark, returnAll, signChecks, snapshot, steadySuction, storyTo, submission } from './store'
+import { BEGAN, CIRCUIT, DRAWING, INSTRUMENT, inHand, opening, PHASES_TOLD, planOf, pressure, readAll, reading, readyForDark, returnAll, signChecks, snapshot, steadySuction, storyTo, submission } from './store'
 
 /** One thing that somebody does; `draws` choose what its body says. */
 export interface Deed { kind: PersonKind, /** chooses an apt kind instead, where it is odd */ apt: number, who: number, minutes: number, late: boolean, draws: [number, number, number] }
@@ -74,7 +74,8 @@ const DRAW: { [K in EntryKind]?: (state: OutageState, draws: Deed['draws'], now:
   'reading-taken': (_state, [a, b]) => reading(caseOf(a), 34 + b % 10, { round: b % 5 }),
   'pressure-read': (_state, [a]) => pressure(44 + a % 8),
   'act-signed': (_state, [a, b]) => ({ caseId: caseOf(a), act: of(ACTS, b), product: 'milk', quantity: 1, place: 'cooler' }),
-  'decided-otherwise': (_state, [a]) => ({ caseId: caseOf(a), reason: '3-501.19' }),
+  'decided-otherwise': (_state, [a]) => ({ caseId: caseOf(a), reason: 'hard cheese', clause: '3-501.19' }),
+  'instrument-checked': (_state, [a]) => ({ instrumentId: INSTRUMENT, value: 31 + a % 3, unit: 'F', within: a % 3 !== 0, words: '' }),
   'went-dark': (_state, _draws, now) => ({ lostAt: isoTime(now) }),
   'control-lost': (_state, [a], now) => ({ lostAt: isoTime(now - (a % 30) * 60_000), words: 'gone' }),
   'step-ticked': (_state, [a, b]) => ({ step: of(['load', 'restart', 'old', 'dance'], a), state: of(['begun', 'done'], b) }),

@@ -7,7 +7,7 @@ import { isServerKind, KINDS } from '../../../shared/record/kinds'
 import type { Role } from '../../../shared/schemas/people'
 import { RecordWriter, secondTechnician, supervisor, technician, testSigner } from '../../support/record'
 import { BODIES } from './bodies'
-import { BEGAN, DAIRY, inHand, judged, opening, PHASES_TOLD, planOf, putAllInHand, reading, seal, signChecks, storyTo, submission, unplanned } from './store'
+import { BEGAN, DAIRY, INSTRUMENT, inHand, judged, opening, PHASES_TOLD, planOf, putAllInHand, reading, seal, signChecks, storyTo, submission, unplanned } from './store'
 import type { PhaseTold } from './store'
 
 const kinds = Object.keys(KINDS) as EntryKind[]
@@ -41,7 +41,7 @@ describe('phases', () => {
     'in-hand-begun': ['approved'], 'called-off': ['plan', 'approved', 'in-hand'], 'check-signed': ['approved', ...RUN],
     'point-in-hand': RUN, 'point-excused': ['in-hand', 'dark'], 'point-in-auto': ['in-hand', 'hand-back', 'settle'], 'point-proven': ['hand-back', 'settle'],
     'left-in-exception': ['hand-back', 'settle'], 'hand-back-closed': ['hand-back'], 'defrost-watched': ['hand-back', 'settle'],
-    'reading-taken': ['approved', ...RUN], 'pressure-read': ['approved', ...RUN], 'act-signed': ['approved', ...RUN, 'submitted'], 'decided-otherwise': [...RUN, 'submitted'],
+    'reading-taken': ['approved', ...RUN], 'pressure-read': ['approved', ...RUN], 'act-signed': ['approved', ...RUN, 'submitted'], 'decided-otherwise': [...RUN, 'submitted'], 'instrument-checked': ['approved', ...RUN],
     'went-dark': ['in-hand'], 'control-lost': ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], 'step-ticked': ['approved', ...RUN], 'turned-back': ['dark'], 'control-back': ['dark'],
     'silence-announced': BEFORE_SEAL, 'note-added': BEFORE_SEAL, 'correction': BEFORE_SEAL, 'questioned-settled': BEFORE_SEAL, 'question-asked': [...RUN, 'submitted'], 'question-answered': BEFORE_SEAL,
     'submitted': ['settle'], 'review-begun': ['submitted'], 'returned': ['submitted'], 'sealed': ['submitted'],
@@ -227,9 +227,20 @@ describe('readings and acts', () => {
   })
   it('say what is discarded and where product went', () => {
     const act = { caseId: DAIRY, product: '', quantity: null, place: '' }
-    expect(judged(stories.dark, technician, 'act-signed', { ...act, act: 'discarded' }).why).toEqual(['name the product and the quantity that is discarded'])
+    expect(judged(stories.dark, technician, 'act-signed', { ...act, act: 'discarded' }).why).toEqual(['name the product and the quantity that is discarded', 'say who took what is discarded'])
     expect(judged(stories.dark, technician, 'act-signed', { ...act, act: 'moved' }).why).toEqual(['say where the product was moved to'])
     expect(judged(stories.dark, technician, 'act-signed', { ...act, act: 'ice' }).why).toEqual([])
+    expect(judged(stories.dark, technician, 'act-signed', { ...act, act: 'cool-by' }).why).toEqual(['say by when it is to be cooled'])
+    expect(judged(stories.dark, technician, 'act-signed', { ...act, act: 'cool-by', coolBy: isoTime(stories.dark.now) }).why).toEqual(['the time by which it is to be cooled is past already'])
+    expect(judged(stories.dark, technician, 'act-signed', { ...act, act: 'cool-by', coolBy: isoTime(stories.dark.now + 1) }).why).toEqual([])
+  })
+  it('say of an instrument what its reading shows', () => {
+    // T-1 is good to half a kelvin, which is 0.9 °F.
+    const check = { instrumentId: INSTRUMENT, unit: 'F' as const }
+    expect(judged(stories.dark, technician, 'instrument-checked', { ...check, value: 32.9, within: true }).why).toEqual([])
+    expect(judged(stories.dark, technician, 'instrument-checked', { ...check, value: 33, within: false }).why).toEqual([])
+    expect(judged(stories.dark, technician, 'instrument-checked', { ...check, value: 33, within: true }).why).toEqual(['what is said of the ice point does not follow from the reading'])
+    expect(judged(stories.dark, technician, 'instrument-checked', { ...check, instrumentId: DAIRY, value: 32, within: true }).why).toEqual(['there is no such instrument at this site'])
   })
 })
 

@@ -27,6 +27,7 @@ export const JUICE = uuidFor('case juice')
 export const GROUP = uuidFor('small suction group')
 export const CIRCUIT = uuidFor('small circuit')
 export const DRAWING = 'd'.repeat(64)
+export const INSTRUMENT = uuidFor('small thermometer')
 const RACK = uuidFor('small rack')
 const { id, version, name } = rulebookById('us-food-code-2022')!
 const rulebook = { id, version, name }
@@ -56,7 +57,7 @@ export const snapshot: Snapshot = {
     point('LA-1', 'leak-alarm', null),
     point('LLS-1', 'liquid-line-valve', 'open', { circuitId: CIRCUIT }),
   ],
-  instruments: [{ id: uuidFor('small thermometer'), name: 'T-1', kind: 'product', accuracyC: 0.5, lastCheckOn: null }],
+  instruments: [{ id: INSTRUMENT, name: 'T-1', kind: 'product', accuracyC: 0.5, lastCheckOn: null }],
 }
 
 const step = (id: string, after: string[] = []) => ({ id, name: id, shortest: 5, likely: 10, longest: 20, dark: true, after })

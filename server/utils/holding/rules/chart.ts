@@ -79,8 +79,9 @@ function comingVerdicts(rule: ChartRule<number>, here: LookUp, clockStart: numbe
   const rows = rule.rows.slice(index + 1).map((row, after) => ({
     verdict: cellOf(row, here.value).verdict,
     at: clockStart + rule.rows[index + after]!.until! * MINUTE,
+    minutes: rule.rows[index + after]!.until!,
   }))
-  return here.due === null ? rows : [{ verdict: 'discard', at: here.due }, ...rows]
+  return here.due === null ? rows : [{ verdict: 'discard', at: here.due, minutes: here.cell.ask!.minutes }, ...rows]
 }
 
 function outcomeOf(found: LookUp, rule: ChartRule<number>, of: Case): Outcome {

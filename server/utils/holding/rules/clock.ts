@@ -34,7 +34,7 @@ export function findByClock(rule: ClockRule<number>, of: Case): Finding {
   const next = running
     ? rule.steps
         .filter(later => !isReached(later, sum))
-        .map(later => ({ verdict: later.verdict, at: log.now + later.minutes * MINUTE - sum }))
+        .map(later => ({ verdict: later.verdict, at: log.now + later.minutes * MINUTE - sum, minutes: later.minutes }))
     : []
   const now: Outcome | null = running
     ? { verdict: 'above', act: rule.act, reason: `${soFar}; the clock runs`, authority: rule.authority }

@@ -40,8 +40,8 @@ export interface Finding {
   stays: Outcome | null
   /** What holds at this moment; it counts only while the last reading is above the limit. */
   now: Outcome | null
-  /** What is to come, product staying at its last value. */
-  next: { verdict: GradedVerdict, at: number }[]
+  /** What is to come, product staying at its last value; `minutes` is the whole time that the rule gives. */
+  next: { verdict: GradedVerdict, at: number, minutes: number }[]
   /** Anything else that belongs among the reasons. */
   remarks: string[]
 }
