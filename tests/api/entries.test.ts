@@ -342,6 +342,39 @@ describe('verdicts', () => {
   })
 })
 
+describe('acts and thermometers', () => {
+  it('an act is opened by the server when little hold is left, and ended by what is signed', async () => {
+    const lost = world.server.now() - 12 * 60_000
+    const dark = await world.open(phone, lost)
+    const { snapshot } = world
+    const caseId = snapshot.cases[0]!.id
+    await phone.act(dark, 'reading-taken', { round: 0, caseId, value: 40.6, unit: 'F', method: 'product', instrumentId: null })
+    const opened = (await log(dark)).entries.filter(({ entry }) => entry.kind === 'act-opened')
+    expect(opened.map(({ entry }) => entry.body)).toMatchObject([{ caseId, cause: 'hold-short' }])
+    const { result } = await phone.act(dark, 'act-signed', { caseId, act: 'moved', product: 'milk', quantity: 12, unit: 'crates', place: 'cold room' })
+    expect(result.status).toBe('accepted')
+    expect(foldLog(dark, (await log(dark)).entries).cases[caseId]).toMatchObject({ openAct: null, empty: true, openings: [{ cause: 'hold-short', closed: { how: 'act' } }] })
+  })
+
+  it('a check in ice renews the equipment\'s own date, and one that was failed does not', async () => {
+    const { body: made } = await world.administrator.send<{ id: string }>('POST', `/api/sites/${world.site}/instruments`, { name: 'T-9', kind: 'product', accuracyC: 0.5, lastCheckOn: '2020-01-01' })
+    const on = await world.open(phone, world.server.now() - 60_000)
+    const site = () => world.administrator.send<{ instruments: { id: string, lastCheckOn: string | null }[] }>('GET', `/api/sites/${world.site}`)
+    const dateOf = async () => (await site()).body.instruments.find(item => item.id === made.id)!.lastCheckOn
+    // The snapshot of the world is older than this thermometer: what it says of it does not fit, and nothing is renewed.
+    const { result } = await phone.act(on, 'instrument-checked', { instrumentId: made.id, value: 32, unit: 'F', within: true, words: '' })
+    expect([result.status, await dateOf()]).toEqual(['questioned', '2020-01-01'])
+    const { body: snapshot } = await world.people.technician.client.send<typeof world.snapshot>('GET', `/api/controllers/${world.controller}/snapshot`)
+    const fresh = uuidv7(world.server.now())
+    const opening = world.opening(world.server.now() - 60_000)
+    expect((await phone.act(fresh, 'outage-opened', { ...opening, snapshot })).result.status).toBe('accepted')
+    await phone.act(fresh, 'instrument-checked', { instrumentId: made.id, value: 34, unit: 'F', within: false, words: '' })
+    expect(await dateOf()).toBe('2020-01-01')
+    await phone.act(fresh, 'instrument-checked', { instrumentId: made.id, value: 32.4, unit: 'F', within: true, words: '' })
+    expect(await dateOf()).toMatch(/^20(2[6-9]|[3-9]\d)-\d\d-\d\d$/)
+  })
+})
+
 describe('many at once', () => {
   it('two devices push at the same time: seq and each count without gaps, and every signature good', async () => {
     const id = await world.open(phone)

@@ -61,7 +61,7 @@ export async function tellMillLaneLost(stage: Stage): Promise<void> {
 
   async function readyMeals() {
     for (const [index, minutes] of [32.5, 37.8, 42.8, 47.4].entries()) await takeRound(story.goTo(at(minutes)), technician2, roundOf(3 + index, 45 - index % 2, 216 + index % 3))
-    story.pass(3.2).sign(technician2, 'act-signed', { caseId: caseOf('Ready meals'), act: 'discarded', product: 'Filled rolls from the top shelf, front row', quantity: 14, unit: 'packs', place: 'Waste cage, marked', words: '9 °C and more between the packs', photos: [] })
+    story.pass(3.2).sign(technician2, 'act-signed', { caseId: caseOf('Ready meals'), act: 'discarded', product: 'Filled rolls from the top shelf, front row', quantity: 14, unit: 'packs', place: 'Waste cage, marked', takenBy: 'Piers Hallam', left: true, words: '9 °C and more between the packs', photos: [] })
     story.pass(1.8).sign(technician2, 'act-signed', { caseId: caseOf('Ready meals'), act: 'moved', product: 'All other ready meals', quantity: 52, unit: 'trays', place: 'Cold room, left rack', words: 'With Piers Hallam and one of his people', photos: [] })
     await story.send()
     await takeRound(story.goTo(at(53.9)), technician2, roundOf(7, 43, 218))
