@@ -56,6 +56,6 @@ function madeState(snapshot: Snapshot, known: SnapshotCase, readings: ReadingSta
   const mark = { by: NO_ID, at: LOST_AT, seq: 0, entry: NO_ID }
   state.snapshot = snapshot
   state.darks = [{ from: LOST_AT, to: null, how: 'fact', words: '', breach: [], mark }]
-  state.cases = { [known.id]: { id: known.id, touched: true, readings, verdict: null, openAct: null, acts: [], decidedOtherwise: null, acceptedWarm: false, empty: false } }
+  state.cases = { [known.id]: { id: known.id, touched: true, readings, verdict: null, openAct: null, openings: [], acts: [], decidedOtherwise: null, acceptedWarm: false, empty: false } }
   return state
 }
