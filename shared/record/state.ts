@@ -10,7 +10,7 @@ import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 6
+export const FOLD_VERSION = 7
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
