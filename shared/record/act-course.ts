@@ -8,6 +8,7 @@
  *   under the limit ends an act opened by a near deadline or a short hold;
  * - decided otherwise, by a supervisor: ends any.
  *
+ * A short hold is also ended by the server once readings show that the case holds long enough again.
  * A near deadline is also ended by a reading at or under the limit alone. A verdict `act` is never ended
  * by a reading: product that must be used, moved or decided upon does not become sound by being cold again.
  */

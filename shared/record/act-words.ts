@@ -4,7 +4,7 @@ import { measureOf, openingOf } from './act-course'
 import { isoTime } from './entry'
 import type { ActCause } from './kinds/server'
 import { ACT_WORDS } from './kinds/rounds'
-import { caseName, nameOf } from './select'
+import { caseName, nameOf, openDark } from './select'
 import type { ActState, CaseState, OutageState } from './state'
 
 /** Under so many minutes of hold an act opens. */
@@ -39,6 +39,7 @@ export function endsBy(state: OutageState, item: CaseState): string {
   if (cause === 'discard') return 'sign what is discarded'
   if (cause === 'act') return 'sign what is done with the product'
   const measure = measureOf(state, item)
+  if (cause === 'hold-short' && !measure && openDark(state)) return 'sign what is done'
   return measure ? `${measureWords(state, measure)}, a reading at or under ${limitWords(state, item.id)} proves it` : 'sign what is done, or read it at or under its limit'
 }
 

@@ -1,4 +1,4 @@
-import { closeAct, correctProof, endBySigning, openAct, proveAct } from './act-course'
+import { closeAct, correctProof, endBySigning, openAct, openingOf, proveAct } from './act-course'
 import { BACK_CHECKS } from './checks'
 import type { AnyEntry, Entry, StoredEntry } from './entry'
 import { correctedTime, happenedAt } from './entry'
@@ -27,6 +27,10 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     if (body.verdict === 'act' || body.verdict === 'discard') openAct(item, body.verdict, item.verdict.deadline, mark)
     // A verdict grows milder by itself only where its rule says so, or where a reading was corrected.
     else if (body.verdict !== 'unknown' && asksByVerdict(item)) closeAct(item, 'verdict', mark)
+  },
+  'act-lapsed': (state, { body }, mark) => {
+    const item = state.cases[body.caseId]
+    if (item && openingOf(item)?.cause === 'hold-short') closeAct(item, 'hold', mark)
   },
   'act-opened': (state, { body }, mark) => {
     const item = state.cases[body.caseId]
@@ -228,7 +232,7 @@ function beginDark(state: OutageState, from: number, how: 'gate' | 'fact', words
 
 /** The open act is one that the verdict itself asked for. */
 function asksByVerdict(item: CaseState): boolean {
-  const cause = item.openings.find(opening => opening.seq === item.openAct)?.cause
+  const cause = openingOf(item)?.cause
   return cause === 'act' || cause === 'discard'
 }
 

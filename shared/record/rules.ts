@@ -63,6 +63,7 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   'verdict-changed': serverOnly,
   'plant-warned': serverOnly,
   'act-opened': serverOnly,
+  'act-lapsed': serverOnly,
   'entry-refused': serverOnly,
 
   'outage-opened': { roles: HANDS, phases: ['plan'], unfit: (state, entry) => [

@@ -10,7 +10,7 @@ import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 7
+export const FOLD_VERSION = 8
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
@@ -88,8 +88,8 @@ export interface ActOpening {
   at: number
   cause: ActCause
   deadline: number | null
-  /** worse: a more pressing one took its place */
-  closed: { how: 'act' | 'reading' | 'decision' | 'verdict' | 'worse', mark: Mark } | null
+  /** hold: the case holds long enough again; worse: a more pressing one took its place */
+  closed: { how: 'act' | 'reading' | 'decision' | 'verdict' | 'hold' | 'worse', mark: Mark } | null
 }
 
 /** A thermometer held in ice and water during this outage. */

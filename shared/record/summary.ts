@@ -163,7 +163,7 @@ function actLines(state: OutageState): ActLine[] {
 }
 
 const capital = (words: string) => `${words.charAt(0).toUpperCase()}${words.slice(1)}`
-const ENDED_WORDS = { act: 'by what was signed', reading: 'by a reading at or under the limit', decision: 'decided otherwise', verdict: 'its verdict grew milder', worse: 'a more pressing act took its place' }
+const ENDED_WORDS = { act: 'by what was signed', reading: 'by a reading at or under the limit', decision: 'decided otherwise', verdict: 'its verdict grew milder', hold: 'it holds long enough again', worse: 'a more pressing act took its place' }
 
 /** Every act that was asked for, in the order of the log. */
 function openingLines(state: OutageState): OpeningLine[] {

@@ -46,6 +46,7 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'reading-taken': (state, { body }) => tell(`${caseName(state, body.caseId)}, round ${body.round}`, join(`${body.value.toFixed(1)} °${body.unit}`, body.method !== 'product' && body.method, body.words)),
   'pressure-read': (state, { body }) => tell(`${groupName(state, body.suctionGroupId)}, round ${body.round}`, join(`suction ${body.suctionPsig} psig`, body.dischargePsig !== null && `discharge ${body.dischargePsig} psig`, body.words)),
   'act-opened': (state, { body }) => tell(`${caseName(state, body.caseId)}: an act is needed`, CAUSE_WORDS[body.cause]),
+  'act-lapsed': (state, { body }) => tell(`${caseName(state, body.caseId)}: no act is needed any more`, body.holdMinutes === null ? 'it stays within its limit' : `holds ${Math.floor(body.holdMinutes)} min`),
   'act-signed': (state, entry) => {
     const { caseId, act, product, quantity, unit, place, coolBy, takenBy, left, words } = entry.body
     const did = coolBy === null ? ACT_WORDS[act].toLowerCase() : `to be cooled by ${siteClock(state, correctedTime(entry, coolBy))}`

@@ -2,7 +2,7 @@
 import { marginAt } from '../../server/utils/hold/margin'
 import { handBackAfter, planRefusals } from '../../server/utils/order/for-outage'
 import { rulebookById } from '../../server/utils/holding'
-import { actNeeded } from '../../server/utils/hold/act-needed'
+import { actNeeded, holdsAgain } from '../../server/utils/hold/act-needed'
 import { assessCase } from '../../server/utils/holding/for-outage'
 import { plantChanges } from '../../server/utils/record/plant-entries'
 import { privateKeyOf, publicKeyText, signBytes } from '../../server/utils/record/keys'
@@ -164,6 +164,8 @@ export class RecordWriter {
           minutesAbove: judged.minutesAbove.careful, clause: judged.clause, source: judged.source, act: judged.act, why: judged.why, judgedAt: isoTime(this.now),
         })
       }
+      const again = holdsAgain(this.state, item.id, this.now)
+      if (again !== null) this.serverEntry('act-lapsed', { caseId: item.id, holdMinutes: again === 'forever' ? null : again, judgedAt: isoTime(this.now) })
       const need = actNeeded(this.state, item.id, this.now, judged)
       if (need && !need.entered && (need.cause === 'deadline-near' || need.cause === 'hold-short')) this.serverEntry('act-opened', { caseId: item.id, cause: need.cause, deadline: need.deadline === null ? null : isoTime(need.deadline), openedAt: isoTime(this.now) })
     }

@@ -54,7 +54,26 @@ function shortHold(state: OutageState, item: CaseState, now: number): NeededAct 
   const dark = openDark(state)
   const known = state.snapshot.cases.find(other => other.id === item.id)
   if (!dark || !known || productReadings(item).length === 0 || measureOf(state, item, now)) return null
-  if (item.openings.some(opening => opening.seq > dark.mark.seq)) return null
+  if (item.openings.some(opening => opening.seq > dark.mark.seq && opening.closed?.how !== 'hold')) return null
   const { toward, holdMinutes } = forecastCase(state, known, now)
   return toward === 'limit' && holdMinutes !== null && holdMinutes < SHORT_HOLD_MINUTES ? { cause: 'hold-short', deadline: Math.round(now + holdMinutes * MINUTE), entered: false } : null
+}
+
+/** A case that was short of hold must hold this long before it is no longer asked for, minutes: else it would come and go. */
+export const LONG_AGAIN_MINUTES = 20
+
+/**
+ * How long a case holds whose act of a short hold is asked for no more, because a reading since shows it; minutes,
+ * `forever` where its limit is never reached. Null while the act stands.
+ * @param now Unix ms
+ */
+export function holdsAgain(state: OutageState, caseId: string, now: number): number | 'forever' | null {
+  const item = state.cases[caseId]
+  const opening = item && openingOf(item)
+  const known = state.snapshot.cases.find(other => other.id === caseId)
+  if (!item || !known || opening?.cause !== 'hold-short' || !openDark(state)) return null
+  if (!productReadings(item).some(reading => reading.at > opening.at && reading.at <= now && !reading.questioned)) return null
+  const { toward, holdMinutes } = forecastCase(state, known, now)
+  if (toward !== 'limit' || holdMinutes === null) return 'forever'
+  return holdMinutes >= LONG_AGAIN_MINUTES ? holdMinutes : null
 }

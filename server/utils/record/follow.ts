@@ -4,7 +4,7 @@ import { watchedCases } from '../../../shared/record/select'
 import type { CaseState } from '../../../shared/record/state'
 import { outages } from '../../database/schema'
 import type { Database } from '../database'
-import { actNeeded } from '../hold/act-needed'
+import { actNeeded, holdsAgain } from '../hold/act-needed'
 import { forecastCase } from '../hold/for-outage'
 import { LATE_MS } from '../hold/history'
 import { assessCase } from '../holding/for-outage'
@@ -23,6 +23,8 @@ export async function followUp(draft: Draft): Promise<void> {
     if (item.empty) continue
     const judged = assessCase(state, item.id, draft.now)
     if (judged) await enterVerdict(draft, item, judged)
+    const again = holdsAgain(state, item.id, draft.now)
+    if (again !== null) await addServerEntry(draft, 'act-lapsed', { caseId: item.id, holdMinutes: again === 'forever' ? null : again, judgedAt: isoTime(draft.now) })
     const need = actNeeded(state, item.id, draft.now, judged)
     if (need === null || need.entered || need.cause === 'act' || need.cause === 'discard') continue
     await addServerEntry(draft, 'act-opened', { caseId: item.id, cause: need.cause, deadline: need.deadline === null ? null : isoTime(need.deadline), openedAt: isoTime(draft.now) })

@@ -58,5 +58,7 @@ export const serverKinds = {
     deadline: time.nullable(), // when the verdict gets worse; for a short hold, when the limit is reached by the forecast
     openedAt: time,
   }).strict() },
+  /** an act of a short hold is asked for no more: readings since show that the case holds */
+  'act-lapsed': { 1: z.object({ caseId: uuid, holdMinutes: z.number().min(0).nullable(), judgedAt: time }).strict() }, // null: its limit is never reached
   'entry-refused': { 1: z.object({ device: uuid, n: z.number().int().min(1), id: uuid, hash: z.string().regex(/^[0-9a-f]{64}$/), reason: z.string().max(1000) }).strict() },
 }

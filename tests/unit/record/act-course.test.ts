@@ -1,6 +1,6 @@
 /** How acts open and end: this project's own rules; page 3-501.19 and the like stand in the rulebooks, no published source here. */
 import { describe, expect, it } from 'vitest'
-import { actNeeded } from '../../../server/utils/hold/act-needed'
+import { actNeeded, holdsAgain } from '../../../server/utils/hold/act-needed'
 import { openingOf, proveAct } from '../../../shared/record/act-course'
 import { discards, openActFaults } from '../../../shared/record/act-words'
 import { isoTime } from '../../../shared/record/entry'
@@ -192,6 +192,15 @@ describe('when an act is needed', () => {
     writer.pass(1).sign(technician, 'act-signed', act('ice', { product: '', quantity: null }))
     writer.pass(1).sign(technician, 'reading-taken', reading(DAIRY, 40.8))
     expect([actNeeded(writer.state, DAIRY, writer.now), dairy(writer).openings.length]).toEqual([null, 1])
+  })
+  it('lapses by an entry of the server once readings show a hold of 20 minutes, and is asked for again when it grows short', () => {
+    const writer = open('hold-short')
+    expect(holdsAgain(writer.state, DAIRY, writer.now)).toBeNull()
+    writer.pass(3).sign(technician, 'reading-taken', reading(DAIRY, 35))
+    expect(writer.entries.filter(stored => stored.entry.kind === 'act-lapsed')).toHaveLength(1)
+    expect(dairy(writer)).toMatchObject({ openAct: null, openings: [{ cause: 'hold-short', closed: { how: 'hold' } }] })
+    for (const value of [37, 38.6, 40.2, 40.8]) writer.pass(5).sign(technician, 'reading-taken', reading(DAIRY, value))
+    expect(openingOf(dairy(writer))?.cause).toBe('hold-short')
   })
   it('is not of a case that is empty', () => {
     const writer = warm()

@@ -50,6 +50,7 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'outage-numbered': { code: 'Q001-0001' },
   'verdict-changed': { caseId: DAIRY, verdict: 'act', deadline: isoTime(BEGAN), minutesAbove: 12.5, clause: '3-501.16', source: 'FDA', act: 'Cool it', why: ['above'], judgedAt: isoTime(BEGAN) },
   'plant-warned': { fault: 'discharge-high', about: GROUP, words: 'discharge 380 psig', act: 'Add a condenser fan', over: false, judgedAt: isoTime(BEGAN) },
+  'act-lapsed': { caseId: DAIRY, holdMinutes: 25.5, judgedAt: isoTime(BEGAN) },
   'act-opened': { caseId: DAIRY, cause: 'deadline-near', deadline: isoTime(BEGAN), openedAt: isoTime(BEGAN) },
   'entry-refused': { device: entryId, n: 3, id: entryId, hash: 'e'.repeat(64), reason: words },
 }
