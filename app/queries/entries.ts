@@ -20,7 +20,8 @@ export async function pushEntries(outage: string, entries: { entry: AnyEntry, si
   throw new Unsent(troubleOf(answer?.status ?? 0))
 }
 
-function troubleOf(status: number): Trouble {
+/** Why a push has no answers, by the HTTP status; 0: none came. */
+export function troubleOf(status: number): Trouble {
   if (status === 401) return 'signed-out'
   if (status === 404 || status === 403) return 'missing'
   if (status === 413) return 'too-large'

@@ -1,15 +1,13 @@
-import { and, eq } from 'drizzle-orm'
 import { canonicalText, sha256Hex } from '../../../shared/record/canonical'
 import type { AnyEntry, Standing } from '../../../shared/record/entry'
 import { entryBytes, happenedAt, signedEntrySchema } from '../../../shared/record/entry'
 import { isEntryKind, isServerKind, schemaOf } from '../../../shared/record/kinds'
 import { ENTRY_MAX_BYTES } from '../../../shared/record/kinds/common'
 import type { OutageState } from '../../../shared/record/state'
-import { devices, entries, refusals } from '../../database/schema'
 import type { Person } from '../access'
-import type { Queries } from '../database'
 import { firstFault } from '../errors'
 import { verifyBytes } from './keys'
+import type { Known } from './known'
 
 /** What becomes of one pushed entry. */
 export type PushResult
@@ -29,8 +27,8 @@ export function refuse(id: string | null, code: Refusal['code'], reason: string,
   return { id, status: 'refused', code, field, reason, recorded: false }
 }
 
-/** Reads and verifies one pushed item: shape, signer, device, signature, replay, chain, body. */
-export async function admit(db: Queries, person: Person, state: OutageState, item: unknown, at: string): Promise<Admitted> {
+/** Reads and verifies one pushed item: shape, signer, device, signature, replay, chain, body. Pure: what the database says comes as `known`. */
+export function admit(known: Known, person: Person, state: OutageState, item: unknown, at: string): Admitted {
   const parsed = signedEntrySchema.safeParse(item)
   if (!parsed.success) {
     const { field, reason } = firstFault(parsed.error)
@@ -45,10 +43,10 @@ export async function admit(db: Queries, person: Person, state: OutageState, ite
   if (text === null) return wrong(422, 'The entry has no canonical form', `${at}.entry`)
   if (Buffer.byteLength(text) > ENTRY_MAX_BYTES) return wrong(413, `An entry takes at most ${ENTRY_MAX_BYTES} bytes`)
 
-  const earlier = await earlierAnswer(db, entry, sha256Hex(text), at)
+  const earlier = earlierAnswer(known, entry, sha256Hex(text), at)
   if (earlier) return { done: earlier }
 
-  const [device] = await db.select().from(devices).where(and(eq(devices.id, entry.device), eq(devices.personId, person.id)))
+  const device = known.devices.get(entry.device)
   if (!device) return wrong(403, 'This device is not enrolled for you')
   if (!verifyBytes(entryBytes(entry), signature, device.publicKey)) return wrong(422, 'The signature does not fit the entry', `${at}.signature`)
   const revoked = device.revokedAt?.getTime() ?? null
@@ -97,13 +95,12 @@ function textOf(entry: AnyEntry): string | null {
 }
 
 /** The first answer to the same bytes; 409 where the id came with other bytes. */
-async function earlierAnswer(db: Queries, entry: AnyEntry, hash: string, at: string): Promise<PushResult | null> {
-  const other = refuse(entry.id, 409, 'This id was used for another entry')
-  const [row] = await db.select().from(entries).where(eq(entries.id, entry.id))
-  if (row) return row.hash === hash && row.outageId === entry.outage ? { id: row.id, status: row.standing, seq: row.seq, receivedAt: row.receivedAt.toISOString(), why: row.why } : other
-  const [refused] = await db.select().from(refusals).where(eq(refusals.id, entry.id))
-  if (!refused) return null
-  return refused.hash === hash && refused.outageId === entry.outage ? { id: entry.id, status: 'refused', code: refused.code, field: refused.field === null ? null : `${at}.${refused.field}`, reason: refused.reason, recorded: true } : other
+function earlierAnswer({ answers }: Known, entry: AnyEntry, hash: string, at: string): PushResult | null {
+  const earlier = answers.get(entry.id)
+  if (!earlier) return null
+  if (earlier.hash !== hash || earlier.outage !== entry.outage) return refuse(entry.id, 409, 'This id was used for another entry')
+  const { result } = earlier
+  return result.status === 'refused' && result.field !== null ? { ...result, field: `${at}.${result.field}` } : result
 }
 
 function idOf(item: unknown): string | null {

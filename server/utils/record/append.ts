@@ -18,6 +18,8 @@ import { openingFault } from './check-opening'
 import type { Draft } from './draft'
 import { addEntry, addServerEntry, draftOf, renameSigner, saveProjection } from './draft'
 import { followUp } from './follow'
+import type { Known } from './known'
+import { readKnown } from './known'
 import type { OutageRow } from './log'
 import { renewCheck } from './renew-check'
 import { serverSigner } from './server-signer'
@@ -41,8 +43,9 @@ export async function appendEntries(db: Database, person: Person, outageId: stri
     if (!row && !isOpening(items[0])) notFound('outage')
     const draft = await draftOf(tx, outageId, row, signer, now)
     const before = draft.state.size
+    const known = await readKnown(tx, person.id, items)
     const results: PushResult[] = []
-    for (const [index, item] of items.entries()) results.push(await appendOne(draft, person, item, `entries[${index}]`))
+    for (const [index, item] of items.entries()) results.push(await appendOne(draft, known, person, item, `entries[${index}]`))
     if (draft.state.size > before) {
       await followUp(draft)
       await saveProjection(draft)
@@ -61,10 +64,10 @@ async function lockOutage(tx: Queries, id: string): Promise<OutageRow | null> {
   return opened ?? null
 }
 
-async function appendOne(draft: Draft, person: Person, item: unknown, at: string): Promise<PushResult> {
-  const admitted = await admit(draft.db, person, draft.state, item, at)
+async function appendOne(draft: Draft, known: Known, person: Person, item: unknown, at: string): Promise<PushResult> {
+  const admitted = admit(known, person, draft.state, item, at)
   if ('done' in admitted) return admitted.done
-  if ('faulty' in admitted) return recordRefusal(draft, admitted.faulty, admitted.refusal)
+  if ('faulty' in admitted) return recordRefusal(draft, known, admitted.faulty, admitted.refusal)
   const { entry, signature } = admitted
   await renameSigner(draft, person, entry.device)
   const judged = judge(draft.state, entry, person, await surroundingsOf(draft.db, draft.state, entry, () => frontierRoot(draft.frontier)))
@@ -72,7 +75,7 @@ async function appendOne(draft: Draft, person: Person, item: unknown, at: string
   // There is no log yet to keep a questioned entry in, nor one that comes before the opening.
   if (draft.state.opened === null && entry.kind !== 'outage-opened') return refuse(entry.id, 409, 'This outage is not open yet', `${at}.entry.outage`)
   if (draft.state.opened === null && standing === 'questioned') return refuse(entry.id, 422, why.join('; '), `${at}.entry.body.lostAt`)
-  if (standing === 'refused') return recordRefusal(draft, entry, { id: entry.id, status: 'refused', code: 403, field: null, reason: why.join('; '), recorded: true })
+  if (standing === 'refused') return recordRefusal(draft, known, entry, { id: entry.id, status: 'refused', code: 403, field: null, reason: why.join('; '), recorded: true })
   if (entry.kind === 'outage-opened' && draft.state.opened === null) {
     const fault = openingFault((asNewest(entry) as Entry<'outage-opened'>).body)
     if (fault) return refuse(entry.id, 422, fault.reason, `${at}.entry.body.${fault.field}`)
@@ -81,7 +84,9 @@ async function appendOne(draft: Draft, person: Person, item: unknown, at: string
   const stored = await addEntry(draft, entry, signature, standing, why)
   if (entry.kind === 'instrument-checked' && standing === 'accepted') await renewCheck(draft, entry)
   if (entry.kind === 'outage-opened' && standing === 'accepted') await numberOutage(draft, entry.body.snapshot.site.id)
-  return { id: entry.id, status: standing, seq: stored.seq, receivedAt: stored.receivedAt, why }
+  const result: PushResult = { id: entry.id, status: standing, seq: stored.seq, receivedAt: stored.receivedAt, why }
+  known.answers.set(entry.id, { outage: entry.outage, hash: draft.state.chain[entry.device]!.hash, result })
+  return result
 }
 
 /** A doubt about the signer is a reason to question what else would be accepted. An opening has nothing to be questioned in. */
@@ -90,12 +95,13 @@ function doubted({ standing, why }: Judgement, doubt: string | null): Judgement 
 }
 
 /** The refusal leaves n, hash and reason in the log, so that the device's chain stays whole. */
-async function recordRefusal(draft: Draft, entry: AnyEntry, refusal: Refusal): Promise<PushResult> {
+async function recordRefusal(draft: Draft, known: Known, entry: AnyEntry, refusal: Refusal): Promise<PushResult> {
   if (draft.state.opened === null) return { ...refusal, recorded: false }
   const { device, n, id } = entry
   const hash = entryHash(entry)
   const stored = await addServerEntry(draft, 'entry-refused', { device, n, id, hash, reason: refusal.reason.slice(0, 1000) })
   await draft.db.insert(refusals).values({ outageId: entry.outage, deviceId: device, n, id, hash, code: refusal.code, field: withinItem(refusal.field), reason: refusal.reason, seq: stored.seq })
+  known.answers.set(id, { outage: entry.outage, hash, result: { ...refusal, field: withinItem(refusal.field) } })
   return refusal
 }
 

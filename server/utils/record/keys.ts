@@ -45,7 +45,16 @@ export function verifierOf(publicKey: string): (bytes: Uint8Array, signature: st
   }
 }
 
+/** How many keys are kept read: reading one takes as long as checking a signature. */
+const KEYS_KEPT = 1000
+const verifiers = new Map<string, ReturnType<typeof verifierOf>>()
+
 /** Whether a signature over bytes is good; false for a malformed or weak key and a malformed signature too. */
 export function verifyBytes(bytes: Uint8Array, signature: string, publicKey: string): boolean {
-  return verifierOf(publicKey)(bytes, signature)
+  const verifier = verifiers.get(publicKey) ?? verifierOf(publicKey)
+  // The one used last goes to the end, so that the first is the one that can go.
+  verifiers.delete(publicKey)
+  verifiers.set(publicKey, verifier)
+  if (verifiers.size > KEYS_KEPT) verifiers.delete(verifiers.keys().next().value!)
+  return verifier(bytes, signature)
 }
