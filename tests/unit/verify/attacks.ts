@@ -121,7 +121,10 @@ function insertOne(document: RecordDocument, draw: Draw): Attack {
   const forged = draw(2) === 0 ? copied : { ...copied, entry: { ...copied.entry, id: uuidFor(`forged ${draw(1_000_000)}`) } }
   const entries = numbered([...document.entries.slice(0, seq - 1), { ...forged, seq }, ...document.entries.slice(seq - 1)])
   // A copy put right before the entry that it was taken from stands in that one's place; the next is then the double.
-  const place = forged === copied && copied.seq === seq ? seq + 1 : seq
+  // So it does further up too, where its device signed nothing between and no checkpoint is left to tell.
+  const between = document.entries.slice(seq - 1, copied.seq - 1)
+  const stands = forged === copied && (copied.seq === seq || (copied.seq > seq && tidy === 'stripped' && between.every(({ entry }) => entry.device !== copied.entry.device)))
+  const place = stands ? copied.seq + 1 : seq
   return { kind: 'insert', document: withEntries(document, entries, tidy), tidy, seq: place, outcome: 'fails' }
 }
 
