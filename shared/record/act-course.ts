@@ -76,6 +76,14 @@ export function correctProof(state: OutageState, item: CaseState, reading: Readi
   item.openAct = opening.seq
 }
 
+/** An act that a decision had ended opens again where that decision was denied, unless nothing is left in the case. */
+export function reopenDecided(item: CaseState, decision: string): void {
+  const opening = item.openings.find(known => known.closed?.how === 'decision' && known.closed.mark.entry === decision)
+  if (!opening || item.openAct !== null || item.empty) return
+  opening.closed = null
+  item.openAct = opening.seq
+}
+
 /** Judged as the case is judged, not struck, and at or under its limit; with its accuracy added where the site asks for it. */
 function isProof(state: OutageState, item: CaseState, reading: ReadingState): boolean {
   const known = state.snapshot.cases.find(other => other.id === item.id)

@@ -3,10 +3,13 @@ import { BACK_CHECKS } from './checks'
 import type { AnyEntry, Entry, StoredEntry } from './entry'
 import { correctedTime, happenedAt } from './entry'
 import { goDarkGate, NO_RESULTS } from './gates'
+import { answerHands, offerHands, takeHands } from './hands-effects'
 import type { EntryKind } from './kinds'
 import type { Plan } from './plan'
 import { expectedSeen } from './select'
 import type { CaseState, Mark, OutageState, PointState } from './state'
+import { spokenEntry } from './voice'
+import { answerVoice, beforeVoice } from './voice-effects'
 
 type Effect<K extends EntryKind> = (state: OutageState, entry: Entry<K>, mark: Mark) => void
 
@@ -44,6 +47,7 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
   'outage-opened': (state, entry, mark) => {
     const { body } = entry
     state.opened = mark
+    state.holder = { person: mark.by, mark }
     state.planned = body.planned
     state.cause = body.cause
     state.snapshot = body.snapshot
@@ -61,7 +65,7 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
   'plan-approved': (state, _entry, mark) => { state.approved = mark; state.phase = 'approved' },
   'margin-accepted': (state, { body }, mark) => { state.marginAccepted = { ...body, mark } },
   'plan-returned': (state, { body }, mark) => { state.planReturned = { reason: body.reason, mark }; state.planSubmitted = null },
-  'in-hand-begun': (state, _entry, mark) => { state.inHandBegun = mark; state.phase = 'in-hand' },
+  'in-hand-begun': (state, _entry, mark) => { state.inHandBegun = mark; state.holder = { person: mark.by, mark }; state.phase = 'in-hand' },
   'called-off': (state, { body }, mark) => { state.calledOff = { reason: body.reason, mark }; state.phase = 'called-off' },
 
   'check-signed': (state, { body }, mark) => { state.checks[body.check] = { outcome: body.outcome, words: body.words, photos: body.photos, mark } },
@@ -69,6 +73,7 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     const point = state.points[body.tag]
     if (!point) return
     point.questionedHand = null
+    point.owner = mark.by
     if (point.kind === 'compressor') point.stoppedAt = body.seen === 'not-running' ? mark.at : null
     if (body.seen !== expectedSeen(point.kind, body.hand)) { Object.assign(point, { tried: { seen: body.seen, mark }, exception: null }); return }
     Object.assign(point, { status: 'hand', hand: body.hand, seen: body.seen, value: body.value, until: Date.parse(body.until), reason: body.reason, words: body.words, photos: body.photos, mark, tried: null, excuse: null, exception: null, proof: null })
@@ -83,7 +88,7 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     if (!point) return
     const beforeDark = state.darks.length === 0
     const status = beforeDark ? 'auto' : body.seen === 'answers' ? 'proven' : 'returned'
-    Object.assign(point, { status, hand: null, value: null, until: null, seen: body.seen, words: body.words, photos: body.photos, mark, tried: null, questionedHand: null, proof: status === 'proven' ? mark : null })
+    Object.assign(point, { status, hand: null, value: null, until: null, owner: null, seen: body.seen, words: body.words, photos: body.photos, mark, tried: null, questionedHand: null, proof: status === 'proven' ? mark : null })
   },
   'point-proven': (state, { body }, mark) => {
     const point = state.points[body.tag]
@@ -96,6 +101,20 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     }
   },
   'hand-back-closed': (state, _entry, mark) => { state.handBackClosed = mark; state.phase = 'settle' },
+  'hands-offered': (state, { body }, mark) => offerHands(state, body, mark),
+  'hands-withdrawn': (state, { body }, mark) => answerHands(state, body.offer, 'withdrawn', body.reason, mark),
+  'hands-refused': (state, { body }, mark) => answerHands(state, body.offer, 'refused', body.reason, mark),
+  'hands-taken': (state, { body }, mark) => takeHands(state, body, mark),
+  'voice-decision': (state, entry, mark) => {
+    const { body } = entry
+    const before = beforeVoice(state, body.decision)
+    state.named[body.supervisor] = body.supervisorName
+    // The decision is the supervisor's, whoever took it down.
+    applyAccepted(state, spokenEntry(entry), { ...mark, by: body.supervisor })
+    state.voices.push({ entry: mark.entry, supervisor: body.supervisor, supervisorName: body.supervisorName, takenBy: mark.by, givenAt: correctedTime(entry, body.givenAt), words: body.words, decision: body.decision, mark, answer: null, before })
+  },
+  'voice-confirmed': (state, { body }, mark) => answerVoice(state, body.decision, { what: 'confirmed', words: body.words, mark }),
+  'voice-denied': (state, { body }, mark) => answerVoice(state, body.decision, { what: 'denied', words: body.reason, mark }),
   'defrost-watched': (state, { body }, mark) => { state.defrostsWatched.push({ ...body, mark }) },
 
   'reading-taken': (state, entry, mark) => {
@@ -179,6 +198,12 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
   },
 }
 
+/** What an accepted entry does, whatever its kind. */
+export function applyAccepted(state: OutageState, entry: AnyEntry, mark: Mark): void {
+  const effect = EFFECTS[entry.kind] as Effect<EntryKind>
+  effect(state, entry, mark)
+}
+
 /**
  * What a questioned entry still does: a point that it says is in hand counts as in hand, a
  * temperature or pressure that it carries is kept and judged. It moves no phase and lowers no count.
@@ -241,7 +266,7 @@ function addOnce(list: string[], value: string): void {
 }
 
 function newPoint(tag: string, kind: PointState['kind']): PointState {
-  return { tag, kind, status: 'auto', hand: null, seen: null, value: null, until: null, reason: '', words: '', photos: [], mark: null, tried: null, stoppedAt: null, questionedHand: null, excuse: null, exception: null, proof: null }
+  return { tag, kind, status: 'auto', hand: null, seen: null, value: null, until: null, owner: null, reason: '', words: '', photos: [], mark: null, tried: null, stoppedAt: null, questionedHand: null, excuse: null, exception: null, proof: null }
 }
 
 function newCase(id: string): CaseState {

@@ -1,7 +1,6 @@
-import { EFFECTS, applyQuestioned } from './effects'
-import type { AnyEntry, Entry, StoredEntry } from './entry'
+import { applyAccepted, applyQuestioned } from './effects'
+import type { AnyEntry, StoredEntry } from './entry'
 import { entryHash, happenedAt } from './entry'
-import type { EntryKind } from './kinds'
 import { asNewest } from './newest'
 import type { Mark, OutageState } from './state'
 import { emptyState } from './state'
@@ -36,11 +35,6 @@ export function applyStored(state: OutageState, stored: StoredEntry): void {
   state.chain[entry.device] = { n: entry.n, hash: entryHash(entry) }
   for (const file of filesOf(entry)) if (!state.files.includes(file)) state.files.push(file)
   if (Math.abs(entry.skew) > (state.largestSkew?.ms ?? 0)) state.largestSkew = { ms: Math.abs(entry.skew), device: entry.device }
-}
-
-function applyAccepted(state: OutageState, entry: AnyEntry, mark: Mark): void {
-  const effect = EFFECTS[entry.kind] as (state: OutageState, entry: Entry<EntryKind>, mark: Mark) => void
-  effect(state, entry, mark)
 }
 
 /** Hashes of the photos and drawings that an entry names. */

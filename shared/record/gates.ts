@@ -5,6 +5,7 @@ import { acceptanceWanted, measuresWanted } from './margin'
 import type { MarginFigure } from './margin'
 import { caseName, firmReadings, groupName, isOver, openDark, pointsInHand, pointsWaiting, productReadings, proofsDue, watchedCases } from './select'
 import type { OutageState, PressureState } from './state'
+import { deniedFaults, openVoices } from './voice'
 
 /** Suction must stay within this of itself, psi, for this long, ms, before dark. Common practice, no source. */
 export const STEADY_PSI = 3
@@ -176,6 +177,9 @@ export function sealGate(state: OutageState, filesAwaited: string[]): string[] {
   if (questioned > 0) missing.push(`${questioned} questioned ${questioned === 1 ? 'entry' : 'entries'} not dealt with`)
   const open = state.questions.filter(question => question.answer === null).length
   if (open > 0) missing.push(`${open} ${open === 1 ? 'question' : 'questions'} without an answer`)
+  const spoken = openVoices(state).map(voice => voice.supervisorName)
+  if (spoken.length > 0) missing.push(`${spoken.length} ${spoken.length === 1 ? 'decision' : 'decisions'} by voice not signed by ${list([...new Set(spoken)])}`)
+  missing.push(...deniedFaults(state))
   if (filesAwaited.length > 0) missing.push(`${filesAwaited.length} ${filesAwaited.length === 1 ? 'photo or drawing' : 'photos or drawings'} awaited`)
   return missing
 }

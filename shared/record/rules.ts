@@ -6,13 +6,15 @@ import type { AnyEntry, Entry } from './entry'
 import { correctedTime, happenedAt } from './entry'
 import { isAccepted, marginFaults, namedMinutes, acceptanceWanted } from './margin'
 import type { MarginFigure } from './margin'
+import { answerable, openOffers, unlooked } from './hands'
 import { callOffGate, goDarkGate, handBackGate, planGate, returnPointsGate, sealGate, submitGate } from './gates'
 import { readsIcePoint } from './instruments'
 import type { EntryKind } from './kinds'
 import { asNewest } from './newest'
 import { PHASE_WORDS, PHASES } from './phases'
 import type { Phase } from './phases'
-import { turningBack } from './select'
+import { nameOf, turningBack } from './select'
+import { openVoices, spokenEntry } from './voice'
 import type { OutageState } from './state'
 
 /** Who signs. */
@@ -45,6 +47,7 @@ const HANDS: readonly Role[] = ['technician', 'supervisor']
 const SUPERVISOR: readonly Role[] = ['supervisor']
 const NOBODY: readonly Role[] = []
 const RUN: readonly Phase[] = ['in-hand', 'dark', 'hand-back', 'settle']
+const CHANGING: readonly Phase[] = ['approved', ...RUN]
 const BEFORE_SEAL = PHASES.filter(phase => phase !== 'sealed')
 /** A time given as past may lie this far ahead of the entry's own, ms. */
 const AHEAD_MS = 60_000
@@ -96,6 +99,24 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   } },
   'point-proven': { roles: HANDS, phases: ['hand-back', 'settle'], unfit: (state, { body }) => state.points[body.tag]?.status === 'returned' ? [] : [`${body.tag} is not waiting for its proof`] },
   'left-in-exception': { roles: SUPERVISOR, phases: ['hand-back', 'settle'], unfit: (state, { body }) => body.points.flatMap(left => exceptionUnfit(state, left.tag)) },
+  'hands-offered': { roles: HANDS, phases: CHANGING, unfit: offerUnfit },
+  'hands-withdrawn': { roles: HANDS, phases: CHANGING, unfit: (state, { by, body }) => {
+    const offer = openOffers(state).find(item => item.entry === body.offer)
+    return !offer ? ['no such offer is open'] : offer.from === by ? [] : [`only ${nameOf(state, offer.from)} withdraws it`]
+  } },
+  'hands-refused': { roles: HANDS, phases: CHANGING, unfit: (state, { by, body }) => {
+    const offer = openOffers(state).find(item => item.entry === body.offer)
+    return !offer ? ['no such offer is open'] : offer.to === by ? [] : [`it was offered to ${offer.toName}`]
+  } },
+  'hands-taken': { roles: HANDS, phases: CHANGING, forbids: (_state, { body }, actor) => body.offer === null && actor.role !== 'supervisor' ? 'without an offer only a supervisor takes over' : null, unfit: takenUnfit },
+  'voice-decision': {
+    roles: HANDS,
+    phases: BEFORE_SEAL,
+    forbids: (_state, { body }, actor) => body.supervisor === actor.id ? 'nobody takes down their own decision: sign it itself' : null,
+    unfit: spokenUnfit,
+  },
+  'voice-confirmed': { roles: SUPERVISOR, phases: BEFORE_SEAL, forbids: (state, { body }, actor) => notTheirs(state, body.decision, actor), unfit: (state, { body }) => voiceWaits(state, body.decision) },
+  'voice-denied': { roles: SUPERVISOR, phases: BEFORE_SEAL, unfit: (state, { body }) => voiceWaits(state, body.decision) },
   'hand-back-closed': { roles: HANDS, phases: ['hand-back'], unfit: state => handBackGate(state) },
   'defrost-watched': { roles: HANDS, phases: ['hand-back', 'settle'], unfit: (state, { body }) => state.snapshot.circuits.some(circuit => circuit.id === body.circuitId) ? [] : ['there is no such circuit'] },
 
@@ -142,6 +163,52 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
       return missing
     },
   },
+}
+
+/** An offer is made by somebody who answers for something here, to another, once at a time. */
+function offerUnfit(state: OutageState, { by, body }: Entry<'hands-offered'>): string[] {
+  const missing = answerable(state).includes(by) ? [] : ['nothing here is in your hands']
+  if (body.to === by) missing.push('work passes between two people')
+  if (openOffers(state).some(offer => offer.from === by)) missing.push('an offer of yours is open already')
+  return missing
+}
+
+/** The incoming one signs what was offered to them, having looked at each open thing. Without an offer a supervisor says why. */
+function takenUnfit(state: OutageState, { by, body }: Entry<'hands-taken'>): string[] {
+  const missing = answerable(state).includes(body.from) ? [] : [`nothing here is in the hands of ${nameOf(state, body.from)}`]
+  if (body.from === by) missing.push('it is in your hands already')
+  if (body.offer === null) {
+    if (body.words === '') missing.push('say why it is taken over without an offer')
+  } else {
+    const offer = openOffers(state).find(item => item.entry === body.offer)
+    if (!offer) missing.push('no such offer is open')
+    else if (offer.to !== by) missing.push(`it was offered to ${offer.toName}`)
+    else if (offer.from !== body.from) missing.push(`it was offered by ${nameOf(state, offer.from)}`)
+  }
+  return [...missing, ...unlooked(state, body.from, body.looked)]
+}
+
+/** A decision by voice fits where the supervisor's own entry would have: the same phases, the same rules. */
+function spokenUnfit(state: OutageState, entry: Entry<'voice-decision'>, around: Surroundings): string[] {
+  const { supervisor, supervisorName, givenAt } = entry.body
+  const spoken = spokenEntry(entry)
+  const rule = RULES[spoken.kind] as Rule<EntryKind>
+  const known = Object.values(state.signers).find(signer => signer.person === supervisor)
+  const missing = known && known.role !== 'supervisor' ? [`${supervisorName} is not a supervisor`] : []
+  const forbidden = rule.forbids?.(state, spoken, { id: supervisor, role: 'supervisor' })
+  if (forbidden) missing.push(forbidden)
+  if (!rule.phases.includes(state.phase)) missing.push(`does not belong in the phase "${PHASE_WORDS[state.phase].toLowerCase()}"`)
+  return [...missing, ...ahead(entry, givenAt), ...rule.unfit?.(state, spoken, around) ?? []]
+}
+
+/** Whoever was named decides whether the words were theirs. */
+function notTheirs(state: OutageState, decision: string, actor: Actor): string | null {
+  const voice = state.voices.find(item => item.entry === decision)
+  return voice && voice.supervisor !== actor.id ? `this decision was given by ${voice.supervisorName}, who signs it` : null
+}
+
+function voiceWaits(state: OutageState, decision: string): string[] {
+  return openVoices(state).some(voice => voice.entry === decision) ? [] : ['no such decision waits for a signature']
 }
 
 /** Numbers below nothing that no acceptance covers. */

@@ -148,7 +148,7 @@ export function roundsTaken(state: OutageState): RoundSummary[] {
 /** Printed name of a person in this record. */
 export function nameOf(state: OutageState, person: string): string {
   if (person === 'server') return 'Holdover'
-  return Object.values(state.signers).find(signer => signer.person === person)?.name ?? 'Unknown signer'
+  return Object.values(state.signers).find(signer => signer.person === person)?.name ?? state.named[person] ?? 'Unknown signer'
 }
 
 export function pointName(state: OutageState, tag: string): string {

@@ -3,6 +3,7 @@ import type { Role } from '../schemas/people'
 import type { HandPosition, PointKind } from '../schemas/point-kinds'
 import type { CheckId } from './checks'
 import type { SeenInAuto, SeenInHand } from './kinds/hand'
+import type { OpenMatter, Spoken } from './kinds/hands'
 import type { Act } from './kinds/rounds'
 import type { ActCause, PlantFault, Verdict } from './kinds/server'
 import type { Phase } from './phases'
@@ -10,7 +11,7 @@ import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 8
+export const FOLD_VERSION = 9
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
@@ -32,6 +33,8 @@ export interface PointState {
   seen: SeenInHand | SeenInAuto | null
   value: { number: number, unit: string } | null
   until: number | null
+  /** who answers for the override, a person's id: who placed it, then whoever took it over (I6) */
+  owner: string | null
   reason: string
   words: string
   photos: string[]
@@ -116,6 +119,43 @@ export interface DarkInterval { from: number, to: number | null, how: 'gate' | '
 
 export interface Question { entry: string, about: string | null, words: string, mark: Mark, answer: { words: string, mark: Mark } | null }
 
+/** Work offered to somebody, and how that ended. */
+export interface OfferState {
+  entry: string
+  /** person ids */
+  from: string
+  to: string
+  toName: string
+  /** what was open, as the leaving one saw it */
+  open: { what: OpenMatter, about: string, words: string }[]
+  words: string
+  mark: Mark
+  end: { what: 'taken' | 'withdrawn' | 'refused', words: string, mark: Mark } | null
+}
+
+/** The outage passed from one to another; what the incoming one found of each open matter. */
+export interface TakenState { from: string, by: string, offer: string | null, looked: { what: OpenMatter, about: string, found: string }[], words: string, mark: Mark }
+
+/** A supervisor's decision that was given by voice, and what stood before it, should it be denied. */
+export interface VoiceState {
+  entry: string
+  supervisor: string
+  supervisorName: string
+  /** who took it down, a person's id */
+  takenBy: string
+  /** server-corrected Unix ms */
+  givenAt: number
+  words: string
+  decision: Spoken
+  mark: Mark
+  answer: { what: 'confirmed' | 'denied', words: string, mark: Mark } | null
+  before: {
+    marginAccepted: OutageState['marginAccepted']
+    exceptions: Record<string, PointState['exception']>
+    decided: CaseState['decidedOtherwise']
+  }
+}
+
 export interface Questioned { entry: string, seq: number, kind: string, why: string[], tag: string | null, settled: { words: string, mark: Mark } | null }
 
 export interface OutageState {
@@ -137,6 +177,13 @@ export interface OutageState {
   /** the numbers that a supervisor accepted last, minutes */
   marginAccepted: { minutes: number | null, deadlineMinutes: number | null, reason: string, mark: Mark } | null
   inHandBegun: Mark | null
+  /** who answers for the outage, until another one takes it: a person's id */
+  holder: { person: string, mark: Mark } | null
+  offers: OfferState[]
+  taken: TakenState[]
+  voices: VoiceState[]
+  /** names of people whom entries name before they sign themselves */
+  named: Record<string, string>
   checks: Partial<Record<CheckId, { outcome: 'done' | 'needless', words: string, photos: string[], mark: Mark }>>
   points: Record<string, PointState>
   cases: Record<string, CaseState>
@@ -203,7 +250,7 @@ export function emptyState(id: string): OutageState {
   return {
     foldVersion: FOLD_VERSION, id, code: null, size: 0, phase: 'plan', planned: true,
     snapshot: structuredClone(EMPTY_SNAPSHOT), opened: null, cause: '', plan: structuredClone(EMPTY_PLAN),
-    authors: [], planSubmitted: null, planReturned: null, approved: null, marginAccepted: null, inHandBegun: null,
+    authors: [], planSubmitted: null, planReturned: null, approved: null, marginAccepted: null, inHandBegun: null, holder: null, offers: [], taken: [], voices: [], named: {},
     checks: {}, points: {}, cases: {}, instrumentChecks: [], pressures: [], plant: [], darks: [], turnedBack: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
     calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],

@@ -91,6 +91,8 @@ export function attentionOf(summary: RecordSummary, breaches: readonly string[] 
   const list: Attention[] = [
     { what: 'Questioned entries', items: summary.questioned.map(item => `No. ${item.seq}: ${item.why.join('; ')}${item.settled ? `. Dealt with by ${item.settled.by}: ${item.settled.words}` : '. Not dealt with'}`) },
     { what: 'Questions without an answer', items: summary.questions.filter(item => item.answer === null).map(item => `No. ${item.seq}, ${item.by}: ${item.words}`) },
+    { what: 'Decisions by voice', items: summary.voices },
+    { what: 'Changed hands', items: summary.hands },
     { what: 'Control lost past a gate', items: [...breaches] },
     { what: 'Turned back', items: turnedBack === null ? [] : [turnedBack] },
     { what: 'Still in hand', items: summary.points.inHand > 0 ? [countWords(summary.points.inHand, 'point')] : [] },

@@ -8,8 +8,10 @@ import type { CheckLine, CorrectionLine, ForecastLine, LateReading, Line, PointL
 import type { ForecastSummary } from './forecast-summary'
 import { forecastSummary } from './forecast-summary'
 import { acceptedOf, checkLines, correctionLines, lineOf, lineOfMark, overLimit, pointLines, roundLines, verdictLines } from './record-lines'
+import { handsLines } from './hands'
 import { caseName, darkMs, nameOf, pointsInHand, productReadings, proofsDue, watchedCases } from './select'
 import type { OutageState } from './state'
+import { voiceLine } from './voice'
 
 /** A clock that differs by more than this from the server's is pointed out, ms. */
 export const CLOCK_DIFFERENCE_MS = 5 * 60_000
@@ -55,6 +57,9 @@ export interface RecordSummary {
   decidedOtherwise: (Line & { name: string, reason: string, clause: string })[]
   questioned: QuestionedLine[]
   questions: QuestionLine[]
+  /** decisions by voice, and changes of hands, each told in a line */
+  voices: string[]
+  hands: string[]
   clocks: ClockLine[]
   corrections: CorrectionLine[]
   refusals: { seq: number, reason: string }[]
@@ -89,6 +94,8 @@ export function summaryOf(state: OutageState, entries: readonly StoredEntry[], f
     decidedOtherwise: acceptedOf(entries, 'decided-otherwise').map(({ stored, entry }) => ({ ...lineOf(state, stored), name: caseName(state, entry.body.caseId), reason: entry.body.reason, clause: entry.body.clause })),
     questioned: state.questioned.map(item => ({ seq: item.seq, entry: item.entry, why: item.why, settled: item.settled ? { ...lineOfMark(state, item.settled.mark), words: item.settled.words } : null })),
     questions: state.questions.map(item => ({ ...lineOfMark(state, item.mark), words: item.words, answer: item.answer ? { ...lineOfMark(state, item.answer.mark), words: item.answer.words } : null })),
+    voices: state.voices.map(voice => voiceLine(state, voice, now)),
+    hands: handsLines(state),
     clocks: clockLines(state, entries),
     corrections: correctionLines(state, entries),
     refusals: state.refusals.map(({ seq, reason }) => ({ seq, reason })),

@@ -5,12 +5,14 @@ import { CAUSE_WORDS, siteClock } from './act-words'
 import type { AnyEntry, Entry } from './entry'
 import { correctedTime, isoTime } from './entry'
 import type { EntryKind } from './kinds'
+import type { OpenMatter } from './kinds/hands'
 import { asNewest } from './newest'
 import { acceptedWords } from './margin'
 import { ACT_WORDS } from './kinds/rounds'
 import { VERDICT_WORDS } from './kinds/server'
-import { caseName, groupName, instrumentName, pointName, SEEN_WORDS } from './select'
+import { caseName, groupName, instrumentName, nameOf, pointName, SEEN_WORDS } from './select'
 import type { OutageState } from './state'
+import { spokenWords } from './voice'
 
 /** An entry told in words: what was done, and what was seen. */
 export interface Told { did: string, seen: string }
@@ -19,6 +21,17 @@ const tell = (did: string, seen = ''): Told => ({ did, seen })
 const join = (...parts: (string | null | undefined | false)[]) => parts.filter(Boolean).join(' · ')
 const point = (state: OutageState, tag: string) => `${tag} ${pointName(state, tag)}`.trim()
 const AUTO_WORDS = { 'answers': 'seen to answer', 'not-called': 'not called for: proof due', 'no-answer': 'does not answer: proof due' }
+
+const offeredTo = (state: OutageState, offer: string) => state.offers.find(item => item.entry === offer)?.toName ?? 'somebody'
+const offeredBy = (state: OutageState, offer: string) => {
+  const from = state.offers.find(item => item.entry === offer)?.from
+  return from ? nameOf(state, from) : 'somebody'
+}
+const lookedAt = (state: OutageState, { what, about }: { what: OpenMatter, about: string }) => what === 'in-hand' || what === 'proof-due' ? about : state.cases[about] ? caseName(state, about) : 'another matter'
+const voiceOf = (state: OutageState, decision: string) => {
+  const voice = state.voices.find(item => item.entry === decision)
+  return voice ? `: ${voice.supervisorName} ${spokenWords(state, voice.decision)}` : ''
+}
 
 /** Every kind in words: one way to say a thing on screens, in the PDF and in the CSV. */
 const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } = {
@@ -41,6 +54,13 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'point-in-auto': (state, { body }) => tell(`${point(state, body.tag)}, back in auto`, join(AUTO_WORDS[body.seen], body.words)),
   'point-proven': (state, { body }) => tell(`${point(state, body.tag)}, proven`, body.words),
   'left-in-exception': (_state, { body }) => tell(`Left by exception: ${body.points.map(left => left.tag).join(', ')}`, body.points.map(left => `${left.owner}: ${left.reason}`).join('; ')),
+  'hands-offered': (_state, { body }) => tell(`Work offered to ${body.toName}`, join(body.open.length === 0 ? 'nothing open' : `${body.open.length} open: ${body.open.map(item => item.words).join('; ')}`, body.words)),
+  'hands-withdrawn': (state, { body }) => tell(`Offer to ${offeredTo(state, body.offer)} withdrawn`, body.reason),
+  'hands-refused': (state, { body }) => tell(`Offer of ${offeredBy(state, body.offer)} refused`, body.reason),
+  'hands-taken': (state, { body }) => tell(`Work taken over from ${nameOf(state, body.from)}${body.offer === null ? ', without an offer' : ''}`, join(`${body.looked.length} looked at`, ...body.looked.filter(item => item.found !== '').map(item => `${lookedAt(state, item)}: ${item.found}`), body.words)),
+  'voice-decision': (state, { body }) => tell(`By voice: ${body.supervisorName} ${spokenWords(state, body.decision)}`, join(`given ${body.givenAt.slice(0, 16).replace('T', ' ')} UTC`, `“${body.words}”`)),
+  'voice-confirmed': (state, { body }) => tell(`Decision by voice signed${voiceOf(state, body.decision)}`, body.words),
+  'voice-denied': (state, { body }) => tell(`Decision by voice denied${voiceOf(state, body.decision)}`, body.reason),
   'hand-back-closed': (_state, { body }) => tell('Hand back closed', body.words),
   'defrost-watched': (state, { body }) => tell(`Defrost watched: ${state.snapshot.circuits.find(circuit => circuit.id === body.circuitId)?.name ?? ''}`, body.words),
   'reading-taken': (state, { body }) => tell(`${caseName(state, body.caseId)}, round ${body.round}`, join(`${body.value.toFixed(1)} °${body.unit}`, body.method !== 'product' && body.method, body.words)),

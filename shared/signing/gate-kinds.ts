@@ -5,6 +5,8 @@ export const GATES: Partial<Record<EntryKind, string>> = {
   'plan-approved': 'to approve the plan',
   'went-dark': 'to go dark',
   'control-back': 'to sign that control is back',
+  'hands-offered': 'to offer your work',
+  'hands-taken': 'to take the work over',
   'submitted': 'to submit the record',
   'sealed': 'to countersign and seal',
 }

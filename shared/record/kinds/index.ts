@@ -1,6 +1,7 @@
 import type { z } from 'zod'
 import { darkKinds } from './dark'
 import { handKinds } from './hand'
+import { handsKinds } from './hands'
 import { planKinds } from './plan'
 import { reviewKinds } from './review'
 import { roundKinds } from './rounds'
@@ -11,7 +12,7 @@ import { serverKinds } from './server'
  * beside this, its rules in ../rules, its effect in ../effects, its words in ../words; the compiler
  * names each place that is missing.
  */
-export const KINDS = { ...planKinds, ...handKinds, ...roundKinds, ...darkKinds, ...reviewKinds, ...serverKinds }
+export const KINDS = { ...planKinds, ...handKinds, ...handsKinds, ...roundKinds, ...darkKinds, ...reviewKinds, ...serverKinds }
 
 export type EntryKind = keyof typeof KINDS
 type Schema = z.ZodTypeAny

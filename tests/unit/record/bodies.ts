@@ -10,6 +10,13 @@ const words = 'seen by torch'
 
 /** A missing kind is a compile error. */
 export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
+  'hands-offered': { to: entryId, toName: 'Bram Oster', size: 12, open: [{ what: 'in-hand', about: 'C-1', words: 'C-1, on by hand' }], words },
+  'hands-withdrawn': { offer: entryId, reason: words },
+  'hands-refused': { offer: entryId, reason: words },
+  'hands-taken': { from: entryId, offer: entryId, looked: [{ what: 'act', about: DAIRY, found: words }], words },
+  'voice-decision': { supervisor: entryId, supervisorName: 'Ines Calloway', givenAt: isoTime(BEGAN), words, decision: { kind: 'decided-otherwise', body: { caseId: DAIRY, reason: words, clause: words, photos: [] } } },
+  'voice-confirmed': { decision: entryId, words },
+  'voice-denied': { decision: entryId, reason: words },
   'outage-opened': opening(),
   'plan-changed': { plan: planOf(), note: words },
   'plan-submitted': { note: words },

@@ -13,6 +13,7 @@ import { ACTS } from '../../../shared/record/kinds/rounds'
 import { SEAL_STATEMENT } from '../../../shared/record/kinds/review'
 import { namedMinutes } from '../../../shared/record/margin'
 import { otherMeasure } from '../../../shared/record/measures'
+import { answerable, openItems, openOffers } from '../../../shared/record/hands'
 import type { Phase } from '../../../shared/record/phases'
 import type { Judgement } from '../../../shared/record/rules'
 import { judge, RULES } from '../../../shared/record/rules'
@@ -69,6 +70,26 @@ const DRAW: { [K in EntryKind]?: (state: OutageState, draws: Deed['draws'], now:
   'point-in-auto': (state, [a, b]) => ({ tag: of(a % 2 === 0 ? TAGS : [...pointsInHand(state).map(point => point.tag), 'C-1'], a >> 1), seen: of(SEEN_IN_AUTO, b) }),
   'point-proven': (state, [a]) => ({ tag: of([...proofsDue(state).map(point => point.tag), ...proofsDue(state).map(point => point.tag), 'C-1'], a) }),
   'left-in-exception': (_state, [a, b]) => ({ points: [of(TAGS, a), of(TAGS, b)].map(tag => ({ tag, owner: 'Piet Harrow', by: isoTime(BEGAN + 86_400_000), reason: 'parts' })) }),
+  'hands-offered': (state, [a, b]) => { const from = answerable(state)[0]; return { to: of(SIGNERS, a).id, toName: 'Somebody', size: Math.max(1, state.size), open: from === undefined || b % 3 === 0 ? [] : openItems(state, from, []), words: '' } },
+  'hands-withdrawn': (state, [a]) => ({ offer: of([...state.offers.map(item => item.entry), uuidFor('none')], a), reason: 'stays' }),
+  'hands-refused': (state, [a]) => ({ offer: of([...state.offers.map(item => item.entry), uuidFor('none')], a), reason: 'no' }),
+  'hands-taken': (state, [a, b]) => {
+    const offer = of([...openOffers(state), null], a)
+    const from = offer?.from ?? of([...answerable(state), technician.id], b)
+    return { from, offer: offer?.entry ?? null, looked: b % 4 === 0 ? [] : openItems(state, from, []).map(({ what, about }) => ({ what, about })), words: 'ill' }
+  },
+  'voice-decision': (state, [a, b, c], now) => {
+    const figure = marginAt(state, now)
+    const body = { points: [{ tag: of([...proofsDue(state).map(point => point.tag), 'C-1'], b), owner: 'Piet Harrow', by: isoTime(BEGAN + 86_400_000), reason: 'parts' }] }
+    const decision = of([
+      { kind: 'left-in-exception' as const, body },
+      { kind: 'decided-otherwise' as const, body: { caseId: caseOf(b), reason: 'sold at once', clause: '3-501.19' } },
+      { kind: 'margin-accepted' as const, body: { ...figure ? namedMinutes(figure) : { minutes: -3, deadlineMinutes: null }, reason: 'it goes on' } },
+    ], a)
+    return { supervisor: of([supervisor, supervisor, technician], c).id, supervisorName: 'Ines Calloway', givenAt: isoTime(now), words: 'go on', decision }
+  },
+  'voice-confirmed': (state, [a]) => ({ decision: of([...state.voices.map(voice => voice.entry), uuidFor('none')], a) }),
+  'voice-denied': (state, [a]) => ({ decision: of([...state.voices.map(voice => voice.entry), uuidFor('none')], a), reason: 'not said' }),
   'hand-back-closed': () => ({}),
   'defrost-watched': () => ({ circuitId: CIRCUIT, words: 'melted' }),
   'reading-taken': (_state, [a, b]) => reading(caseOf(a), 34 + b % 10, { round: b % 5 }),
@@ -100,10 +121,10 @@ export const DRAWN = Object.keys(DRAW) as PersonKind[]
 /** What somebody would most likely do in each phase. */
 const APT: Partial<Record<Phase, PersonKind[]>> = {
   'plan': ['plan-submitted', 'plan-approved', 'plan-approved', 'margin-accepted', 'plan-returned', 'plan-changed', 'control-lost'],
-  'approved': ['in-hand-begun', 'in-hand-begun', 'plan-changed', 'point-in-hand', 'control-lost', 'called-off'],
+  'approved': ['hands-taken', 'hands-withdrawn', 'hands-refused', 'hands-offered', 'in-hand-begun', 'in-hand-begun', 'plan-changed', 'point-in-hand', 'control-lost', 'called-off'],
   'in-hand': ['went-dark', 'went-dark', 'went-dark', 'plan-changed', 'point-in-hand', 'point-in-hand', 'point-excused', 'point-in-auto', 'reading-taken', 'questioned-settled', 'called-off', 'control-lost'],
-  'dark': ['control-back', 'control-back', 'turned-back', 'point-in-hand', 'point-excused', 'act-signed', 'decided-otherwise'],
-  'hand-back': ['hand-back-closed', 'hand-back-closed', 'left-in-exception', 'point-in-auto', 'point-in-auto', 'point-proven', 'point-proven', 'check-signed', 'control-lost'],
+  'dark': ['voice-confirmed', 'voice-denied', 'voice-decision', 'hands-taken', 'control-back', 'control-back', 'turned-back', 'point-in-hand', 'point-excused', 'act-signed', 'decided-otherwise'],
+  'hand-back': ['hand-back-closed', 'hand-back-closed', 'left-in-exception', 'voice-decision', 'hands-offered', 'point-in-auto', 'point-in-auto', 'point-proven', 'point-proven', 'check-signed', 'control-lost'],
   'settle': ['submitted', 'submitted', 'reading-taken', 'point-in-hand', 'point-in-auto', 'point-proven', 'left-in-exception', 'questioned-settled', 'question-answered', 'control-lost'],
   'submitted': ['review-begun', 'sealed', 'sealed', 'sealed', 'returned', 'question-asked', 'question-answered', 'questioned-settled', 'point-in-hand'],
 }
@@ -123,7 +144,7 @@ function startOf(name: string, writer: RecordWriter): Start {
   return { name, entries: writer.entries, state: writer.state, now: writer.now }
 }
 
-function prepared(phase: 'plan' | 'approved' | 'in-hand' | 'hand-back' | 'settle' | 'submitted', prepare: (writer: RecordWriter) => unknown): RecordWriter {
+function prepared(phase: 'plan' | 'approved' | 'in-hand' | 'dark' | 'hand-back' | 'settle' | 'submitted', prepare: (writer: RecordWriter) => unknown): RecordWriter {
   const writer = storyTo(phase)
   prepare(writer)
   return writer
@@ -159,6 +180,8 @@ export const STARTS: Start[] = [
   ...[1, 2].map(() => startOf('under review', prepared('submitted', writer => writer.sign(supervisor, 'review-begun', {})))),
   startOf('asked', prepared('settle', writer => writer.sign(supervisor, 'question-asked', { about: null, words: 'why?' }))),
   startOf('settled', prepared('settle', settle)),
+  ...[1, 2, 3].map(() => startOf('offered', prepared('approved', writer => writer.sign(technician, 'hands-offered', { to: secondTechnician.id, toName: secondTechnician.name, size: 1, open: [] })))),
+  ...[1, 2].map(() => startOf('decided by voice', prepared('dark', writer => writer.sign(technician, 'voice-decision', { supervisor: supervisor.id, supervisorName: supervisor.name, givenAt: isoTime(writer.now), words: 'go on', decision: { kind: 'decided-otherwise', body: { caseId: caseOf(0), reason: 'sold at once', clause: '3-501.19' } } })))),
 ]
 
 export const walks = fc.record({ start: fc.nat(STARTS.length - 1), deeds: fc.array(deed, { minLength: 1, maxLength: 24 }) })

@@ -12,7 +12,7 @@ import type { PhaseTold } from './store'
 
 const kinds = Object.keys(KINDS) as EntryKind[]
 const HANDS: Role[] = ['technician', 'supervisor']
-const BY_SUPERVISOR: EntryKind[] = ['plan-approved', 'margin-accepted', 'plan-returned', 'left-in-exception', 'decided-otherwise', 'question-asked', 'review-begun', 'returned', 'sealed']
+const BY_SUPERVISOR: EntryKind[] = ['plan-approved', 'margin-accepted', 'plan-returned', 'left-in-exception', 'decided-otherwise', 'question-asked', 'review-begun', 'returned', 'sealed', 'voice-confirmed', 'voice-denied']
 const stories = Object.fromEntries(PHASES_TOLD.map(phase => [phase, storyTo(phase)])) as Record<PhaseTold, RecordWriter>
 
 /** Judges a kind without its body being typed. */
@@ -44,6 +44,8 @@ describe('phases', () => {
     'reading-taken': ['approved', ...RUN], 'pressure-read': ['approved', ...RUN], 'act-signed': ['approved', ...RUN, 'submitted'], 'decided-otherwise': [...RUN, 'submitted'], 'instrument-checked': ['approved', ...RUN],
     'went-dark': ['in-hand'], 'control-lost': ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], 'step-ticked': ['approved', ...RUN], 'turned-back': ['dark'], 'control-back': ['dark'],
     'silence-announced': BEFORE_SEAL, 'note-added': BEFORE_SEAL, 'correction': BEFORE_SEAL, 'questioned-settled': BEFORE_SEAL, 'question-asked': [...RUN, 'submitted'], 'question-answered': BEFORE_SEAL,
+    'hands-offered': ['approved', ...RUN], 'hands-withdrawn': ['approved', ...RUN], 'hands-refused': ['approved', ...RUN], 'hands-taken': ['approved', ...RUN],
+    'voice-decision': [...RUN, 'submitted'], 'voice-confirmed': BEFORE_SEAL, 'voice-denied': BEFORE_SEAL, // the decision in the body is one of those phases
     'submitted': ['settle'], 'review-begun': ['submitted'], 'returned': ['submitted'], 'sealed': ['submitted'],
   }
   it.each(kinds.filter(kind => !isServerKind(kind)).map(kind => [kind] as const))('%s belongs in its phases', (kind) => {
