@@ -114,7 +114,7 @@ describe('the record as a file', () => {
     expect(answer.headers.get('content-type')).toBe('text/csv; charset=utf-8')
     const text = Buffer.from(await answer.arrayBuffer()).toString('utf8')
     expect(text.startsWith('\uFEFFseq,round,case,')).toBe(true)
-    expect(text).toMatch(/,36\.4,F,36\.4,41,F,product,,[^,]+,within its limit,accepted,no,no,'=1\+1\r\n$/)
+    expect(text).toMatch(/,36\.4,F,36\.4,41,F,product,,,[^,]+,within its limit,accepted,no,no,'=1\+1\r\n$/)
   })
 
   it('is JSON that folds to what the server holds', async () => {
