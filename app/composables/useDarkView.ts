@@ -41,6 +41,7 @@ export function useDarkView() {
       holdMinutes: forecast.holdMinutes,
       likelyMinutes: forecast.likelyMinutes,
       fitted: forecast.readings,
+      scattered: forecast.scattered,
       held: forecast.held,
       dueAt: forecast.dueAt,
       judged,

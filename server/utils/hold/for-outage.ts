@@ -18,6 +18,9 @@ export { SHOP_AIR_C } from './evidence'
 /** A curve is drawn this far where it meets no limit, minutes. */
 const LONGEST_CURVE_MINUTES = 600
 const CURVE_STEPS = 40
+/** Readings this far off their fitted course, root mean square over at least so many, K: more than a thermometer and its reader make (0.3 K). */
+const SCATTER_K = 0.42
+const SCATTER_READINGS = 4
 /** A case held on by hand that has come this far up all the same is not held, K. */
 const WARMING_K = 0.5
 
@@ -31,6 +34,8 @@ export interface CaseForecast {
   likelyMinutes: number | null
   /** fitted to this many readings since control was lost; 0: the time constant and the start alone */
   readings: number
+  /** the readings follow no single course: the careful end is then less sure than it should be */
+  scattered: boolean
   /** when it must be read again, Unix ms */
   dueAt: number
   /** likely course from the last reading on, °C */
@@ -70,7 +75,7 @@ function withControl(state: OutageState, known: SnapshotCase, last: Taken | null
   const { minutes, curve } = bareCourse(known, last?.c ?? known.usualC)
   const from = last?.at ?? now
   return {
-    caseId: known.id, toward: 'limit', holdMinutes: minutes, likelyMinutes: minutes, readings: 0, held: null,
+    caseId: known.id, toward: 'limit', holdMinutes: minutes, likelyMinutes: minutes, readings: 0, scattered: false, held: null,
     dueAt: from + dueMinutes(state, known, minutes) * MINUTE,
     curve: curve.map(point => ({ at: from + point.minute * MINUTE, c: point.c })),
   }
@@ -85,13 +90,18 @@ function withoutControl(state: OutageState, known: SnapshotCase, taken: readonly
   const held = isHeldOn(state, known) ? heldCase(state, known, last?.c ?? known.usualC, from) : null
   const holds = held !== null && !isWarming(known, taken, dark, now)
   const forecast = {
-    caseId: known.id, readings: fit.n, held,
+    caseId: known.id, readings: fit.n, scattered: isScattered(fit), held,
     // A case that seems held is still read as if it were not: nobody knows until it has been read.
     dueAt: from + dueMinutes(state, known, atReading?.careful ?? null) * MINUTE,
   }
   if (!holds) return { ...forecast, toward: 'limit', holdMinutes: minutes?.careful ?? null, likelyMinutes: minutes?.likely ?? null, curve: warmingCurve(running, last, from, now, minutes?.likely ?? null) }
   const left = held.minutesToLowMark === null ? null : Math.max(0, held.minutesToLowMark - (now - from) / MINUTE)
   return { ...forecast, toward: 'low-mark', holdMinutes: left, likelyMinutes: left, curve: coolingCurve(known, held, last?.c ?? known.usualC, from) }
+}
+
+/** Whether the readings lie off their course by more than reading them makes. */
+export function isScattered({ n, rmseK }: { n: number, rmseK: number }): boolean {
+  return n >= SCATTER_READINGS && rmseK > SCATTER_K
 }
 
 /** Whether the last two readings since control was lost lie over the one before it by more than a thermometer and its reader make. */
