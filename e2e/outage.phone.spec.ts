@@ -141,6 +141,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await signInAs(auditor, 'auditor@quillfeather.example')
     await auditor.goto(`/records/${id}`)
     await hydrated(auditor)
+    await auditor.getByRole('button', { name: /^Show \d+ more$/ }).click()
     await expect(auditor.getByText('Night covers drawn').first()).toBeVisible()
     const pdf = await auditor.request.get(`/api/outages/${id}/record.pdf`)
     expect(pdf.headers()['content-type']).toContain('application/pdf')
