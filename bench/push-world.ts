@@ -1,8 +1,9 @@
 /** The demo's Quarry Street with many outages and many devices, whose owners sign notes. */
 import { generateKeyPairSync } from 'node:crypto'
 import type { KeyObject } from 'node:crypto'
+import { eq } from 'drizzle-orm'
 import type { entries } from '~~/server/database/schema'
-import { devices } from '~~/server/database/schema'
+import { devices, outages as outagesTable } from '~~/server/database/schema'
 import { equipmentOf } from '~~/server/database/seed/chapters'
 import { seedPeople } from '~~/server/database/seed/people'
 import { seedSites } from '~~/server/database/seed/sites'
@@ -56,7 +57,7 @@ export class Device {
   }
 }
 
-export interface PushWorld { now: number, devices: Device[], outages: string[] }
+export interface PushWorld { now: number, devices: Device[], outages: string[], /** for bare inserts: an outage beside each, with no log to spoil */ beside: Map<string, string> }
 
 /** Seeds an empty database. */
 export async function pushWorld(db: Database, deviceCount: number, outageCount: number): Promise<PushWorld> {
@@ -73,5 +74,12 @@ export async function pushWorld(db: Database, deviceCount: number, outageCount: 
     const { results: [result] } = await appendEntries(db, person, outage, [made[0]!.write(outage, 'outage-opened', { planned: true, lostAt: null, cause: '', snapshot, plan })], now)
     if (result?.status !== 'accepted') throw new Error(JSON.stringify(result))
   }
-  return { now, devices: made, outages }
+  const beside = new Map<string, string>()
+  for (const outage of outages) {
+    const [row] = await db.select().from(outagesTable).where(eq(outagesTable.id, outage))
+    const id = uuidv7(now)
+    beside.set(outage, id)
+    await db.insert(outagesTable).values({ ...row!, id, code: id })
+  }
+  return { now, devices: made, outages, beside }
 }

@@ -3,13 +3,16 @@
 import { mkdtemp, rm } from 'node:fs/promises'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
+import { eq } from 'drizzle-orm'
 import { migrate } from 'drizzle-orm/postgres-js/migrator'
 import { makeDatabase, startPostgres } from '../scripts/lib/postgres.mjs'
-import { closeAll } from '../scripts/lib/processes.mjs'
-import { entries } from '~~/server/database/schema'
+import { closeAll, closeOnSignals } from '../scripts/lib/processes.mjs'
+import { entries, outages } from '~~/server/database/schema'
 import type { Database } from '~~/server/utils/database'
 import { connect } from '~~/server/utils/database'
 import { appendEntries } from '~~/server/utils/record/append'
+import { readEntries, readState } from '~~/server/utils/record/log'
+import { canonicalText } from '~~/shared/record/canonical'
 import { foldLog } from '~~/shared/record/fold'
 import { verifyRecord, webSignatures } from '~~/shared/record/verify'
 import { documentOf, longRecord } from './long-record'
@@ -19,9 +22,9 @@ import { pushWorld } from './push-world'
 
 const CONNECTIONS = [1, 8, 32]
 const OUTAGES = [1, 8, 100]
-const MEASURED = 400
+const MEASURED = 192
 const BATCH = 50
-const ROUNDS = 3
+const ROUNDS = 1
 
 /** Runs one worker a connection; each does its share. @returns entries per second */
 async function perSecond(workers: (() => Promise<number>)[]): Promise<number> {
@@ -35,6 +38,7 @@ const median = (values: number[]) => [...values].sort((a, b) => a - b)[Math.floo
 /** The outages that one of several workers writes in: its own where there are enough, else shared. */
 const shareOf = (outages: string[], index: number, workers: number) => outages.filter((_, place) => outages.length >= workers ? place % workers === index : place === index % outages.length)
 
+closeOnSignals(130)
 const room = await mkdtemp(join(tmpdir(), 'holdover-bench-'))
 try {
   process.env.HOLDOVER_SERVER_KEY = Buffer.alloc(32, 7).toString('base64url')
@@ -54,7 +58,7 @@ try {
       const speeds: { pushed: number, bare: number }[] = []
       for (let round = 0; round < ROUNDS; round++) {
         const signed = workers.map(({ device, outages }) => Array.from({ length: each }, (_, index) => ({ outage: outages[index % outages.length]!, items: device.sign(outages[index % outages.length]!, 1) })))
-        const rows = workers.map(({ device, outages }) => Array.from({ length: each }, (_, index) => device.row(outages[index % outages.length]!)))
+        const rows = workers.map(({ device, outages }) => Array.from({ length: each }, (_, index) => device.row(world.beside.get(outages[index % outages.length]!)!)))
         const pushed = await perSecond(workers.map(({ device }, index) => async () => {
           for (const { outage, items } of signed[index]!) await push(pool.db, device, outage, items)
           return each
@@ -72,10 +76,17 @@ try {
     await pool.client.end()
   }
 
+  /** What is read of an outage must be what its whole log folds to. */
+  async function compare(of: Database, id: string): Promise<void> {
+    const [row] = await of.select().from(outages).where(eq(outages.id, id))
+    const log = await readEntries(of, id)
+    if (log.length !== row!.size || canonicalText(foldLog(id, log)) !== canonicalText(await readState(of, row!))) throw new Error(`The cached fold of ${id} is not that of its log`)
+  }
+
   async function batches(of: Database): Promise<{ pushed: number, bare: number, ratio: number }> {
     const workers = world.devices.map((device, index) => ({ device, outage: world.outages[index]! }))
     const signed = workers.map(({ device, outage }) => [0, 1].map(() => device.sign(outage, BATCH)))
-    const rows = workers.map(({ device, outage }) => Array.from({ length: 15 }, () => device.row(outage)))
+    const rows = workers.map(({ device, outage }) => Array.from({ length: 15 }, () => device.row(world.beside.get(outage)!)))
     const pushed = await perSecond(workers.map(({ device, outage }, index) => async () => {
       for (const items of signed[index]!) await push(of, device, outage, items)
       return 2 * BATCH
@@ -93,6 +104,7 @@ try {
     if (bad) throw new Error(JSON.stringify(bad))
   }
 
+  for (const id of world.outages.slice(0, 8)) await compare(db, id)
   await client.end()
   const record = longRecord(2000)
   const fold = microseconds(() => foldLog(record.id, record.entries), 1, 5) / 1_000

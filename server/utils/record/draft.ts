@@ -22,22 +22,37 @@ import { readFrontier, readState } from './log'
 import type { ServerSigner } from './server-signer'
 
 /** An outage being written under its row's lock: state, frontier and newest checkpoint go along with each entry that is added. */
-export interface Draft { db: Queries, state: OutageState, frontier: Frontier, checkpoint: Checkpoint | null, signer: ServerSigner, now: number }
+export interface Draft {
+  db: Queries
+  state: OutageState
+  frontier: Frontier
+  checkpoint: Checkpoint | null
+  signer: ServerSigner
+  now: number
+  /** rows of added entries, stored together by `saveProjection` */
+  rows: (typeof entries.$inferInsert)[]
+  /** what the cached fold in the row says; null: it is to be written whatever has changed */
+  cached: { size: number, phase: OutageState['phase'], planSubmitted: boolean } | null
+}
+
+/** The cached fold, which is long, is written once it lacks this many entries, or a list would show another thing. */
+const ENTRIES_BEHIND = 16
 
 /** A draft of an outage as its locked row has it; null for one that is still to be opened. */
 export async function draftOf(db: Queries, outageId: string, row: OutageRow | null, signer: ServerSigner, now: number): Promise<Draft> {
-  if (!row) return { db, state: emptyState(outageId), frontier: EMPTY_FRONTIER, checkpoint: null, signer, now }
-  return { db, state: await readState(db, row), frontier: await readFrontier(db, row), checkpoint: row.checkpoint, signer, now }
+  if (!row) return { db, state: emptyState(outageId), frontier: EMPTY_FRONTIER, checkpoint: null, signer, now, rows: [], cached: null }
+  const cached = row.foldVersion === FOLD_VERSION && row.state.size <= row.size ? { size: row.state.size, phase: row.state.phase, planSubmitted: row.state.planSubmitted !== null } : null
+  return { db, state: await readState(db, row), frontier: await readFrontier(db, row), checkpoint: row.checkpoint, signer, now, rows: [], cached }
 }
 
-/** Adds a signed entry to the log and to the state. */
+/** Adds a signed entry to the log and to the state; its row is stored with the projection, in the same transaction. */
 export async function addEntry(draft: Draft, entry: AnyEntry, signature: string, standing: Standing, why: string[]): Promise<StoredEntry> {
   await nameSigner(draft, entry)
   const stored: StoredEntry = { entry, signature, seq: draft.state.size + 1, receivedAt: isoTime(draft.now), standing, why }
   const signed = canonicalText(entry)
   draft.frontier = addLeaf(draft.frontier, storedLeaf(stored))
   draft.checkpoint = signCheckpoint(draft, stored)
-  await draft.db.insert(entries).values({
+  draft.rows.push({
     outageId: entry.outage, seq: stored.seq, id: entry.id, kind: entry.kind,
     personId: entry.by === SERVER ? null : entry.by, deviceId: entry.device, n: entry.n,
     hash: sha256Hex(signed), signed, signature, receivedAt: new Date(draft.now), standing, why, checkpoint: draft.checkpoint,
@@ -87,16 +102,18 @@ function namesDevice(entry: AnyEntry, device: string): boolean {
   return entry.kind === 'signer-named' && entry.body.device === device
 }
 
-/** Writes the projection that lists and screens read. */
+/** Stores the added entries, and writes the projection that lists and screens read. */
 export async function saveProjection(draft: Draft): Promise<void> {
-  const { state } = draft
+  const { state, rows, cached } = draft
+  if (rows.length > 0) await draft.db.insert(entries).values(rows)
+  draft.rows = []
+  const isNear = cached !== null && state.size - cached.size < ENTRIES_BEHIND && cached.phase === state.phase && cached.planSubmitted === (state.planSubmitted !== null)
   const dark = state.darks.at(-1) // the present time without control, or the last one
   const ended = state.sealed?.mark.at ?? state.calledOff?.mark.at ?? null
   await draft.db.update(outages).set({
     phase: state.phase,
     size: state.size,
-    state,
-    foldVersion: FOLD_VERSION,
+    ...(isNear ? {} : { state, foldVersion: FOLD_VERSION }),
     frontier: draft.frontier,
     checkpoint: draft.checkpoint,
     workKind: state.plan.workKind.name,

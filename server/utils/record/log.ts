@@ -1,6 +1,6 @@
 import { and, asc, eq, gt, isNotNull } from 'drizzle-orm'
 import type { StoredEntry } from '../../../shared/record/entry'
-import { foldLog } from '../../../shared/record/fold'
+import { applyStored, foldLog } from '../../../shared/record/fold'
 import type { Checkpoint } from '../../../shared/record/checkpoint'
 import type { Frontier } from '../../../shared/record/merkle'
 import { frontierOf } from '../../../shared/record/merkle'
@@ -24,9 +24,14 @@ export async function readEntries(db: Queries, outageId: string, after = 0, limi
   return rows.map(storedEntry)
 }
 
-/** The folded state of a row: the cached one where its meaning is still the same, else folded anew. */
+/**
+ * The folded state of a row: the cached one where its meaning is still the same, gone on with the entries that
+ * came after it was written, else folded anew.
+ */
 export async function readState(db: Queries, row: OutageRow): Promise<OutageState> {
-  return row.foldVersion === FOLD_VERSION && row.state.size === row.size ? row.state : foldLog(row.id, await readEntries(db, row.id))
+  if (row.foldVersion !== FOLD_VERSION || row.state.size > row.size) return foldLog(row.id, await readEntries(db, row.id))
+  if (row.state.size < row.size) for (const stored of await readEntries(db, row.id, row.state.size)) applyStored(row.state, stored)
+  return row.state
 }
 
 /** The frontier of a row's log: the cached one where it is of the same size, else worked out from the entries. */

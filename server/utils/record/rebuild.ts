@@ -24,7 +24,7 @@ export async function rebuildProjections(db: Database): Promise<{ count: number,
       const log = await readEntries(tx, row.id)
       const state = foldLog(row.id, log)
       if (row.size !== state.size || row.phase !== state.phase) differed.push(row.code)
-      await saveProjection({ db: tx, state, frontier: frontierOf(log), checkpoint: (await readCheckpoints(tx, row.id)).at(-1) ?? null, signer, now: row.updatedAt.getTime() })
+      await saveProjection({ db: tx, state, frontier: frontierOf(log), checkpoint: (await readCheckpoints(tx, row.id)).at(-1) ?? null, signer, now: row.updatedAt.getTime(), rows: [], cached: null })
     })
   }
 }
