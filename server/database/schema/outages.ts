@@ -20,7 +20,7 @@ export const outages = pgTable('outages', {
   workKind: text().notNull(),
   phase: text({ enum: PHASES }).notNull(),
   size: integer().notNull().default(0), // entries so far; the last seq
-  state: jsonb().$type<OutageState>().notNull(), // cached fold
+  state: jsonb().$type<OutageState>().notNull(), // cached fold of the first entries; read it by readState, which goes on to the last
   foldVersion: integer().notNull(),
   frontier: jsonb().$type<Frontier>(), // of the Merkle tree over the log; null: to be worked out from the log
   checkpoint: jsonb().$type<Checkpoint>(), // the newest; null in a log that has not grown since there are any
