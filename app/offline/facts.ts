@@ -1,3 +1,4 @@
+import type { Role } from '~~/shared/schemas/people'
 import type { KeptPerson } from './database'
 import { openKept } from './database'
 
@@ -7,6 +8,8 @@ interface Facts {
   person: KeptPerson
   /** this device's clock less the server's when it was last measured, ms */
   skew: number
+  /** technicians and supervisors of the site of each outage, by the outage's id */
+  colleagues: Record<string, { id: string, name: string, role: Role }[]>
   /** the tag of the kept equipment, and whose it is */
   equipmentTag: { person: string, tag: string, keptAt: number }
 }

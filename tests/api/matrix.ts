@@ -106,6 +106,7 @@ export const MATRIX: Row[] = [
   // Bytes that are no picture are 422 to those who may send one.
   { route: 'PUT /api/outages/[id]/files/[sha256]', expected: [401, 422, 404, 403, 422, 403], path: ids => `/api/outages/${ids.outage}/files/${HASH}`, body: () => ({}), unknown: `/api/outages/${NOTHING}/files/${HASH}` },
   { route: 'GET /api/outages/[id]/lessons', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/lessons`, unknown: `/api/outages/${NOTHING}/lessons` },
+  { route: 'GET /api/outages/[id]/people', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/people`, unknown: `/api/outages/${NOTHING}/people` },
   { route: 'POST /api/outages/[id]/lessons', expected: [401, 403, 404, 403, 422, 422], path: ids => `/api/outages/${ids.outage}/lessons`, body: () => ({ cases: [], steps: [] }), unknown: `/api/outages/${NOTHING}/lessons` },
   ...['pdf', 'csv', 'json'].map((kind): Row => ({ route: `GET /api/outages/[id]/record.${kind}`, expected: SITE(200), path: ids => `/api/outages/${ids.outage}/record.${kind}`, unknown: `/api/outages/${NOTHING}/record.${kind}` })),
 ]
