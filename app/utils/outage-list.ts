@@ -28,9 +28,9 @@ export function byUrgency(items: readonly OutageItem[]): OutageItem[] {
 
 const compare = (one: string, other: string) => one < other ? -1 : one > other ? 1 : 0
 
-/** Whether a supervisor is asked for something: a plan to approve or a record to countersign. */
-export function waitsForSupervisor({ phase, planSubmitted }: OutageItem): boolean {
-  return phase === 'submitted' || (phase === 'plan' && planSubmitted)
+/** Whether a supervisor is asked for something: a plan to approve, a record to countersign, or a decision by voice to sign. */
+export function waitsForSupervisor({ phase, planSubmitted, voices }: OutageItem): boolean {
+  return voices > 0 || phase === 'submitted' || (phase === 'plan' && planSubmitted)
 }
 
 /** The work, and whether nobody planned it. An unplanned outage that names no work is just that. */

@@ -16,6 +16,8 @@ export interface OutageItem {
   darkAt: string | null
   endedAt: string | null
   planSubmitted: boolean
+  /** decisions given by voice in the reader's name, not signed yet */
+  voices: number
 }
 
 /** A page of outages, newest first; `next` goes on from here, null at the end. */

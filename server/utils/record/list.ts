@@ -20,6 +20,7 @@ export async function listOutages(person: Person, filter: OutageFilter): Promise
       id: outages.id, code: outages.code, phase: outages.phase, planned: outages.planned, workKind: outages.workKind, pointsInHand: outages.pointsInHand,
       size: outages.size, openedAt: outages.openedAt, startsAt: outages.startsAt, darkAt: outages.darkAt, endedAt: outages.endedAt,
       planSubmitted: sql<boolean>`${outages.state} -> 'planSubmitted' <> 'null'::jsonb`,
+      voices: sql<number>`(select count(*)::int from jsonb_array_elements(coalesce(${outages.state} -> 'voices', '[]'::jsonb)) voice where voice -> 'answer' = 'null'::jsonb and voice ->> 'supervisor' = ${person.id})`,
     },
     site: { id: sites.id, code: sites.code, name: sites.name, timeZone: sites.timeZone },
     controller: { id: controllers.id, name: controllers.name },

@@ -8,7 +8,7 @@ const item = (more: Partial<OutageItem>): OutageItem => ({
   id: 'b', code: 'Q027-0041', phase: 'plan', planned: true,
   site: { id: 's', code: 'Q027', name: 'Quarry Street', timeZone: 'America/Chicago' },
   controller: { id: 'c', name: 'Rack A' },
-  workKind: 'Software update', pointsInHand: 0, size: 3, openedAt: '2026-03-01T00:00:00.000Z', startsAt: null, darkAt: null, endedAt: null, planSubmitted: false,
+  workKind: 'Software update', pointsInHand: 0, size: 3, openedAt: '2026-03-01T00:00:00.000Z', startsAt: null, darkAt: null, endedAt: null, planSubmitted: false, voices: 0,
   ...more,
 })
 
@@ -48,6 +48,7 @@ describe('waitsForSupervisor', () => {
   it('holds of plans sent for approval and of submitted records', () => {
     expect(waitsForSupervisor(item({ planSubmitted: true }))).toBe(true)
     expect(waitsForSupervisor(item({ planSubmitted: false }))).toBe(false)
+    expect(waitsForSupervisor(item({ voices: 1 }))).toBe(true)
     expect(waitsForSupervisor(item({ phase: 'submitted' }))).toBe(true)
     expect(waitsForSupervisor(item({ phase: 'dark', planSubmitted: true }))).toBe(false)
   })
