@@ -10,6 +10,7 @@ import type { Frontier } from '../../../shared/record/merkle'
 import { addLeaf, EMPTY_FRONTIER, frontierRoot, storedLeaf } from '../../../shared/record/merkle'
 import { pointsInHand } from '../../../shared/record/select'
 import type { OutageState } from '../../../shared/record/state'
+import { openVoices } from '../../../shared/record/voice'
 import { emptyState, FOLD_VERSION } from '../../../shared/record/state'
 import { canonicalText, sha256Hex } from '../../../shared/record/canonical'
 import { uuidv7 } from '../../../shared/record/uuid'
@@ -32,7 +33,7 @@ export interface Draft {
   /** rows of added entries, stored together by `saveProjection` */
   rows: (typeof entries.$inferInsert)[]
   /** what the cached fold in the row says; null: it is to be written whatever has changed */
-  cached: { size: number, phase: OutageState['phase'], planSubmitted: boolean } | null
+  cached: { size: number, phase: OutageState['phase'], planSubmitted: boolean, voices: string } | null
 }
 
 /** The cached fold, which is long, is written once it lacks this many entries, or a list would show another thing. */
@@ -41,7 +42,7 @@ const ENTRIES_BEHIND = 16
 /** A draft of an outage as its locked row has it; null for one that is still to be opened. */
 export async function draftOf(db: Queries, outageId: string, row: OutageRow | null, signer: ServerSigner, now: number): Promise<Draft> {
   if (!row) return { db, state: emptyState(outageId), frontier: EMPTY_FRONTIER, checkpoint: null, signer, now, rows: [], cached: null }
-  const cached = row.foldVersion === FOLD_VERSION && row.state.size <= row.size ? { size: row.state.size, phase: row.state.phase, planSubmitted: row.state.planSubmitted !== null } : null
+  const cached = row.foldVersion === FOLD_VERSION && row.state.size <= row.size ? { size: row.state.size, phase: row.state.phase, planSubmitted: row.state.planSubmitted !== null, voices: openVoiceIds(row.state) } : null
   return { db, state: await readState(db, row), frontier: await readFrontier(db, row), checkpoint: row.checkpoint, signer, now, rows: [], cached }
 }
 
@@ -107,7 +108,7 @@ export async function saveProjection(draft: Draft): Promise<void> {
   const { state, rows, cached } = draft
   if (rows.length > 0) await draft.db.insert(entries).values(rows)
   draft.rows = []
-  const isNear = cached !== null && state.size - cached.size < ENTRIES_BEHIND && cached.phase === state.phase && cached.planSubmitted === (state.planSubmitted !== null)
+  const isNear = cached !== null && state.size - cached.size < ENTRIES_BEHIND && cached.phase === state.phase && cached.planSubmitted === (state.planSubmitted !== null) && cached.voices === openVoiceIds(state)
   const dark = state.darks.at(-1) // the present time without control, or the last one
   const ended = state.sealed?.mark.at ?? state.calledOff?.mark.at ?? null
   await draft.db.update(outages).set({
@@ -123,4 +124,9 @@ export async function saveProjection(draft: Draft): Promise<void> {
     endedAt: ended === null ? null : new Date(ended),
     updatedAt: new Date(draft.now),
   }).where(eq(outages.id, state.id))
+}
+
+/** Decisions by voice that wait for a signature: lists read them off the cached fold. */
+function openVoiceIds(state: OutageState): string {
+  return openVoices(state).map(voice => voice.entry).join()
 }
