@@ -1,6 +1,9 @@
 /** What mutants of the engine are tried against, as one file, so that the engine is loaded once a mutant: quick tests first, random logs last. */
+import './advisories.test'
 import './check-cases.test'
+import './course.test'
 import './judging.test'
+import './near.test'
 import './units.test'
 import './parse.test'
 import './words.test'
