@@ -1,6 +1,6 @@
 /** The course of a verdict over time. Worked by hand from the rules named beside each; no other published source. */
 import { describe, expect, it } from 'vitest'
-import { assess, verdictCourse } from '../../../server/utils/holding'
+import { assess, rulebooks, verdictCourse } from '../../../server/utils/holding'
 import { at, log } from './log'
 
 const MINUTE = 60_000
@@ -36,5 +36,19 @@ describe('the course of a verdict', () => {
   it('ends in what the engine says now, also where that is news', () => {
     const input = log('us-food-code-2022/tcs', [[0, 40], [10, 44]], { now: 10 })
     expect(verdictCourse(input).at(-1)).toEqual({ verdict: assess(input).verdict, from: Date.parse(at(10)), to: Date.parse(at(10)) })
+  })
+
+  it('is a single moment where control was lost just now and nothing is read', () => {
+    expect(course(log('us-food-code-2022/tcs', [], { now: 0 }))).toEqual([['unknown', 0, 0]])
+  })
+
+  it('counts from the loss of control where a rulebook does, in every row', () => {
+    for (const { id, unit, classes } of rulebooks) {
+      for (const foodClass of classes) {
+        const input = log(`${id}/${foodClass.id}`, [[30, unit === 'F' ? 43 : 6.5]], { now: 270 })
+        expect(verdictCourse(input).at(-1)!.verdict, `${id}/${foodClass.id}`).toBe(assess(input).verdict)
+        expect(verdictCourse(input).at(-1)!.to).toBe(Date.parse(at(270)))
+      }
+    }
   })
 })
