@@ -16,5 +16,5 @@ export async function axe(page: Page, { enhanced = false }: { enhanced?: boolean
     `${id}: ${help}`,
     ...nodes.slice(0, 8).map(node => `    ${node.target.join(' ')}\n      ${(node.failureSummary ?? '').replaceAll('\n', '\n      ')}`),
   ].join('\n'))
-  expect(list, `accessibility of ${page.url()}:\n${list.join('\n')}`).toEqual([])
+  expect.soft(list, `accessibility of ${page.url()}:\n${list.join('\n')}`).toEqual([])
 }

@@ -1,14 +1,4 @@
-/** The little that tests ask of reference libraries that bring no usable types of their own. */
-declare module 'odex' {
-  export class Solver {
-    constructor(dimension: number)
-    absoluteTolerance: number
-    relativeTolerance: number
-    maxSteps: number
-    solve(slopes: (x: number, y: number[]) => number[], from: number, start: number[], to: number): { y: number[], outcome: number }
-  }
-}
-
+/** The little that tests ask of a reference library that brings no usable types of its own. */
 declare module 'jstat' {
   const jStat: {
     beta: { cdf: (x: number, alpha: number, beta: number) => number }
