@@ -62,6 +62,6 @@ test('the screens of the others', async ({ page, open }) => {
   const admin = await open('desk')
   await signInAs(admin, people.administrator)
   const sites = await (await admin.request.get('/api/sites')).json() as { id: string }[]
-  const technician = (await (await admin.request.get('/api/people')).json() as { id: string, email: string }[]).find(person => person.email === people.technician)!
+  const technician = (await (await admin.request.get('/api/people')).json() as { items: { id: string, email: string }[] }).items.find(person => person.email === people.technician)!
   for (const path of ['/', '/people', '/people/new', `/people/${technician.id}`, '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/history`, '/people/history', '/work-kinds/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
 })

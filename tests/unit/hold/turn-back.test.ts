@@ -4,7 +4,7 @@ import type { CaseForecast } from '~~/server/utils/hold/for-outage'
 import { DAIRY, FISH, storyTo } from '../record/store'
 
 const MINUTE = 60_000
-const forecast = (caseId: string, holdMinutes: number | null, toward: CaseForecast['toward'] = 'limit'): CaseForecast => ({ caseId, toward, holdMinutes, likelyMinutes: holdMinutes, readings: 2, dueAt: 0, curve: [], held: null })
+const forecast = (caseId: string, holdMinutes: number | null, toward: CaseForecast['toward'] = 'limit'): CaseForecast => ({ caseId, toward, holdMinutes, likelyMinutes: holdMinutes, scattered: false, readings: 2, dueAt: 0, curve: [], held: null })
 
 /** The way back takes 15 minutes, 19 times in 20. */
 describe('latest turn-back', () => {
