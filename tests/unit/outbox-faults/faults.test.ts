@@ -1,4 +1,4 @@
-// Promises of this project's own (docs/decisions/0005-offline.md); fault injection from a seed: common practice, no source.
+// Promises of this project's own (docs/decisions/0007-offline.md); fault injection from a seed: common practice, no source.
 import { describe, expect, it } from 'vitest'
 import { BROKEN } from './broken'
 import { history } from './history'
