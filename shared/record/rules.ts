@@ -1,18 +1,18 @@
 import type { Role } from '../schemas/people'
-import { handWords, isAlarm, isHandActive, isHandAtRest } from '../schemas/point-kinds'
-import type { HandPosition } from '../schemas/point-kinds'
 import { BACK_CHECKS, checkById } from './checks'
 import type { AnyEntry, Entry } from './entry'
 import { correctedTime, happenedAt } from './entry'
 import { isAccepted, marginFaults, namedMinutes, acceptanceWanted } from './margin'
 import type { MarginFigure } from './margin'
-import { answerable, openOffers, unlooked } from './hands'
+import { offerUnfit, takenUnfit } from './hand-over-rules'
+import { openOffers } from './hands'
 import { callOffGate, goDarkGate, handBackGate, planGate, returnPointsGate, sealGate, submitGate } from './gates'
 import { readsIcePoint } from './instruments'
 import type { EntryKind } from './kinds'
 import { asNewest } from './newest'
 import { PHASE_WORDS, PHASES } from './phases'
 import type { Phase } from './phases'
+import { exceptionUnfit, knownPoint, pointInHandUnfit, stillHeld } from './point-rules'
 import { nameOf, turningBack } from './select'
 import { openVoices, spokenEntry } from './voice'
 import type { OutageState } from './state'
@@ -51,12 +51,10 @@ const CHANGING: readonly Phase[] = ['approved', ...RUN]
 const BEFORE_SEAL = PHASES.filter(phase => phase !== 'sealed')
 /** A time given as past may lie this far ahead of the entry's own, ms. */
 const AHEAD_MS = 60_000
-const DEFAULT_MIN_OFF = 5
 
 const own = (state: OutageState, actor: Actor) => state.authors.includes(actor.id)
 const serverOnly = { roles: NOBODY, phases: PHASES }
 const ahead = (entry: AnyEntry, time: string) => correctedTime(entry, time) > happenedAt(entry) + AHEAD_MS ? ['the time lies in the future'] : []
-const knownPoint = (state: OutageState, tag: string) => state.points[tag] ? [] : [`there is no point ${tag}`]
 const knownCase = (state: OutageState, id: string) => state.cases[id] ? [] : ['there is no such case in this outage']
 
 /** Who may sign what, in which phase, and what it must fit. */
@@ -165,29 +163,6 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   },
 }
 
-/** An offer is made by somebody who answers for something here, to another, once at a time. */
-function offerUnfit(state: OutageState, { by, body }: Entry<'hands-offered'>): string[] {
-  const missing = answerable(state).includes(by) ? [] : ['nothing here is in your hands']
-  if (body.to === by) missing.push('work passes between two people')
-  if (openOffers(state).some(offer => offer.from === by)) missing.push('an offer of yours is open already')
-  return missing
-}
-
-/** The incoming one signs what was offered to them, having looked at each open thing. Without an offer a supervisor says why. */
-function takenUnfit(state: OutageState, { by, body }: Entry<'hands-taken'>): string[] {
-  const missing = answerable(state).includes(body.from) ? [] : [`nothing here is in the hands of ${nameOf(state, body.from)}`]
-  if (body.from === by) missing.push('it is in your hands already')
-  if (body.offer === null) {
-    if (body.words === '') missing.push('say why it is taken over without an offer')
-  } else {
-    const offer = openOffers(state).find(item => item.entry === body.offer)
-    if (!offer) missing.push('no such offer is open')
-    else if (offer.to !== by) missing.push(`it was offered to ${offer.toName}`)
-    else if (offer.from !== body.from) missing.push(`it was offered by ${nameOf(state, offer.from)}`)
-  }
-  return [...missing, ...unlooked(state, body.from, body.looked)]
-}
-
 /** A decision by voice fits where the supervisor's own entry would have: the same phases, the same rules. */
 function spokenUnfit(state: OutageState, entry: Entry<'voice-decision'>, around: Surroundings): string[] {
   const { supervisor, supervisorName, givenAt } = entry.body
@@ -243,51 +218,6 @@ function actUnfit(state: OutageState, entry: Entry<'act-signed'>): string[] {
 
 function waitsForApproval(state: OutageState): string[] {
   return state.planSubmitted ? [] : ['the plan was not sent for approval']
-}
-
-function stillHeld(state: OutageState, tag: string): boolean {
-  const point = state.points[tag]
-  return point !== undefined && point.status === 'hand' && point.exception === null
-}
-
-/** An exception names what is left in hand or unproven (I8); given beforehand it would cover what nobody has looked at. */
-function exceptionUnfit(state: OutageState, tag: string): string[] {
-  const point = state.points[tag]
-  if (!point) return knownPoint(state, tag)
-  const open = point.status === 'hand' || point.status === 'returned' || point.tried !== null
-  return open ? [] : [`${tag} is neither in hand nor waiting for its proof`]
-}
-
-/** What a compressor, a heater or a thing that keeps people safe may never do in hand (I2, I3, I9). */
-function neverUnfit(state: OutageState, tag: string, hand: HandPosition): string[] {
-  const { kind } = state.points[tag]!
-  if (isHandActive(hand) && (kind === 'defrost-heater' || kind === 'hot-gas-valve')) return ['a defrost heater or hot-gas valve is never in hand on (I2)']
-  if (isHandAtRest(hand) && (isAlarm(kind) || kind === 'machinery-room-ventilation' || kind === 'egress-light')) return ['it keeps people safe and is never off (I3)']
-  const guards = state.snapshot.points.find(item => item.tag === tag)?.guards ?? []
-  return isHandActive(hand) && kind === 'compressor' && guards.length === 0 ? ['no guard of this compressor works in hand (I9)'] : []
-}
-
-/** Order, minimum off time, and a reason for leaving the plan. */
-function pointInHandUnfit(state: OutageState, entry: Entry<'point-in-hand'>): string[] {
-  const { tag, hand, reason } = entry.body
-  const point = state.points[tag]
-  if (!point) return knownPoint(state, tag)
-  const missing = neverUnfit(state, tag, hand)
-  const planned = state.plan.points.find(item => item.tag === tag)
-  if (reason === '' && (!planned || handWords(planned.hand) !== handWords(hand))) missing.push(planned ? `the plan says ${handWords(planned.hand)}: give a reason` : 'the plan does not touch this point: give a reason')
-  const minOff = state.snapshot.points.find(item => item.tag === tag)?.minOffMin ?? DEFAULT_MIN_OFF
-  if (point.kind === 'compressor' && isHandActive(hand) && point.stoppedAt !== null && happenedAt(entry) - point.stoppedAt < minOff * 60_000) missing.push(`stopped less than ${minOff} minutes ago (I5)`)
-  if (state.phase === 'in-hand' || state.phase === 'dark') {
-    const before = (state.plan.order.find(line => line.tag === tag)?.after ?? []).filter(other => isWaiting(state, other))
-    if (before.length > 0) missing.push(`comes after ${before.join(', ')}`)
-  }
-  return missing
-}
-
-/** A point of the plan that is neither in hand nor excused. */
-export function isWaiting(state: OutageState, tag: string): boolean {
-  const point = state.points[tag]
-  return point !== undefined && (point.status === 'auto' || (point.tried !== null && point.status !== 'excused'))
 }
 
 export type Judgement
