@@ -1,9 +1,7 @@
 /** What is stored in °C and psig, as people at a site read and write it. */
 import type { PressureUnit, TemperatureUnit } from '~~/shared/schemas/equipment'
 import { numberWords } from '~~/shared/charts/words'
-
-const PER_PSI: Record<PressureUnit, number> = { psig: 1, kPa: 6.894757, bar: 0.06894757 }
-const PRESSURE_DECIMALS: Record<PressureUnit, number> = { psig: 1, kPa: 0, bar: 2 }
+import { fromPsi, toPsi } from '~~/shared/utils/pressure'
 
 export interface SiteUnits { temperatureUnit: TemperatureUnit, pressureUnit: PressureUnit }
 /** `temperature`: stored in °C; `difference`: in kelvin; `pressure`: in psig, a gauge pressure. */
@@ -19,7 +17,7 @@ export function toShown(stored: number, quantity: Quantity, units: SiteUnits): n
   switch (quantity) {
     case 'temperature': return rounded(fahrenheit ? stored * 1.8 + 32 : stored, 1)
     case 'difference': return rounded(fahrenheit ? stored * 1.8 : stored, 1)
-    case 'pressure': return rounded(stored * PER_PSI[units.pressureUnit], PRESSURE_DECIMALS[units.pressureUnit])
+    case 'pressure': return fromPsi(stored, units.pressureUnit)
   }
 }
 
@@ -29,16 +27,15 @@ export function toStored(shown: number, quantity: Quantity, units: SiteUnits): n
   switch (quantity) {
     case 'temperature': return rounded(fahrenheit ? (shown - 32) / 1.8 : shown, 4)
     case 'difference': return rounded(fahrenheit ? shown / 1.8 : shown, 4)
-    case 'pressure': return rounded(shown / PER_PSI[units.pressureUnit], 4)
+    case 'pressure': return rounded(toPsi(shown, units.pressureUnit), 4)
   }
 }
 
 /** '44 psig', '35.2 °F'; a dash for nothing. */
 export function quantityWords(stored: number | null, quantity: Quantity, units: SiteUnits): string {
   if (stored === null) return '–'
-  const decimals = quantity === 'pressure' ? PRESSURE_DECIMALS[units.pressureUnit] : 1
-  const text = numberWords(toShown(stored, quantity, units), decimals)
-  return `${quantity === 'pressure' ? text.replace(/\.0$/, '') : text} ${unitOf(quantity, units)}`
+  const shown = toShown(stored, quantity, units)
+  return `${quantity === 'pressure' ? shown : numberWords(shown, 1)} ${unitOf(quantity, units)}`
 }
 
 const rounded = (value: number, decimals: number) => Number(value.toFixed(decimals))

@@ -4,6 +4,7 @@ import type { PointLine } from '../../shared/record/record-lines'
 import { celsius, groupName, inUnit, isOver, judgedReadings, nameOf } from '../../shared/record/select'
 import { fullStampWords } from '../../shared/record/summary-words'
 import { handWords } from '../../shared/schemas/point-kinds'
+import { pressureFigure, pressureUnitWords } from '../../shared/utils/pressure'
 import type { PaperMark } from './marks'
 import { drawMark } from './marks'
 import type { RecordPaper } from './record'
@@ -62,8 +63,9 @@ export async function drawRounds(sheet: Sheet, paper: RecordPaper): Promise<void
   await drawMatrix(sheet, paper)
   if (state.pressures.length > 0) {
     sheet.heading('Pressures')
-    await drawTable(sheet, [{ label: 'Round', width: 38, align: 'right' }, { label: 'Time', width: 50 }, { label: 'Suction group', width: 1 }, { label: 'Suction, psig', width: 76, align: 'right' }, { label: 'Discharge, psig', width: 84, align: 'right' }, { label: 'By', width: 90 }],
-      state.pressures.map(reading => [String(reading.round), clock(reading.at), groupName(state, reading.suctionGroupId), numberWords(reading.suctionPsig), reading.dischargePsig === null ? '–' : numberWords(reading.dischargePsig), nameOf(state, reading.by)]))
+    const unit = state.snapshot.site.pressureUnit
+    await drawTable(sheet, [{ label: 'Round', width: 38, align: 'right' }, { label: 'Time', width: 50 }, { label: 'Suction group', width: 1 }, { label: `Suction, ${pressureUnitWords(unit)}`, width: 96, align: 'right' }, { label: `Discharge, ${pressureUnitWords(unit)}`, width: 104, align: 'right' }, { label: 'By', width: 90 }],
+      state.pressures.map(reading => [String(reading.round), clock(reading.at), groupName(state, reading.suctionGroupId), pressureFigure(reading.suctionPsig, unit), reading.dischargePsig === null ? '–' : pressureFigure(reading.dischargePsig, unit), nameOf(state, reading.by)]))
   }
 }
 

@@ -1,4 +1,5 @@
 import { isHandActive } from '../schemas/point-kinds'
+import { pressureDifferenceWords, pressureWords } from '../utils/pressure'
 import { openActFaults } from './act-words'
 import { BACK_CHECKS, BEFORE_CHECKS } from './checks'
 import { acceptanceWanted, measuresWanted } from './margin'
@@ -52,6 +53,7 @@ export function planGate(state: OutageState, results: GateResults): string[] {
 export function steadyFault(state: OutageState, groupId: string, at: number): string | null {
   const group = state.snapshot.suctionGroups.find(item => item.id === groupId)!
   const name = groupName(state, groupId)
+  const unit = state.snapshot.site.pressureUnit
   const since = Math.max(...state.snapshot.points
     .filter(point => point.suctionGroupId === groupId && point.kind === 'compressor')
     .map(point => state.points[point.tag]?.mark?.at ?? 0), 0)
@@ -59,8 +61,8 @@ export function steadyFault(state: OutageState, groupId: string, at: number): st
   const last = readings.at(-1)
   if (!last) return `${name}: suction not read since its compressors were put in hand`
   if (at - last.at > FRESH_MS) return `${name}: suction last read more than ${FRESH_MS / 60_000} minutes ago`
-  if (group.lowCutOutPsig !== null && last.suctionPsig < group.lowCutOutPsig + ABOVE_CUT_OUT_PSI) return `${name}: suction ${last.suctionPsig} psig is within ${ABOVE_CUT_OUT_PSI} psi of the low cut-out`
-  if (group.targetSuctionPsig !== null && last.suctionPsig > group.targetSuctionPsig + ABOVE_TARGET_PSI) return `${name}: suction ${last.suctionPsig} psig is more than ${ABOVE_TARGET_PSI} psi above its target`
+  if (group.lowCutOutPsig !== null && last.suctionPsig < group.lowCutOutPsig + ABOVE_CUT_OUT_PSI) return `${name}: suction ${pressureWords(last.suctionPsig, unit)} is within ${pressureDifferenceWords(ABOVE_CUT_OUT_PSI, unit)} of the low cut-out`
+  if (group.targetSuctionPsig !== null && last.suctionPsig > group.targetSuctionPsig + ABOVE_TARGET_PSI) return `${name}: suction ${pressureWords(last.suctionPsig, unit)} is more than ${pressureDifferenceWords(ABOVE_TARGET_PSI, unit)} above its target`
   const steadySince = steadyStart(readings)
   if (last.at - steadySince < STEADY_MS) return `${name}: suction steady for ${Math.floor((last.at - steadySince) / 60_000)} of ${STEADY_MS / 60_000} minutes`
   return null

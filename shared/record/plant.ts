@@ -3,6 +3,7 @@ import { isHandActive } from '../schemas/point-kinds'
 import type { PointKind } from '../schemas/point-kinds'
 import { ABOVE_CUT_OUT_PSI } from './gates'
 import type { PlantFault } from './kinds/server'
+import { pressureDifferenceWords, pressureWords } from '../utils/pressure'
 import { groupName, pointName } from './select'
 import type { OutageState, PressureState } from './state'
 import type { SnapshotPoint } from './snapshot'
@@ -44,14 +45,15 @@ type Group = OutageState['snapshot']['suctionGroups'][number]
 
 function suctionWarnings(state: OutageState, group: Group, { suctionPsig }: PressureState): PlantWarning[] {
   const name = groupName(state, group.id)
+  const unit = state.snapshot.site.pressureUnit
   const on = heldOn(state, 'compressor', point => point.suctionGroupId === group.id)
   const act = dropWords(state, on)
   if (group.lowCutOutPsig !== null && suctionPsig < group.lowCutOutPsig + ABOVE_CUT_OUT_PSI) {
-    return [{ fault: 'suction-near-cut-out', about: group.id, words: `${name}: suction ${suctionPsig} psig is within ${ABOVE_CUT_OUT_PSI} psi of the low cut-out, ${group.lowCutOutPsig} psig`, act }]
+    return [{ fault: 'suction-near-cut-out', about: group.id, words: `${name}: suction ${pressureWords(suctionPsig, unit)} is within ${pressureDifferenceWords(ABOVE_CUT_OUT_PSI, unit)} of the low cut-out, ${pressureWords(group.lowCutOutPsig, unit)}`, act }]
   }
   // The cover is chosen so that suction settles at its target or above it.
   if (group.targetSuctionPsig !== null && on.length > 0 && suctionPsig <= group.targetSuctionPsig - BELOW_FORECAST_PSI) {
-    return [{ fault: 'suction-below-forecast', about: group.id, words: `${name}: suction ${suctionPsig} psig is ${tenth(group.targetSuctionPsig - suctionPsig)} psi below the ${group.targetSuctionPsig} psig foretold`, act }]
+    return [{ fault: 'suction-below-forecast', about: group.id, words: `${name}: suction ${pressureWords(suctionPsig, unit)} is ${pressureDifferenceWords(group.targetSuctionPsig - suctionPsig, unit)} below the ${pressureWords(group.targetSuctionPsig, unit)} foretold`, act }]
   }
   return []
 }
@@ -59,11 +61,12 @@ function suctionWarnings(state: OutageState, group: Group, { suctionPsig }: Pres
 function dischargeWarnings(state: OutageState, group: Group, { dischargePsig }: PressureState): PlantWarning[] {
   const rack = state.snapshot.racks.find(item => item.id === group.rackId)
   if (dischargePsig === null || !rack || rack.highCutOutPsig === null || dischargePsig <= OF_HIGH_CUT_OUT * rack.highCutOutPsig) return []
+  const unit = state.snapshot.site.pressureUnit
   const spare = state.snapshot.points.filter(point => point.kind === 'condenser-fan' && point.rackId === rack.id && !isOn(state, point)).sort(byTag)[0]
   const act = spare
     ? `Add a condenser fan: ${spare.tag} ${pointName(state, spare.tag)} on by hand.`
     : `Every condenser fan is on: ${dropWords(state, heldOn(state, 'compressor', point => point.rackId === rack.id)).replace(/^./, first => first.toLowerCase())} Look at the condenser.`
-  return [{ fault: 'discharge-high', about: group.id, words: `${groupName(state, group.id)}: discharge ${dischargePsig} psig is above 90 % of the high cut-out, ${rack.highCutOutPsig} psig`, act }]
+  return [{ fault: 'discharge-high', about: group.id, words: `${groupName(state, group.id)}: discharge ${pressureWords(dischargePsig, unit)} is above 90 % of the high cut-out, ${pressureWords(rack.highCutOutPsig, unit)}`, act }]
 }
 
 function currentWarnings(state: OutageState): PlantWarning[] {
@@ -91,4 +94,3 @@ function dropWords(state: OutageState, on: readonly SnapshotPoint[]): string {
 }
 
 const byTag = (a: { tag: string }, b: { tag: string }) => a.tag.localeCompare(b.tag)
-const tenth = (value: number) => Math.round(value * 10) / 10

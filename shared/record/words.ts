@@ -1,5 +1,6 @@
 import { clockWords } from '../charts/words'
 import { handWords } from '../schemas/point-kinds'
+import { pressureWords } from '../utils/pressure'
 import { checkById } from './checks'
 import { CAUSE_WORDS, siteClock } from './act-words'
 import type { AnyEntry, Entry } from './entry'
@@ -64,7 +65,7 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'hand-back-closed': (_state, { body }) => tell('Hand back closed', body.words),
   'defrost-watched': (state, { body }) => tell(`Defrost watched: ${state.snapshot.circuits.find(circuit => circuit.id === body.circuitId)?.name ?? ''}`, body.words),
   'reading-taken': (state, { body }) => tell(`${caseName(state, body.caseId)}, round ${body.round}`, join(`${body.value.toFixed(1)} °${body.unit}`, body.method !== 'product' && body.method, body.words)),
-  'pressure-read': (state, { body }) => tell(`${groupName(state, body.suctionGroupId)}, round ${body.round}`, join(`suction ${body.suctionPsig} psig`, body.dischargePsig !== null && `discharge ${body.dischargePsig} psig`, body.words)),
+  'pressure-read': (state, { body }) => tell(`${groupName(state, body.suctionGroupId)}, round ${body.round}`, join(`suction ${pressureWords(body.suctionPsig, state.snapshot.site.pressureUnit)}`, body.dischargePsig !== null && `discharge ${pressureWords(body.dischargePsig, state.snapshot.site.pressureUnit)}`, body.words)),
   'act-opened': (state, { body }) => tell(`${caseName(state, body.caseId)}: an act is needed`, CAUSE_WORDS[body.cause]),
   'act-lapsed': (state, { body }) => tell(`${caseName(state, body.caseId)}: no act is needed any more`, body.holdMinutes === null ? 'it stays within its limit' : `holds ${Math.floor(body.holdMinutes)} min`),
   'act-signed': (state, entry) => {

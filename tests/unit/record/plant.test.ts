@@ -50,6 +50,17 @@ describe('plant readings judged', () => {
     expect(plantWarnings(writer.state).map(item => [item.fault, item.about])).toEqual([['current-above-plate', 'C-1']])
   })
 
+  it.each([
+    ['psig', 'suction 21 psig is within 3 psi of the low cut-out, 20 psig'],
+    ['bar', 'suction 1.45 bar gauge is within 0.21 bar of the low cut-out, 1.38 bar gauge'],
+    ['kPa', 'suction 145 kPa gauge is within 21 kPa of the low cut-out, 138 kPa gauge'],
+  ] as const)('speaks in the %s of the site', (unit, words) => {
+    const writer = storyTo('dark')
+    writer.state.snapshot.site.pressureUnit = unit
+    writer.pass(5).sign(technician, 'pressure-read', pressure(21))
+    expect(plantWarnings(writer.state)[0]!.words).toContain(words)
+  })
+
   it('is entered by the server when it begins and when it is over, and not in between', () => {
     const writer = storyTo('dark')
     for (const suction of [21, 21.5, 30]) writer.pass(2).sign(technician, 'pressure-read', pressure(suction))
