@@ -9,6 +9,7 @@ const LEASH = fileURLToPath(new URL('leash.cjs', import.meta.url))
  * @typedef {object} Running
  * @property {Promise<string>} ended its last words, once it has ended, whoever ended it
  * @property {() => Promise<void>} stop
+ * @property {() => Promise<void>} kill as a power failure would: without a word
  */
 
 /**
@@ -42,9 +43,13 @@ export function startServer(args, { cwd, env, leash = true, quiet = false }) {
     if (!await waitUntilGone(child.pid, 10_000)) signal(target, 'SIGKILL')
     await ended
   }
+  async function kill() {
+    if (child.pid) signal(leash ? child.pid : -child.pid, 'SIGKILL')
+    await ended
+  }
   const forget = onClose(stop)
   void ended.then(forget)
-  return { ended, stop }
+  return { ended, stop, kill }
 }
 
 /**

@@ -5,7 +5,10 @@ import { drizzle } from 'drizzle-orm/postgres-js'
 import { migrate } from 'drizzle-orm/postgres-js/migrator'
 import postgres from 'postgres'
 import { seedDemo } from '~~/server/database/seed'
+import { JOBS } from '~~/server/jobs'
+import { closeQueue, openQueue } from '~~/server/jobs/queue'
 import { closeDatabase, databaseUrl, isDatabaseAway, useDatabase } from '~~/server/utils/database'
+import { mailSettingsFault } from '~~/server/utils/mail/settings'
 import { isReady, markReady, untilReady } from '~~/server/utils/ready'
 import { serverSigner } from '~~/server/utils/record/server-signer'
 
@@ -18,9 +21,15 @@ export default defineNitroPlugin((nitro) => {
   nitro.hooks.hook('request', async (event) => {
     if (!isReady() && !event.path.startsWith('/api/health')) await untilReady()
   })
-  nitro.hooks.hook('close', closeDatabase)
+  // Jobs first: they use the database.
+  nitro.hooks.hook('close', async () => {
+    await closeQueue()
+    await closeDatabase()
+  })
   answerAwayWith503(nitro)
   if (!useRuntimeConfig().authSecret) fail('NUXT_AUTH_SECRET is not set; the start command makes one')
+  const fault = mailSettingsFault(process.env)
+  if (fault) fail(fault)
   start().then(markReady, error => fail(error instanceof Error ? `${error.message}${error.cause instanceof Error ? `: ${error.cause.message}` : ''}` : String(error)))
 })
 
@@ -30,6 +39,7 @@ async function start(): Promise<void> {
     const db = drizzle(client)
     await db.execute(sql`select pg_advisory_lock(${LOCK})`)
     await migrate(db, { migrationsFolder: migrationsFolder() })
+    await openQueue(databaseUrl(), JOBS)
     await serverSigner(useDatabase())
     if (process.env.HOLDOVER_DEMO === '1') await seedDemo(useDatabase(), Date.now())
   } finally {

@@ -12,6 +12,8 @@ const root = fileURLToPath(new URL('../..', import.meta.url))
 export interface TestServerOptions {
   /** With the demo's people, sites and outages; else empty, as a first visit finds it. */
   demo?: boolean
+  /** With the jobs that run by the clock; else nothing happens that nobody asked for. */
+  jobs?: boolean
   /** A free one by default. */
   port?: number
   /** Added to the server's environment. */
@@ -29,6 +31,8 @@ export interface TestServer {
   advance: (minutes: number) => Promise<void>
   /** Ends the server and leaves its database and files, as a failure does. */
   down: () => Promise<void>
+  /** The same without letting it finish anything. */
+  kill: () => Promise<void>
   /** Starts it again at the same address. */
   up: () => Promise<void>
   /** Ends the server and takes its database and files away. */
@@ -39,7 +43,7 @@ export interface TestServer {
  * Starts the built server on a free port of 127.0.0.1, with a fresh database in the cluster that
  * TEST_DATABASE_ADMIN_URL names and with a clock that the test can move.
  */
-export async function startTestServer({ demo = false, port, env = {} }: TestServerOptions = {}): Promise<TestServer> {
+export async function startTestServer({ demo = false, jobs = false, port, env = {} }: TestServerOptions = {}): Promise<TestServer> {
   const adminUrl = process.env.TEST_DATABASE_ADMIN_URL
   if (!adminUrl) throw new Error('TEST_DATABASE_ADMIN_URL is not set; run these tests by npm run test:api or npm run test:e2e.')
   const database = `holdover_test_${randomBytes(6).toString('hex')}`
@@ -64,6 +68,7 @@ export async function startTestServer({ demo = false, port, env = {} }: TestServ
       NUXT_DATABASE_URL: databaseUrl,
       NUXT_DATA_DIR: dataDirectory,
       HOLDOVER_DEMO: demo ? '1' : '0',
+      HOLDOVER_JOBS: jobs ? '1' : '0',
       HOLDOVER_TEST_CLOCK: clock,
       NITRO_SHUTDOWN_TIMEOUT: '1000',
       ...env,
@@ -98,6 +103,7 @@ export async function startTestServer({ demo = false, port, env = {} }: TestServ
       await rename(`${clock}.new`, clock)
     },
     down: async () => { await server.stop() },
+    kill: async () => { await server.kill() },
     up,
     stop,
   }

@@ -1,5 +1,6 @@
 export * from './changes'
 export * from './lessons'
+export * from './mails'
 export * from './outages'
 export * from './people'
 export * from './sites'

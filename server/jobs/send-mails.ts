@@ -1,0 +1,22 @@
+import { receiver, sendDueMails } from '../utils/mail/send'
+import { mailFrom, smtpUrl } from '../utils/mail/settings'
+import { SEND_MAILS } from '../utils/mail/write'
+import type { Job } from './job'
+
+/** Sends mails: at once when one was written, and again those that failed. */
+export const sendMailsJob: Job = {
+  name: SEND_MAILS,
+  every: 10,
+  // Each mail is locked by its row.
+  together: true,
+  async run(db, now) {
+    const url = smtpUrl()
+    if (!url) return
+    const { handIn, close } = receiver(url, mailFrom())
+    try {
+      await sendDueMails(db, handIn, now)
+    } finally {
+      close()
+    }
+  },
+}
