@@ -11,6 +11,7 @@ import { closeDatabase, databaseUrl, isDatabaseAway, useDatabase } from '~~/serv
 import { mailSettingsFault } from '~~/server/utils/mail/settings'
 import { isReady, markReady, untilReady } from '~~/server/utils/ready'
 import { serverSigner } from '~~/server/utils/record/server-signer'
+import { renewOldSearch } from '~~/server/utils/records/renew'
 
 /** Any number that only this program uses: one node migrates and seeds at a time. */
 const LOCK = 7_163_027
@@ -30,8 +31,14 @@ export default defineNitroPlugin((nitro) => {
   if (!useRuntimeConfig().authSecret) fail('NUXT_AUTH_SECRET is not set; the start command makes one')
   const fault = mailSettingsFault(process.env)
   if (fault) fail(fault)
-  start().then(markReady, error => fail(error instanceof Error ? `${error.message}${error.cause instanceof Error ? `: ${error.cause.message}` : ''}` : String(error)))
+  start().then(opened, error => fail(error instanceof Error ? `${error.message}${error.cause instanceof Error ? `: ${error.cause.message}` : ''}` : String(error)))
 })
+
+/** Lets requests in; lists that an older program left behind are brought up meanwhile. */
+function opened(): void {
+  markReady()
+  renewOldSearch(useDatabase()).catch(error => console.error('The search of records is not up to date yet; the next start goes on with it.', error))
+}
 
 async function start(): Promise<void> {
   const client = postgres(databaseUrl(), { max: 1, onnotice: () => {} })

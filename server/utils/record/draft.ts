@@ -17,6 +17,7 @@ import { uuidv7 } from '../../../shared/record/uuid'
 import { devices, entries, outages, people } from '../../database/schema'
 import type { Person } from '../access'
 import type { Queries } from '../database'
+import { saveSearch } from '../records/save'
 import { signBytes } from './keys'
 import type { OutageRow } from './log'
 import { readFrontier, readState } from './log'
@@ -107,6 +108,7 @@ function namesDevice(entry: AnyEntry, device: string): boolean {
 export async function saveProjection(draft: Draft): Promise<void> {
   const { state, rows, cached } = draft
   if (rows.length > 0) await draft.db.insert(entries).values(rows)
+  await saveSearch(draft.db, state, rows)
   draft.rows = []
   const isNear = cached !== null && state.size - cached.size < ENTRIES_BEHIND && cached.phase === state.phase && cached.planSubmitted === (state.planSubmitted !== null) && cached.voices === openVoiceIds(state)
   const dark = state.darks.at(-1) // the present time without control, or the last one

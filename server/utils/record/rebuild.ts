@@ -3,6 +3,7 @@ import { foldLog } from '../../../shared/record/fold'
 import { frontierOf } from '../../../shared/record/merkle'
 import { outages } from '../../database/schema'
 import type { Database } from '../database'
+import { renewSearch } from '../records/save'
 import { saveProjection } from './draft'
 import { readCheckpoints, readEntries } from './log'
 import { serverSigner } from './server-signer'
@@ -25,6 +26,7 @@ export async function rebuildProjections(db: Database): Promise<{ count: number,
       const state = foldLog(row.id, log)
       if (row.size !== state.size || row.phase !== state.phase) differed.push(row.code)
       await saveProjection({ db: tx, state, frontier: frontierOf(log), checkpoint: (await readCheckpoints(tx, row.id)).at(-1) ?? null, signer, now: row.updatedAt.getTime(), rows: [], cached: null })
+      await renewSearch(tx, state, log)
     })
   }
 }

@@ -1,0 +1,77 @@
+import { z } from 'zod'
+import { PHASES } from '../record/phases'
+
+/** What became of an outage, as far as lists are searched for it. Several may be true of one. */
+export const RECORD_OUTCOMES = ['unplanned', 'turned-back', 'act', 'above-limit', 'discard', 'late-rounds', 'excused', 'left-in-hand', 'questioned', 'returned'] as const
+export type RecordOutcome = (typeof RECORD_OUTCOMES)[number]
+
+/** Outcomes, as they are chosen and read. */
+export const OUTCOME_WORDS: Record<RecordOutcome, string> = {
+  'unplanned': 'Not planned',
+  'turned-back': 'Turned back',
+  'act': 'With an act',
+  'above-limit': 'Above a limit',
+  'discard': 'With discard',
+  'late-rounds': 'With late rounds',
+  'excused': 'With excused points',
+  'left-in-hand': 'With points left in hand',
+  'questioned': 'With questioned entries',
+  'returned': 'Returned for answers',
+}
+
+/** Orders of a list of records; ties break on id. */
+export const RECORD_SORTS = ['newest', 'oldest', 'longest-dark', 'shortest-hold'] as const
+export type RecordSort = (typeof RECORD_SORTS)[number]
+export const SORT_WORDS: Record<RecordSort, string> = {
+  'newest': 'Newest first',
+  'oldest': 'Oldest first',
+  'longest-dark': 'Longest time without control',
+  'shortest-hold': 'Shortest hold',
+}
+
+export const WORDS_SOUGHT_MAX = 200
+
+/** Names of a fixed set with commas between them, each once. */
+const several = <T extends string>(names: readonly [T, ...T[]], what: string) => z.string().max(400).transform(text => [...new Set(text.split(',').filter(Boolean))])
+  .pipe(z.array(z.enum(names as [T, ...T[]], { errorMap: () => ({ message: `${what}: one or more of ${names.join(', ')}, with commas` }) })))
+
+const day = z.string().regex(/^\d{4}-\d{2}-\d{2}$/, 'A day is written 2026-03-03').refine((text) => {
+  const ms = Date.parse(`${text}T00:00:00.000Z`)
+  return !Number.isNaN(ms) && new Date(ms).toISOString().startsWith(text)
+}, 'There is no such day')
+const id = (what: string) => z.string().uuid(`The id of ${what}`)
+
+/** An empty field of a form asks for nothing. */
+const blank = <T extends z.ZodTypeAny>(schema: T) => z.preprocess(value => value === '' ? undefined : value, schema.optional())
+
+/** Fields of a search for records, as they stand in an address. */
+export const recordFilterFields = {
+  words: blank(z.string().trim().max(WORDS_SOUGHT_MAX, `At most ${WORDS_SOUGHT_MAX} characters`)), // each must occur in what was signed
+  site: blank(id('a site')),
+  controller: blank(id('a controller')),
+  from: blank(day), // opened on this day of the site or later
+  to: blank(day), // opened on this day of the site or earlier
+  person: blank(id('a person')), // who signed in it
+  work: blank(z.string().trim().max(120)), // kind of work, by its name
+  phase: blank(several(PHASES, 'Phases')), // any of them
+  outcome: blank(several(RECORD_OUTCOMES, 'Outcomes')), // all of them
+  tag: blank(z.string().trim().max(32)), // a point that was in the plan or in hand
+}
+
+const dayOrder = { path: ['to'], message: 'The last day lies before the first' }
+const isOrdered = ({ from, to }: { from?: string, to?: string }) => from === undefined || to === undefined || from <= to
+
+/** A search for records. Fields that it does not know are left alone: an address may hold others. */
+export const recordFilterSchema = z.object(recordFilterFields).refine(isOrdered, dayOrder)
+export type RecordFilter = z.output<typeof recordFilterSchema>
+
+export const RECORD_PAGE_MAX = 100
+
+/** A page of a search: its order, where to go on, how many at most. */
+export const recordQuerySchema = z.object({
+  ...recordFilterFields,
+  sort: blank(z.enum(RECORD_SORTS, { errorMap: () => ({ message: `One of ${RECORD_SORTS.join(', ')}` }) })).transform(sort => sort ?? 'newest'),
+  after: blank(z.string().max(100)),
+  limit: z.coerce.number().int().min(1).max(RECORD_PAGE_MAX, `At most ${RECORD_PAGE_MAX}`).default(25),
+}).refine(isOrdered, dayOrder)
+export type RecordQuery = z.output<typeof recordQuerySchema>
