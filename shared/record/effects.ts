@@ -1,4 +1,5 @@
 import { closeAct, correctProof, endBySigning, openAct, openingOf, proveAct } from './act-course'
+import { acknowledgeAlert, endAlert, passOnAlert, raiseAlert } from './alert-effects'
 import { BACK_CHECKS } from './checks'
 import type { AnyEntry, Entry, StoredEntry } from './entry'
 import { correctedTime, happenedAt } from './entry'
@@ -43,6 +44,10 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     state.plant = state.plant.filter(item => item.fault !== body.fault || item.about !== body.about)
     if (!body.over) state.plant.push({ fault: body.fault, about: body.about, words: body.words, act: body.act, at: Date.parse(body.judgedAt), seq: mark.seq })
   },
+  'alert-raised': (state, { body }, mark) => raiseAlert(state, body, mark),
+  'alert-passed-on': (state, { body }, mark) => passOnAlert(state, body, mark),
+  'alert-acknowledged': (state, { body }) => acknowledgeAlert(state, body),
+  'alert-over': (state, { body }, mark) => endAlert(state, body.key, mark),
 
   'outage-opened': (state, entry, mark) => {
     const { body } = entry

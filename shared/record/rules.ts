@@ -66,6 +66,10 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   'act-opened': serverOnly,
   'act-lapsed': serverOnly,
   'entry-refused': serverOnly,
+  'alert-raised': serverOnly,
+  'alert-passed-on': serverOnly,
+  'alert-acknowledged': serverOnly,
+  'alert-over': serverOnly,
 
   'outage-opened': { roles: HANDS, phases: ['plan'], unfit: (state, entry) => [
     ...(state.opened ? ['this outage is already open'] : []),

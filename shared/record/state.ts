@@ -2,6 +2,7 @@ import { INSTRUMENT_CHECK_DAYS, PLAIN_HOLDING } from '../schemas/equipment'
 import type { Role } from '../schemas/people'
 import type { HandPosition, PointKind } from '../schemas/point-kinds'
 import type { CheckId } from './checks'
+import type { AlertName } from './kinds/alerts'
 import type { SeenInAuto, SeenInHand } from './kinds/hand'
 import type { OpenMatter, Spoken } from './kinds/hands'
 import type { Act } from './kinds/rounds'
@@ -11,7 +12,7 @@ import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 9
+export const FOLD_VERSION = 10
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
@@ -156,6 +157,27 @@ export interface VoiceState {
   }
 }
 
+/** An alert of this outage, and what came of it. */
+export interface AlertState {
+  key: string
+  alert: AlertName
+  /** cases' ids, points' tags or people's ids, by what it is */
+  about: string[]
+  /** the last level that was told */
+  level: number
+  words: string
+  /** when what is feared comes to pass, Unix ms */
+  until: number | null
+  /** printed names of all who were told */
+  to: string[]
+  /** when it was raised or last passed on, Unix ms */
+  toldAt: number
+  mark: Mark
+  acknowledged: { person: string, name: string, at: number } | null
+  /** since when it is so no more, Unix ms */
+  over: number | null
+}
+
 export interface Questioned { entry: string, seq: number, kind: string, why: string[], tag: string | null, settled: { words: string, mark: Mark } | null }
 
 export interface OutageState {
@@ -191,6 +213,7 @@ export interface OutageState {
   pressures: PressureState[]
   /** warnings of the plant that are not over */
   plant: { fault: PlantFault, about: string, words: string, act: string, at: number, seq: number }[]
+  alerts: AlertState[]
   darks: DarkInterval[]
   turnedBack: { reason: string, mark: Mark } | null
   steps: Record<string, { begun: Mark | null, done: Mark | null }>
@@ -251,7 +274,7 @@ export function emptyState(id: string): OutageState {
     foldVersion: FOLD_VERSION, id, code: null, size: 0, phase: 'plan', planned: true,
     snapshot: structuredClone(EMPTY_SNAPSHOT), opened: null, cause: '', plan: structuredClone(EMPTY_PLAN),
     authors: [], planSubmitted: null, planReturned: null, approved: null, marginAccepted: null, inHandBegun: null, holder: null, offers: [], taken: [], voices: [], named: {},
-    checks: {}, points: {}, cases: {}, instrumentChecks: [], pressures: [], plant: [], darks: [], turnedBack: null, steps: {}, backAt: null,
+    checks: {}, points: {}, cases: {}, instrumentChecks: [], pressures: [], plant: [], alerts: [], darks: [], turnedBack: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
     calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],
     refusals: [], chain: {}, heard: {}, largestSkew: null,

@@ -3,9 +3,11 @@ import { handWords } from '../schemas/point-kinds'
 import { pressureWords } from '../utils/pressure'
 import { checkById } from './checks'
 import { CAUSE_WORDS, siteClock } from './act-words'
+import { alertTitle, toldWords } from './alerts'
 import type { AnyEntry, Entry } from './entry'
 import { correctedTime, isoTime } from './entry'
 import type { EntryKind } from './kinds'
+import { ALERT_WORDS } from './kinds/alerts'
 import type { OpenMatter } from './kinds/hands'
 import { asNewest } from './newest'
 import { acceptedWords } from './margin'
@@ -41,6 +43,10 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'verdict-changed': (state, { body }) => tell(`${caseName(state, body.caseId)} is ${VERDICT_WORDS[body.verdict]}`, join(body.clause, body.minutesAbove > 0 && `${Math.round(body.minutesAbove)} min above`)),
   'plant-warned': (_state, { body }) => tell(body.over ? 'Plant warning is over' : 'Plant warning', join(body.words, body.act)),
   'entry-refused': (_state, { body }) => tell('An entry was refused', body.reason),
+  'alert-raised': (_state, { body }) => tell(`Alert: ${ALERT_WORDS[body.alert].toLowerCase()}`, join(body.words, toldWords(body.to))),
+  'alert-passed-on': (state, { body }) => tell(`Alert passed on: ${alertTitle(state, body.key)}`, join('not acknowledged', toldWords(body.to))),
+  'alert-acknowledged': (state, { body }) => tell(`Alert acknowledged: ${alertTitle(state, body.key)}`, `by ${body.name}`),
+  'alert-over': (state, { body }) => tell(`Alert is over: ${alertTitle(state, body.key)}`),
   'outage-opened': (_state, { body }) => tell(body.planned ? `Outage opened: ${body.plan.workKind.name}` : 'Unplanned outage opened', join(body.cause, `${body.snapshot.points.length} points, ${body.snapshot.cases.length} cases`)),
   'plan-changed': (_state, { body }) => tell('Plan changed', join(body.note, `${body.plan.points.length} points`)),
   'plan-submitted': (_state, { body }) => tell('Plan sent for approval', body.note),

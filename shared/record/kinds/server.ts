@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { ROLES } from '../../schemas/people'
+import { alertKinds } from './alerts'
 import { time, uuid } from './common'
 
 export const VERDICTS = ['within', 'above', 'act', 'discard', 'unknown'] as const
@@ -61,4 +62,5 @@ export const serverKinds = {
   /** an act of a short hold is asked for no more: readings since show that the case holds */
   'act-lapsed': { 1: z.object({ caseId: uuid, holdMinutes: z.number().min(0).nullable(), judgedAt: time }).strict() }, // null: its limit is never reached
   'entry-refused': { 1: z.object({ device: uuid, n: z.number().int().min(1), id: uuid, hash: z.string().regex(/^[0-9a-f]{64}$/), reason: z.string().max(1000) }).strict() },
+  ...alertKinds,
 }

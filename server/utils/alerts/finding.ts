@@ -1,0 +1,31 @@
+import type { AlertName } from '~~/shared/record/kinds/alerts'
+import type { AlertView } from './view'
+
+/** Something of which a rule says that it is so now. */
+export interface Finding {
+  /** a case's id, a point's tag, a person's id, by the rule */
+  about: string
+  /** an alert that was raised before this moment is not about it, Unix ms; null: any open one is */
+  since: number | null
+  /** reason enough to raise an alert; else it only keeps one open, or joins one that is raised for another */
+  begins: boolean
+}
+
+/** One kind of alert. Words are one line: what, until when, what to do; the site is put before them. */
+export interface AlertRule {
+  /** the last level that is told at once */
+  start: 1 | 2
+  /** all that is so goes into one alert, instead of one for each */
+  together: boolean
+  find: (view: AlertView) => Finding[]
+  words: (view: AlertView, about: readonly string[]) => string
+  /** when what is feared comes to pass, Unix ms; null: it has no time */
+  until: (view: AlertView, about: readonly string[]) => number | null
+}
+
+export type AlertRules = { [K in AlertName]: AlertRule }
+
+/** Whether an alert raised at a moment is about a finding. */
+export function isAbout(alert: { about: readonly string[], raisedAt: number }, finding: Finding): boolean {
+  return alert.about.includes(finding.about) && (finding.since === null || alert.raisedAt >= finding.since)
+}
