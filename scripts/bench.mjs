@@ -3,36 +3,17 @@
 import { readdir, rm } from 'node:fs/promises'
 import { cpus } from 'node:os'
 import { join } from 'node:path'
-import { fileURLToPath, pathToFileURL } from 'node:url'
-import { build } from 'vite'
+import { fileURLToPath } from 'node:url'
+import { bundle } from './lib/bundle.mjs'
 import { closeAll, closeOnSignals, run } from './lib/processes.mjs'
 
 const root = fileURLToPath(new URL('..', import.meta.url)).replace(/\/$/, '')
 // Below node_modules, so that what is not bundled is found from there.
 const room = join(root, 'node_modules/.cache/holdover-bench')
 
-/** A bundle lies elsewhere than its sources: what these find beside themselves they go on finding. */
-const ownAddress = {
-  name: 'own-address',
-  transform: (code, id) => code.includes('import.meta.url') ? code.replaceAll('import.meta.url', JSON.stringify(pathToFileURL(id).href)) : null,
-}
-
-/** Bundles a benchmark, so that it runs as the built program does: without a transpiler's detours between modules. */
-async function bundle(file) {
-  await build({
-    configFile: false,
-    root,
-    logLevel: 'error',
-    resolve: { alias: { '~~': root, '@@': root, '#shared': join(root, 'shared') } },
-    plugins: [ownAddress],
-    build: { ssr: join(root, 'bench', file), outDir: room, emptyOutDir: false, rollupOptions: { output: { entryFileNames: `${file}.mjs` } } },
-  })
-  return join(room, `${file}.mjs`)
-}
-
 /** Runs one benchmark. @returns {Promise<object>} the JSON of its last line, or its fault */
 async function measure(file) {
-  const { code, output } = await run(process.execPath, [await bundle(file)], { cwd: root, quiet: true, timeout: 10 * 60_000 })
+  const { code, output } = await run(process.execPath, [await bundle(root, `bench/${file}`, room)], { cwd: root, quiet: true, timeout: 10 * 60_000 })
   try {
     if (code !== 0) throw new Error(`exit code ${code}`)
     const result = JSON.parse(output.trim().split('\n').at(-1))

@@ -1,5 +1,6 @@
 // `npm test`: all set-up, then every check there is. `--only lint|types|migrations|unit|api|e2e` for some of them;
 // what follows `--` goes to the test runner of the one part that is chosen.
+import { existsSync } from 'node:fs'
 import { chmod, mkdtemp, rm } from 'node:fs/promises'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
@@ -10,8 +11,8 @@ import { checkMigrations } from './lib/migrations.mjs'
 import { countPlaywright, countVitest, mustRun, phase } from './lib/phases.mjs'
 import { startPostgres } from './lib/postgres.mjs'
 import { closeAll, closeOnSignals, isClosing, onClose } from './lib/processes.mjs'
-import { Refusal } from './lib/say.mjs'
-import { findProgram, installSystemPackages } from './lib/system.mjs'
+import { Refusal, say } from './lib/say.mjs'
+import { findProgram, installSystemPackages, PREFLIGHT_JARS } from './lib/system.mjs'
 
 const root = fileURLToPath(new URL('..', import.meta.url)).replace(/\/$/, '')
 const bin = name => join(root, 'node_modules/.bin', name)
@@ -54,7 +55,7 @@ async function main() {
   await phase('Set-up', async () => {
     checkNode()
     await installPackages(root)
-    if (parts.some(part => part === 'api' || part === 'e2e')) await installTools()
+    if (parts.some(part => part === 'unit' || part === 'api' || part === 'e2e')) await installTools()
     if (parts.some(part => part !== 'migrations')) {
       await mustRun(bin('nuxt'), ['prepare'], { cwd: root, env, quiet: true, sentence: 'Nuxt could not prepare its types.' })
     }
@@ -80,11 +81,20 @@ function readArguments(args) {
   return { parts: parts.length > 0 ? parts : Object.keys(PARTS), extra }
 }
 
-/** Programs of the system that tests use: a browser, and readers of PDF. */
+/** Programs of the system that tests use: a browser, readers of PDF, and a validator of PDF/A. */
 async function installTools() {
   const wanted = { chromium: 'chromium', pdftotext: 'poppler-utils', qpdf: 'qpdf' }
   const missing = Object.entries(wanted).filter(([program]) => !findProgram(program)).map(([, name]) => name)
   if (missing.length > 0) await installSystemPackages(missing, `The tests need ${missing.join(', ')}`)
+  const jars = Object.entries(PREFLIGHT_JARS).filter(([jar]) => !existsSync(jar)).map(([, name]) => name)
+  const validator = [...new Set([...(findProgram('java') ? [] : ['default-jre-headless']), ...jars])]
+  if (validator.length === 0) return
+  try {
+    await installSystemPackages(validator, 'One test validates PDF/A by PDFBox Preflight')
+  } catch (error) {
+    // Only that test needs it: it fails and says so, and all others still run.
+    say(error.message)
+  }
 }
 
 let serving = null

@@ -3,6 +3,17 @@ import { delimiter, join } from 'node:path'
 import { run } from './processes.mjs'
 import { Refusal, say, spell } from './say.mjs'
 
+/** Jars of PDFBox Preflight and what it needs on a Java later than 10, each with the Debian package that brings it. */
+export const PREFLIGHT_JARS = {
+  '/usr/share/java/preflight.jar': 'libpdfbox2-java',
+  '/usr/share/java/pdfbox2.jar': 'libpdfbox2-java',
+  '/usr/share/java/xmpbox.jar': 'libpdfbox2-java',
+  '/usr/share/java/fontbox2.jar': 'libfontbox2-java',
+  '/usr/share/java/commons-logging.jar': 'libcommons-logging-java',
+  '/usr/share/java/javax.activation.jar': 'libactivation-java',
+  '/usr/share/java/jaxb-api.jar': 'libjaxb-api-java',
+}
+
 /**
  * Looks a program up as a shell would.
  * @param {string} name

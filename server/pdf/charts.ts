@@ -7,6 +7,9 @@ import type { LimitChart } from '../../shared/record/record-charts'
 import type { Sheet } from './sheet'
 import { COLOURS } from './sheet'
 
+/** The time without control: ink at 8 parts in 100 on white, mixed beforehand since PDF/A-1 knows no transparency. */
+const SHADE = '#EDEDED'
+
 /** The screen's drawings are laid out for words of 16 px; on paper words are 8 points. */
 const SCALE = 0.56
 
@@ -16,7 +19,7 @@ export function drawDisc(sheet: Sheet, input: DiscInput, centre: { x: number, y:
   const drawn = disc(input)
   const scale = across / drawn.size
   const elapsed = durationWords(Math.round(input.elapsedMinutes * 60))
-  const figure = sheet.element('Figure', { alt: `Disc: ${elapsed} without control. The red ring is the limit of every case. ${input.cases.map(item => `${item.name}, highest ${highest(item.readings)} of its limit ${numberWords(item.limit)}`).join('; ')}` })
+  const figure = sheet.element('Figure', { bbox: [centre.x - across / 2, centre.y - across / 2, centre.x + across / 2, centre.y + across / 2], alt: `Disc: ${elapsed} without control. The red ring is the limit of every case. ${input.cases.map(item => `${item.name}, highest ${highest(item.readings)} of its limit ${numberWords(item.limit)}`).join('; ')}` })
   sheet.content(figure, 'Figure', () => {
     doc.save().translate(centre.x, centre.y).scale(scale)
     doc.lineWidth(1.25).strokeColor(COLOURS.grid)
@@ -47,10 +50,10 @@ export function drawTemperatures(sheet: Sheet, chart: LimitChart, timeZone: stri
   const { plot } = drawn
   const small = { size: 7.5, colour: COLOURS['ink-2'] }
   const stride = Math.ceil(drawn.xTicks.length * 34 / ((plot.right - plot.left) * SCALE))
-  const figure = sheet.element('Figure', { alt: `Product temperatures in °${chart.unit}, limit ${temperatureWords(chart.limit, chart.unit)}. ${chart.cases.map(item => `${item.name}: highest ${highest(item.readings)}`).join('; ')}` })
+  const figure = sheet.element('Figure', { bbox: [sheet.left, sheet.y, sheet.right, sheet.y + height], alt: `Product temperatures in °${chart.unit}, limit ${temperatureWords(chart.limit, chart.unit)}. ${chart.cases.map(item => `${item.name}: highest ${highest(item.readings)}`).join('; ')}` })
   sheet.content(figure, 'Figure', () => {
     for (const span of drawn.dark) {
-      doc.rect(x(span.x), y(plot.top), span.width * SCALE, (plot.bottom - plot.top) * SCALE).fillOpacity(0.08).fill(COLOURS.ink).fillOpacity(1)
+      doc.rect(x(span.x), y(plot.top), span.width * SCALE, (plot.bottom - plot.top) * SCALE).fill(SHADE)
       if (span.width * SCALE > 62) type.draw('without control', x(span.x) + 4, y(span.wordsY), small)
     }
     for (const tick of drawn.yTicks) {

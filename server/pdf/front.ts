@@ -64,13 +64,14 @@ function drawRows(sheet: Sheet, summary: RecordSummary, left: number): void {
   const { type } = sheet
   const room = sheet.right - left - 104
   sheet.rule(sheet.y, { from: left })
+  const table = sheet.element('Table')
   for (const row of summaryRows(summary)) {
     const text = row.parts.map(part => part.text).join('')
     const simple = row.parts.reduce((sum, part) => sum + type.width(part.text, { size: 9, face: part.strong ? 'bold' : 'plain' }), 0) <= room
     const lines = simple ? [text] : type.wrap(text, room, { size: 9 }, 5)
-    const element = sheet.element('P')
-    sheet.content(element, 'P', () => {
-      type.draw(row.label, left, sheet.y + 13.5, { size: 9, colour: COLOURS.ink })
+    const element = sheet.element('TR', {}, table)
+    sheet.content(sheet.element('TH', { scope: 'Row' }, element), 'TH', () => type.draw(row.label, left, sheet.y + 13.5, { size: 9, colour: COLOURS.ink }))
+    sheet.content(sheet.element('TD', {}, element), 'TD', () => {
       if (!simple) { lines.forEach((line, index) => type.drawRight(line, sheet.right, sheet.y + 13.5 + index * 11.5, { size: 9, colour: COLOURS.ink })); return }
       let x = sheet.right - row.parts.reduce((sum, part) => sum + type.width(part.text, { size: 9, face: part.strong ? 'bold' : 'plain' }), 0)
       for (const part of row.parts) {
@@ -82,6 +83,7 @@ function drawRows(sheet: Sheet, summary: RecordSummary, left: number): void {
     sheet.y += 20 + (lines.length - 1) * 11.5
     sheet.rule(sheet.y, { from: left })
   }
+  table.end()
 }
 
 /** The signatures that stand: the technician's under the record, the supervisor's over it. */
@@ -105,19 +107,20 @@ function drawSignature(sheet: Sheet, paper: RecordPaper, { signature, did, none,
   sheet.artifact(() => doc.rect(box.x, box.y, box.width, box.height).lineWidth(0.9).stroke(COLOURS.ink))
   const inner = { x: box.x + 8, width: box.width - 16 }
   const faint = { size: 8, colour: COLOURS['ink-2'] }
-  const element = sheet.element('P')
   if (!signature) {
+    const element = sheet.element('P')
     sheet.content(element, 'P', () => type.draw(none, inner.x, box.y + 45, faint))
     element.end()
     return
   }
   const drawing = paper.drawings.get(signature.drawing)
   if (drawing) {
-    const figure = sheet.element('Figure', { alt: `Drawn signature of ${signature.by}` })
+    const figure = sheet.element('Figure', { bbox: [inner.x, box.y + 4, inner.x + inner.width, box.y + 42], alt: `Drawn signature of ${signature.by}` })
     sheet.content(figure, 'Figure', () => doc.image(Buffer.from(drawing), inner.x, box.y + 4, { fit: [inner.width, 38], valign: 'center' } as never))
     figure.end()
   }
   const at = isoTime(signature.at)
+  const element = sheet.element('P')
   sheet.content(element, 'P', () => {
     if (!drawing) type.draw('drawing awaited', inner.x, box.y + 28, faint)
     type.draw(type.fit(signature.by, inner.width, { size: 9, face: 'semibold' }), inner.x, box.y + 51, { size: 9, face: 'semibold', colour: COLOURS.ink })
@@ -134,9 +137,9 @@ function drawAttention(sheet: Sheet, { state, summary }: RecordPaper): void {
   const points = attentionOf(summary, breaches, state.turnedBack?.reason ?? null)
   sheet.begin('What to look at', 40)
   if (points.length === 0) { sheet.paragraph('Nothing out of the ordinary: no late round, no verdict, no point excused or left, no entry questioned, no clock more than five minutes off.', { style: { colour: COLOURS['ink-2'] } }); return }
-  for (const { what, items } of points) {
+  sheet.list(() => points.forEach(({ what, items }) => {
     const shown = items.slice(0, 8)
     const more = items.length > shown.length ? `; and ${countWords(items.length - shown.length, 'more', 'more')}, further on` : ''
     sheet.labelled(what, `${shown.join(' · ')}${more}`)
-  }
+  }))
 }

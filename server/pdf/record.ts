@@ -1,20 +1,24 @@
-import PDFDocument from 'pdfkit'
 import type { StoredEntry } from '../../shared/record/entry'
+import { logRoot } from '../../shared/record/merkle'
 import { temperatureCharts } from '../../shared/record/record-charts'
 import type { OutageState } from '../../shared/record/state'
 import type { RecordSummary } from '../../shared/record/summary'
 import { hashWords } from '../../shared/record/summary-words'
 import { temperatureWords } from '../../shared/charts/words'
 import { drawTemperatures } from './charts'
-import { drawEntries, drawLooseEnds, drawProof } from './entry-sections'
+import { drawEntries, drawLooseEnds } from './entry-sections'
 import { Feet } from './foot'
 import type { FontBytes } from './fonts'
 import { drawForecasts, drawPlantWarnings } from './forecast-sections'
 import { drawFront } from './front'
+import { drawPhotos } from './photos'
 import { drawChecks, drawDarks, drawPlan } from './plan-sections'
+import { drawCautions, drawProof, drawVerifying } from './proof'
 import { drawPoints, drawRounds } from './run-sections'
-import { paperSize, Sheet } from './sheet'
+import { Sheet } from './sheet'
 import { Typesetter } from './typesetter'
+import type { PaperVariant } from './variant'
+import { attachRecord, openDocument } from './variant'
 import { drawInstruments, drawVerdicts } from './verdict-sections'
 
 /** All that the paper is made from; the same input makes the same bytes. */
@@ -32,7 +36,10 @@ export interface RecordPaper {
   drawings: ReadonlyMap<string, Uint8Array>
   /** hashes of the files that the store holds */
   held: ReadonlySet<string>
-  /** record.json, which the paper carries */
+  /** gives a photo as a small JPEG when it is drawn; null where its bytes cannot be had */
+  picture: (hash: string) => Promise<Uint8Array | null>
+  variant: PaperVariant
+  /** record.json, which a paper of the variant `record` carries */
   record: string
 }
 
@@ -44,16 +51,10 @@ const CHART_HEIGHT = 168
  */
 export function openRecordPdf(paper: RecordPaper, fonts: FontBytes): { doc: PDFKit.PDFDocument, written: Promise<void> } {
   const { heading } = paper.summary
-  const date = new Date(paper.now)
   const title = `Record of a controller outage${heading.code ? ` ${heading.code}` : ''}: ${heading.site}, ${heading.controller}`
-  const doc = new PDFDocument({
-    autoFirstPage: false, size: paperSize(paper.state.snapshot.site.paper), margin: 0, pdfVersion: '1.7', tagged: true, lang: 'en', displayTitle: true,
-    // Without a font of its own the constructor would load a standard one that the paper does not use.
-    font: null as never,
-    info: { Title: title, Author: 'Holdover', Subject: `${heading.planned ? heading.work : 'unplanned outage'}, ${heading.site}`, Creator: 'Holdover', Producer: 'Holdover', CreationDate: date, ModDate: date },
-  })
-  // Dates of its own, so that the same record makes the same bytes.
-  doc.file(Buffer.from(paper.record), { name: 'record.json', type: 'application/json', description: 'The record with all that it is verified by', creationDate: date, modifiedDate: date, relationship: 'Data' } as never)
+  const subject = `${heading.planned ? heading.work : 'unplanned outage'}, ${heading.site}`
+  const doc = openDocument(paper.variant, paper.state.snapshot.site.paper, { title, subject, date: paper.now })
+  if (paper.variant === 'record') attachRecord(doc, paper.record, paper.now)
   const written = draw(doc, paper, fonts)
   written.catch((error: unknown) => doc.destroy(error instanceof Error ? error : new Error(String(error))))
   return { doc, written }
@@ -61,7 +62,7 @@ export function openRecordPdf(paper: RecordPaper, fonts: FontBytes): { doc: PDFK
 
 async function draw(doc: PDFKit.PDFDocument, paper: RecordPaper, fonts: FontBytes): Promise<void> {
   const type = new Typesetter(doc, fonts)
-  const root = paper.state.sealed ? `seal ${hashWords(paper.state.sealed.root)}` : 'not sealed'
+  const root = paper.state.sealed ? `seal ${hashWords(paper.state.sealed.root)}` : `not sealed, root ${hashWords(logRoot(paper.entries))}`
   const feet = new Feet(doc, type, `${paper.summary.heading.code ?? 'not numbered'} · ${root}`)
   const sheet = new Sheet(doc, type, paper.state.snapshot.site.paper, feet)
   drawFront(sheet, paper)
@@ -77,7 +78,10 @@ async function draw(doc: PDFKit.PDFDocument, paper: RecordPaper, fonts: FontByte
   await drawInstruments(sheet, paper)
   await drawLooseEnds(sheet, paper)
   await drawEntries(sheet, paper)
+  await drawPhotos(sheet, paper)
   await drawProof(sheet, paper)
+  drawCautions(sheet, paper)
+  drawVerifying(sheet, paper)
   sheet.end()
   feet.end()
   doc.end()

@@ -38,10 +38,11 @@ export async function drawPoints(sheet: Sheet, { summary }: RecordPaper): Promis
     line.proven ? clock(line.proven) : line.back && line.backSeen !== 'answers' ? 'proof due' : '',
   ]))
   sheet.y += 6
-  for (const { tag, excused, exception, inHand } of summary.pointLines) {
-    if (excused && !inHand) sheet.labelled(`${tag}, excused`, `${excused.reason}; instead: ${excused.measure} (${excused.by}, ${clock(excused)})`)
-    if (exception) sheet.labelled(`${tag}, left`, `${exception.reason}; ${exception.owner} until ${fullStampWords(exception.until, timeZone)} (signed by ${exception.by}, ${clock(exception)})`)
-  }
+  const notes = summary.pointLines.flatMap(({ tag, excused, exception, inHand }) => [
+    ...(excused && !inHand ? [[`${tag}, excused`, `${excused.reason}; instead: ${excused.measure} (${excused.by}, ${clock(excused)})`] as const] : []),
+    ...(exception ? [[`${tag}, left`, `${exception.reason}; ${exception.owner} until ${fullStampWords(exception.until, timeZone)} (signed by ${exception.by}, ${clock(exception)})`] as const] : []),
+  ])
+  if (notes.length > 0) sheet.list(() => notes.forEach(([label, words]) => sheet.labelled(label, words)))
   sheet.paragraph('Marks: ring = in auto, filled square = in hand, ring with a tick = back and proven, ring with a bar = excused.', { style: { size: 7.5 } })
 }
 

@@ -1,8 +1,11 @@
 import { palette } from '../../shared/look/palette'
+import { Pace } from './pace'
 import type { Style, Typesetter } from './typesetter'
 
 type Document = PDFKit.PDFDocument
-type Element = ReturnType<Document['struct']>
+export type Element = ReturnType<Document['struct']>
+/** A bookmark; pdfkit's types leave out what it is written from. */
+interface Bookmark { addItem: (title: string, options: object) => Bookmark, children: Bookmark[], outlineData: { Count?: number } }
 
 export const COLOURS = palette.paper
 /** Margins of the sheet, points; the foot holds page number and root. */
@@ -22,8 +25,11 @@ export class Sheet {
   readonly bottom: number
   /** the next free place, from the top of the page */
   y: number = MARGIN.top
+  readonly pace: Pace
   private readonly root: Element
   private section: Element
+  private openList: Element | null = null
+  private bookmark: Bookmark | null = null
 
   /** @param foot draws the foot of the page that was begun just now */
   constructor(readonly doc: Document, readonly type: Typesetter, paper: Paper, private readonly foot: { draw: (left: number, right: number, bottom: number) => void }) {
@@ -31,6 +37,7 @@ export class Sheet {
     this.right = width - MARGIN.side
     this.width = this.right - this.left
     this.bottom = height - MARGIN.foot
+    this.pace = new Pace(doc)
     this.root = doc.struct('Document')
     doc.addStructure(this.root)
     this.section = this.root
@@ -55,9 +62,10 @@ export class Sheet {
     return true
   }
 
-  /** A structure element in the present section, or in one that is given. */
-  element(kind: string, options: { alt?: string, scope?: string } = {}, parent: Element = this.section): Element {
+  /** A structure element in the present section, or in one that is given. @param columns that a cell of a table spans */
+  element(kind: string, { columns, ...options }: { alt?: string, scope?: 'Row' | 'Column', columns?: number, bbox?: [number, number, number, number] } = {}, parent: Element = this.section): Element {
     const element = this.doc.struct(kind as never, options as never)
+    if (columns !== undefined) (element as unknown as { dictionary: { data: Record<string, unknown> } }).dictionary.data.A = { O: 'Table', ColSpan: columns }
     parent.add(element)
     return element
   }
@@ -83,12 +91,19 @@ export class Sheet {
     this.root.add(this.section)
     if (this.y > MARGIN.top) this.y += 20
     this.need(keep + 24)
-    this.doc.outline.addItem(bookmark, { top: this.y - 6, left: this.doc.page.width } as never)
+    this.bookmark = this.mark(this.doc.outline as unknown as Bookmark, bookmark)
     this.y += 12
     const heading = this.element('H2')
     this.content(heading, 'H2', () => this.type.draw(title, this.left, this.y, { face: 'bold', size: 12.5, colour: COLOURS.ink }))
     heading.end()
     this.y += 9
+  }
+
+  /** A bookmark to this place below another: parts are open, what is below a part stays folded, which its count says by its sign (ISO 32000-1, 12.3.3). */
+  private mark(above: Bookmark, title: string): Bookmark {
+    const item = above.addItem(title, { top: this.y - 6, left: this.doc.page.width })
+    above.outlineData.Count = above.children.length * (above === this.bookmark ? -1 : 1)
+    return item
   }
 
   closeSection(): void {
@@ -105,20 +120,42 @@ export class Sheet {
     this.artifact(() => this.doc.moveTo(from, y).lineTo(to, y).lineWidth(width).strokeColor(colour).stroke())
   }
 
+  /** All that is drawn meanwhile by `paragraph` and `labelled` is an item of one list. */
+  list(draw: () => void): void {
+    const list = this.element('L')
+    this.openList = list
+    draw()
+    this.openList = null
+    list.end()
+  }
+
+  /** Elements of a paragraph: by itself, or as an item of the open list with its label. */
+  private block(labelled: boolean): { label: Element, labelKind: string, body: Element, bodyKind: string, end: () => void } {
+    if (!this.openList) {
+      const element = this.element('P')
+      return { label: element, labelKind: 'P', body: element, bodyKind: 'P', end: () => element.end() }
+    }
+    const item = this.element('LI', {}, this.openList)
+    const label = labelled ? this.element('Lbl', {}, item) : item
+    return { label, labelKind: 'Lbl', body: this.element('LBody', {}, item), bodyKind: 'LBody', end: () => item.end() }
+  }
+
   /** Words in lines, over as many pages as they need. */
-  paragraph(text: string, { style = {}, kind = 'P', left = this.left, width = this.right - left, after = 4 }: { style?: Style, kind?: string, left?: number, width?: number, after?: number } = {}): void {
+  paragraph(text: string, { style = {}, left = this.left, width = this.right - left, after = 4 }: { style?: Style, left?: number, width?: number, after?: number } = {}): void {
     const look = { size: 9, colour: COLOURS.ink, ...style }
     const height = look.size * 1.38
-    const element = this.element(kind)
+    const { body, bodyKind, end } = this.block(false)
     let rest = this.type.wrap(text, width, look)
+    // A short paragraph is not divided: one line by itself at the top of a page reads as a mistake.
+    if (rest.length <= 4) this.need(rest.length * height)
     while (rest.length > 0) {
       this.need(height)
       const now = rest.slice(0, Math.max(1, Math.floor(this.room / height)))
       rest = rest.slice(now.length)
-      this.content(element, kind, () => now.forEach((line, index) => this.type.draw(line, left, this.y + height * index + look.size, look)))
+      this.content(body, bodyKind, () => now.forEach((line, index) => this.type.draw(line, left, this.y + height * index + look.size, look)))
       this.y += height * now.length
     }
-    element.end()
+    end()
     this.y += after
   }
 
@@ -130,25 +167,25 @@ export class Sheet {
     const lines = this.type.wrap(text, this.width - column, look)
     const rows = Math.max(head.length, lines.length)
     this.need(Math.min(rows, 40) * height)
-    const element = this.element('P')
+    const block = this.block(true)
     for (let from = 0; from < rows;) {
       const count = Math.max(1, Math.min(rows - from, Math.floor(this.room / height)))
-      this.content(element, 'P', () => {
-        head.slice(from, from + count).forEach((line, index) => this.type.draw(line, this.left, this.y + height * index + look.size, { ...look, face: 'semibold' }))
-        lines.slice(from, from + count).forEach((line, index) => this.type.draw(line, this.left + column, this.y + height * index + look.size, look))
-      })
+      const [heads, words] = [head.slice(from, from + count), lines.slice(from, from + count)]
+      if (heads.length > 0) this.content(block.label, block.labelKind, () => heads.forEach((line, index) => this.type.draw(line, this.left, this.y + height * index + look.size, { ...look, face: 'semibold' })))
+      if (words.length > 0) this.content(block.body, block.bodyKind, () => words.forEach((line, index) => this.type.draw(line, this.left + column, this.y + height * index + look.size, look)))
       this.y += height * count
       from += count
       if (from < rows) this.newPage()
     }
-    element.end()
+    block.end()
     this.y += 3.5
   }
 
-  /** A smaller heading inside a part. */
+  /** A smaller heading inside a part, with a bookmark below the part's. */
   heading(title: string, keep = 84): void {
     this.y += 8
     this.need(keep + 16)
+    if (this.bookmark) this.mark(this.bookmark, title)
     const element = this.element('H3')
     this.content(element, 'H3', () => this.type.draw(title, this.left, this.y + 9, { face: 'semibold', size: 10, colour: COLOURS.ink }))
     element.end()

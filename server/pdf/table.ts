@@ -21,20 +21,22 @@ const LEADING = 11.4
 const PAD = 4.2
 const GAP = 8
 
-/** Gives the event loop to others after so many rows. */
+/** Others have their turn, and the reader catches up, after so many rows. */
 const ROWS_AT_ONCE = 20
 
 interface Placed { x: number, width: number, column: Column }
 
-/** A table over as many pages as it needs: the head again on each, no row drawn over another, long rows carried on. */
-export async function drawTable(sheet: Sheet, columns: readonly Column[], rows: readonly Row[]): Promise<void> {
+/** A table over as many pages as it needs: the head again on each, no row drawn over another, long rows carried on. @param rows each is asked for when it is drawn */
+export async function drawTable(sheet: Sheet, columns: readonly Column[], rows: Iterable<Row>): Promise<void> {
   const placed = place(sheet, columns)
   const table = sheet.element('Table')
   sheet.need(64)
   drawHead(sheet, placed, sheet.element('TR', {}, table))
-  for (const [index, row] of rows.entries()) {
+  let drawn = 0
+  for (const row of rows) {
     drawRow(sheet, placed, row, sheet.element('TR', {}, table))
-    if (index % ROWS_AT_ONCE === ROWS_AT_ONCE - 1) await new Promise(resolve => setImmediate(resolve))
+    drawn += 1
+    if (drawn % ROWS_AT_ONCE === 0) await sheet.pace.rest()
   }
   table.end()
 }
@@ -87,7 +89,7 @@ function drawRow(sheet: Sheet, placed: readonly Placed[], row: Row, element: Ret
   const cells = Array.isArray(row)
     ? placed.map((cell, index) => lay(sheet, cell, row[index] ?? ''))
     : [lay(sheet, { x: sheet.left, width: sheet.width, column: placed[0]!.column }, { text: row.across, style: { face: 'semibold', colour: COLOURS['ink-2'] } })]
-  const elements = cells.map(() => sheet.element('TD', {}, element))
+  const elements = cells.map(() => sheet.element('TD', Array.isArray(row) ? {} : { columns: placed.length }, element))
   const most = Math.max(1, ...cells.map(cell => cell.lines.length))
   const pageHolds = Math.floor((sheet.bottom - 100) / LEADING)
   // A row goes to the next page whole, unless no page could hold it.

@@ -109,6 +109,13 @@ describe('the record as a file', () => {
     expect(words.match(/ok [0-9a-f]{4}…[0-9a-f]{2}/g)!.length).toBeGreaterThanOrEqual(5)
   })
 
+  it('is a PDF for long keeping too, without the attached record', async () => {
+    const bytes = Buffer.from(await (await get('pdf?variant=a1b')).arrayBuffer())
+    expect(bytes.subarray(0, 8).toString('latin1')).toBe('%PDF-1.4')
+    expect(bytes.includes('record.json')).toBe(false)
+    expect((await get('pdf?variant=a4')).status).toBe(422)
+  })
+
   it('is CSV whose words no spreadsheet takes for a formula', async () => {
     const answer = await get('csv')
     expect(answer.headers.get('content-type')).toBe('text/csv; charset=utf-8')

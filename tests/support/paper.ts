@@ -4,7 +4,8 @@ import { readFonts } from '../../server/pdf/fonts'
 import type { FontBytes } from '../../server/pdf/fonts'
 import type { RecordPaper } from '../../server/pdf/record'
 import { openRecordPdf } from '../../server/pdf/record'
-import { flattened } from '../../server/utils/files/picture'
+import { flattened, printed } from '../../server/utils/files/picture'
+import type { PaperVariant } from '../../server/pdf/variant'
 import { recordFacts } from '../../server/utils/hold/record-facts'
 import { verifyEntries } from '../../server/utils/record/verify'
 import { recordText, sealHolds } from '../../shared/record/record-document'
@@ -19,12 +20,13 @@ export function testFonts(): Promise<FontBytes> {
   return fonts
 }
 
-export async function paperOf(writer: RecordWriter): Promise<RecordPaper> {
+export async function paperOf(writer: RecordWriter, variant: PaperVariant = 'record'): Promise<RecordPaper> {
   const { state, entries, files } = writer
   const now = Date.parse(entries.at(-1)!.receivedAt)
   const drawings = new Map<string, Uint8Array>()
   for (const [hash, bytes] of files) drawings.set(hash, await flattened(bytes))
-  return { state, entries, now, summary: summaryOf(state, entries, recordFacts(state, now), now), verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held: new Set(files.keys()), record: recordText(recordOf(writer)) }
+  const picture = async (hash: string) => { const bytes = files.get(hash); return bytes ? printed(bytes) : null }
+  return { state, entries, now, summary: summaryOf(state, entries, recordFacts(state, now), now), verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held: new Set(files.keys()), picture, variant, record: recordText(recordOf(writer)) }
 }
 
 /** The bytes of a paper. */

@@ -33,3 +33,14 @@ export async function inspectPicture(bytes: Uint8Array, sha256: string): Promise
 export async function flattened(bytes: Uint8Array): Promise<Uint8Array> {
   return sharp(bytes).flatten({ background: '#FFFFFF' }).greyscale().png({ compressionLevel: 9, adaptiveFiltering: false }).toBuffer()
 }
+
+/** Longest side of a photo on paper, pixels: about 200 to the inch. */
+const PRINTED_SIDE = 480
+
+/**
+ * A photo as it is printed: small, on white, in three colours (sRGB), the same bytes each time.
+ * @throws Error where the bytes are no picture
+ */
+export async function printed(bytes: Uint8Array): Promise<Uint8Array> {
+  return sharp(bytes).resize(PRINTED_SIDE, PRINTED_SIDE, { fit: 'inside', withoutEnlargement: true }).flatten({ background: '#FFFFFF' }).toColourspace('srgb').jpeg({ quality: 72 }).toBuffer()
+}

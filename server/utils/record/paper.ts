@@ -8,9 +8,10 @@ import { summaryOf } from '../../../shared/record/summary'
 import type { FontBytes } from '../../pdf/fonts'
 import { readFonts } from '../../pdf/fonts'
 import type { RecordPaper } from '../../pdf/record'
+import type { PaperVariant } from '../../pdf/variant'
 import type { Queries } from '../database'
 import { heldFiles } from '../files/keep'
-import { flattened } from '../files/picture'
+import { flattened, printed } from '../files/picture'
 import { fileStorage, readBytes } from '../files/storage'
 import { rulebookById } from '../holding'
 import { recordFacts } from '../hold/record-facts'
@@ -38,7 +39,7 @@ function textOf(state: OutageState, entries: StoredEntry[], checkpoints: Checkpo
 }
 
 /** All that the PDF is made from. Its date is that of the last entry, so that the same record makes the same bytes. */
-export async function readPaper(db: Queries, outage: OutageRow): Promise<RecordPaper> {
+export async function readPaper(db: Queries, outage: OutageRow, variant: PaperVariant = 'record'): Promise<RecordPaper> {
   const { entries, state } = await readRecord(db, outage)
   const now = Date.parse(entries.at(-1)?.receivedAt ?? outage.openedAt.toISOString())
   const held = await heldFiles(db, outage.id)
@@ -48,7 +49,18 @@ export async function readPaper(db: Queries, outage: OutageRow): Promise<RecordP
     const bytes = stands && held.has(drawing) ? await readBytes(fileStorage(), drawing) : null
     if (bytes) drawings.set(drawing, await flattened(bytes))
   }
-  return { state, entries, summary, now, verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held, record: textOf(state, entries, await readCheckpoints(db, outage.id)) }
+  const record = variant === 'record' ? textOf(state, entries, await readCheckpoints(db, outage.id)) : ''
+  return { state, entries, summary, now, verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held, picture: printedPhoto, variant, record }
+}
+
+/** A photo from the store, small; null where it cannot be had, which must not cost the reader the rest of the paper. */
+async function printedPhoto(hash: string): Promise<Uint8Array | null> {
+  try {
+    const bytes = await readBytes(fileStorage(), hash)
+    return bytes && await printed(bytes)
+  } catch {
+    return null
+  }
 }
 
 let fonts: Promise<FontBytes> | null = null
