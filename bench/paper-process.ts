@@ -25,7 +25,7 @@ async function readPaperOf(path: string): Promise<RecordPaper> {
   const state = foldLog(outage.id, entries)
   const now = Date.parse(entries.at(-1)!.receivedAt)
   const summary = summaryOf(state, entries, recordFacts(state, now), now)
-  return { state, entries, summary, now, verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings: new Map(), held: new Set(), picture: async () => null, variant: 'record', record }
+  return { state, entries, summary, now, verified: await verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings: new Map(), held: new Set(), picture: async () => null, variant: 'record', record }
 }
 
 /** The words of every entry by pdfkit alone, one under another. */

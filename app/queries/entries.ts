@@ -38,6 +38,11 @@ export async function putFile(outage: string, sha256: string, blob: Blob): Promi
   return { refused: data?.reason ?? message ?? 'The server will not have it' }
 }
 
+/** Hashes of the photos and drawings of an outage that the server holds. */
+export async function fetchHeldFiles(outage: string): Promise<ReadonlySet<string>> {
+  return new Set((await $fetch<{ held: string[] }>(`/api/outages/${outage}/files`, { retry: 0, timeout: 15_000 })).held)
+}
+
 /** The server's time, ISO 8601 UTC. */
 export async function fetchServerTime(): Promise<string> {
   return (await $fetch<{ time: string }>('/api/health', { retry: 0, timeout: 5000 })).time

@@ -28,7 +28,7 @@ export async function drawLooseEnds(sheet: Sheet, { summary }: RecordPaper): Pro
   if (summary.questions.length > 0) {
     sheet.begin('Questions')
     await drawTable(sheet, [{ label: 'No.', width: 30 }, { label: 'Question', width: 0.5 }, { label: 'Answer', width: 0.5 }],
-      summary.questions.map((line): Row => [String(line.seq), `${line.by}, ${clock(line.at)}: ${line.words}`, line.answer ? `${line.answer.by}, ${clock(line.answer.at)}: ${line.answer.words}` : 'none yet']))
+      summary.questions.map((line): Row => [String(line.seq), `${line.by}, ${clock(line.at)}${line.about ? `, about No. ${line.about.seq} (${line.about.did})` : ''}: ${line.words}`, line.answer ? `${line.answer.by}, ${clock(line.answer.at)}: ${line.answer.words}` : 'none yet']))
   }
 }
 

@@ -1,8 +1,9 @@
 import { clockWords, countWords, dateWords, offsetWords } from '../../shared/charts/words'
+import { attentionOf, numbered } from '../../shared/record/attention'
 import { isoTime } from '../../shared/record/entry'
 import { recordDisc } from '../../shared/record/record-charts'
 import type { RecordSummary, SignatureLine } from '../../shared/record/summary'
-import { attentionOf, spanWords, summaryRows, zoneWords } from '../../shared/record/summary-words'
+import { spanWords, summaryRows, zoneWords } from '../../shared/record/summary-words'
 import { drawDisc } from './charts'
 import type { RecordPaper } from './record'
 import type { Sheet } from './sheet'
@@ -133,13 +134,12 @@ function drawSignature(sheet: Sheet, paper: RecordPaper, { signature, did, none,
 
 /** What a reviewer must not miss, on the first page. */
 function drawAttention(sheet: Sheet, { state, summary }: RecordPaper): void {
-  const breaches = state.darks.flatMap(dark => dark.breach)
-  const points = attentionOf(summary, breaches, state.turnedBack?.reason ?? null)
+  const points = attentionOf(state, summary)
   sheet.begin('What to look at', 40)
   if (points.length === 0) { sheet.paragraph('Nothing out of the ordinary: no late round, no verdict, no point excused or left, no entry questioned, no clock more than five minutes off.', { style: { colour: COLOURS['ink-2'] } }); return }
   sheet.list(() => points.forEach(({ what, items }) => {
     const shown = items.slice(0, 8)
     const more = items.length > shown.length ? `; and ${countWords(items.length - shown.length, 'more', 'more')}, further on` : ''
-    sheet.labelled(what, `${shown.join(' · ')}${more}`)
+    sheet.labelled(what, `${shown.map(numbered).join(' · ')}${more}`)
   }))
 }

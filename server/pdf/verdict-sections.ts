@@ -1,9 +1,10 @@
 import { clockWords, minuteWords, temperatureWords } from '../../shared/charts/words'
+import { unreadCases } from '../../shared/record/attention'
 import { isoTime } from '../../shared/record/entry'
 import { accuracyWords, dayWords, doubtWords } from '../../shared/record/instrument-words'
 import { VERDICT_WORDS } from '../../shared/record/kinds/server'
 import type { VerdictLine } from '../../shared/record/record-lines'
-import { actDetail, unreadWords } from '../../shared/record/summary-words'
+import { actDetail } from '../../shared/record/summary-words'
 import { localWhy } from '../../shared/record/why-words'
 import type { RecordPaper } from './record'
 import type { Sheet } from './sheet'
@@ -32,8 +33,8 @@ export async function drawVerdicts(sheet: Sheet, { summary, state }: RecordPaper
   } else {
     sheet.paragraph('No case was found above its limit.')
   }
-  const unread = unreadWords(summary)
-  if (unread.length > 0) { sheet.y += 4; sheet.paragraph(`Not known for a while, for want of a reading in time: ${unread.join(', ')}. Each such verdict stands among the entries.`) }
+  const unread = unreadCases(summary)
+  if (unread.length > 0) { sheet.y += 4; sheet.paragraph(`Not known for a while, for want of a reading in time: ${unread.map(({ words }) => words).join(', ')}. Each such verdict stands among the entries.`) }
   if (summary.acts.length > 0) {
     sheet.heading('Acts')
     await drawTable(sheet, [{ label: 'No.', width: 26 }, { label: 'Time', width: 46 }, { label: 'Case', width: 0.26 }, { label: 'Act', width: 0.26 }, { label: 'Product, quantity, place', width: 0.48 }, { label: 'By', width: 78 }],

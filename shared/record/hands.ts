@@ -76,14 +76,14 @@ export function unlooked(state: OutageState, from: string, looked: readonly { wh
 }
 
 /** Every offer and taking over, in lines of words for whoever reviews the record. */
-export function handsLines(state: OutageState): string[] {
+export function handsLines(state: OutageState): { seq: number, words: string }[] {
   const offers = state.offers.map((offer) => {
     const from = nameOf(state, offer.from)
     const end = offer.end === null ? 'never taken' : `${offer.end.what}${offer.end.what !== 'taken' && offer.end.words !== '' ? `: ${offer.end.words}` : ''}`
-    return { seq: offer.mark.seq, words: `No. ${offer.mark.seq}: ${from} offered ${countWords(offer.open.length, 'open matter')} to ${offer.toName}; ${end}` }
+    return { seq: offer.mark.seq, words: `${from} offered ${countWords(offer.open.length, 'open matter')} to ${offer.toName}; ${end}` }
   })
-  const taken = state.taken.map(item => ({ seq: item.mark.seq, words: `No. ${item.mark.seq}: ${nameOf(state, item.by)} took over from ${nameOf(state, item.from)}, ${countWords(item.looked.length, 'matter')} looked at${item.offer === null ? `, without an offer: ${item.words}` : ''}` }))
-  return [...offers, ...taken].sort((a, b) => a.seq - b.seq).map(line => line.words)
+  const taken = state.taken.map(item => ({ seq: item.mark.seq, words: `${nameOf(state, item.by)} took over from ${nameOf(state, item.from)}, ${countWords(item.looked.length, 'matter')} looked at${item.offer === null ? `, without an offer: ${item.words}` : ''}` }))
+  return [...offers, ...taken].sort((a, b) => a.seq - b.seq)
 }
 
 /**

@@ -107,6 +107,8 @@ export interface RoundLine {
   /** readings of it that were late, and by how much at most, minutes */
   late: number
   latestBy: number
+  /** the entry of the reading that was latest; null where none was late */
+  latestSeq: number | null
 }
 
 /** Every round with what it brought. @param late readings that came later than they were due */
@@ -116,7 +118,7 @@ export function roundLines(state: OutageState, late: readonly LateReading[]): Ro
     const own = readings.filter(reading => reading.round === round)
     const nearest = own.filter(reading => reading.method === 'product').map(reading => ({ ...reading, over: overLimit(state, reading.caseId, reading) })).sort((a, b) => b.over - a.over || a.caseId.localeCompare(b.caseId))[0]
     const lateOwn = late.filter(item => item.seq !== null && own.some(reading => reading.seq === item.seq))
-    return { round, from, to, cases, racks, nearest: nearest ? { name: caseName(state, nearest.caseId), value: nearest.value, unit: nearest.unit } : null, late: lateOwn.length, latestBy: Math.max(0, ...lateOwn.map(item => item.minutes)) }
+    return { round, from, to, cases, racks, nearest: nearest ? { name: caseName(state, nearest.caseId), value: nearest.value, unit: nearest.unit } : null, late: lateOwn.length, latestBy: Math.max(0, ...lateOwn.map(item => item.minutes)), latestSeq: [...lateOwn].sort((a, b) => b.minutes - a.minutes || a.seq! - b.seq!)[0]?.seq ?? null }
   })
 }
 

@@ -12,6 +12,7 @@ import { handsLines } from './hands'
 import { caseName, darkMs, nameOf, pointsInHand, productReadings, proofsDue, watchedCases } from './select'
 import type { OutageState } from './state'
 import { voiceLine } from './voice'
+import { told } from './words'
 
 /** A clock that differs by more than this from the server's is pointed out, ms. */
 export const CLOCK_DIFFERENCE_MS = 5 * 60_000
@@ -32,8 +33,8 @@ export interface ActLine extends Line { caseId: string, name: string, act: strin
 /** An act that was asked for; `ended` null while it is open, and then `ends` says what would end it. */
 export interface OpeningLine { seq: number, at: number, caseId: string, name: string, cause: string, ended: (Line & { how: string }) | null, ends: string }
 export interface QuestionedLine { seq: number, entry: string, why: string[], settled: (Line & { words: string }) | null }
-export interface ClockLine { device: string, deviceName: string, name: string, /** largest difference, ms; positive: the device is ahead */ ms: number, entries: number }
-export interface QuestionLine extends Line { words: string, answer: (Line & { words: string }) | null }
+export interface ClockLine { device: string, deviceName: string, name: string, /** largest difference, ms; positive: the device is ahead */ ms: number, /** the entry with it */ seq: number, entries: number }
+export interface QuestionLine extends Line { words: string, /** the entry that it is about; null: the record as a whole */ about: { seq: number, did: string } | null, answer: (Line & { words: string }) | null }
 
 /** The figures of a record's front page and of its sections; page, PDF and CSV take them from here. */
 export interface RecordSummary {
@@ -58,8 +59,8 @@ export interface RecordSummary {
   questioned: QuestionedLine[]
   questions: QuestionLine[]
   /** decisions by voice, and changes of hands, each told in a line */
-  voices: string[]
-  hands: string[]
+  voices: { seq: number, words: string, /** not signed yet */ open: boolean }[]
+  hands: { seq: number, words: string }[]
   clocks: ClockLine[]
   corrections: CorrectionLine[]
   refusals: { seq: number, reason: string }[]
@@ -93,13 +94,19 @@ export function summaryOf(state: OutageState, entries: readonly StoredEntry[], f
     instruments: instrumentLines(state),
     decidedOtherwise: acceptedOf(entries, 'decided-otherwise').map(({ stored, entry }) => ({ ...lineOf(state, stored), name: caseName(state, entry.body.caseId), reason: entry.body.reason, clause: entry.body.clause })),
     questioned: state.questioned.map(item => ({ seq: item.seq, entry: item.entry, why: item.why, settled: item.settled ? { ...lineOfMark(state, item.settled.mark), words: item.settled.words } : null })),
-    questions: state.questions.map(item => ({ ...lineOfMark(state, item.mark), words: item.words, answer: item.answer ? { ...lineOfMark(state, item.answer.mark), words: item.answer.words } : null })),
-    voices: state.voices.map(voice => voiceLine(state, voice, now)),
+    questions: state.questions.map(item => ({ ...lineOfMark(state, item.mark), words: item.words, about: aboutOf(state, entries, item.about), answer: item.answer ? { ...lineOfMark(state, item.answer.mark), words: item.answer.words } : null })),
+    voices: state.voices.map(voice => ({ seq: voice.mark.seq, words: voiceLine(state, voice, now), open: voice.answer === null })),
     hands: handsLines(state),
     clocks: clockLines(state, entries),
     corrections: correctionLines(state, entries),
     refusals: state.refusals.map(({ seq, reason }) => ({ seq, reason })),
   }
+}
+
+/** The entry that a question names, where this record has it. */
+function aboutOf(state: OutageState, entries: readonly StoredEntry[], about: string | null): QuestionLine['about'] {
+  const stored = about === null ? undefined : entries.find(({ entry }) => entry.id === about)
+  return stored ? { seq: stored.seq, did: told(state, stored.entry).did } : null
 }
 
 function headingOf(state: OutageState): RecordSummary['heading'] {
@@ -184,11 +191,11 @@ function openingLines(state: OutageState): OpeningLine[] {
 /** Devices whose clock differed by more than five minutes, with the largest difference. */
 function clockLines(state: OutageState, entries: readonly StoredEntry[]): ClockLine[] {
   const byDevice = new Map<string, ClockLine>()
-  for (const { entry } of entries) {
+  for (const { seq, entry } of entries) {
     if (Math.abs(entry.skew) <= CLOCK_DIFFERENCE_MS) continue
-    const known = byDevice.get(entry.device) ?? { device: entry.device, deviceName: state.signers[entry.device]?.deviceName ?? 'Unknown device', name: nameOf(state, entry.by), ms: 0, entries: 0 }
+    const known = byDevice.get(entry.device) ?? { device: entry.device, deviceName: state.signers[entry.device]?.deviceName ?? 'Unknown device', name: nameOf(state, entry.by), ms: 0, seq, entries: 0 }
     known.entries++
-    if (Math.abs(entry.skew) > Math.abs(known.ms)) known.ms = entry.skew
+    if (Math.abs(entry.skew) > Math.abs(known.ms)) Object.assign(known, { ms: entry.skew, seq })
     byDevice.set(entry.device, known)
   }
   return [...byDevice.values()].sort((a, b) => a.device.localeCompare(b.device))

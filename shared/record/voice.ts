@@ -60,5 +60,5 @@ export function voiceLine(state: OutageState, voice: VoiceState, now: number): s
   const answer = voice.answer === null
     ? now > voiceDue(voice) ? 'not signed, and the 12 hours are over' : 'not signed yet'
     : `${voice.answer.what === 'denied' ? `denied: ${voice.answer.words}` : `signed by ${nameOf(state, voice.answer.mark.by)}`}${voice.answer.mark.at > voiceDue(voice) ? ', after the 12 hours' : ''}`
-  return `No. ${voice.mark.seq}: ${voice.supervisorName} ${spokenWords(state, voice.decision)}, taken down by ${nameOf(state, voice.takenBy)}; ${answer}`
+  return `${voice.supervisorName} ${spokenWords(state, voice.decision)}, taken down by ${nameOf(state, voice.takenBy)}; ${answer}`
 }

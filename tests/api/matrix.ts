@@ -102,6 +102,7 @@ export const MATRIX: Row[] = [
   { route: 'GET /api/outages/[id]/entries', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/entries`, unknown: `/api/outages/${NOTHING}/entries` },
   // An entry of nobody's is 422 to whoever may see the outage; who may sign what is judged entry by entry.
   { route: 'POST /api/outages/[id]/entries', expected: SITE(422), path: ids => `/api/outages/${ids.outage}/entries`, body: () => ({ entries: [{}] }), unknown: `/api/outages/${NOTHING}/entries` },
+  { route: 'GET /api/outages/[id]/files', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/files`, unknown: `/api/outages/${NOTHING}/files` },
   { route: 'GET /api/outages/[id]/files/[sha256]', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/files/${ids.file}`, unknown: `/api/outages/${NOTHING}/files/${HASH}` },
   // Bytes that are no picture are 422 to those who may send one.
   { route: 'PUT /api/outages/[id]/files/[sha256]', expected: [401, 422, 404, 403, 422, 403], path: ids => `/api/outages/${ids.outage}/files/${HASH}`, body: () => ({}), unknown: `/api/outages/${NOTHING}/files/${HASH}` },

@@ -48,6 +48,11 @@ describe('a photo or drawing', () => {
     expect(await again.json()).toEqual({ sha256: sha256Hex(drawing), mime: 'image/png', size: drawing.length })
   })
 
+  it('is among those that are held', async () => {
+    const answer = await world.people.auditor.client.fetch(`/api/outages/${outage}/files`)
+    expect(await answer.json()).toEqual({ held: [sha256Hex(drawing)] })
+  })
+
   it('comes back byte for byte, by its own kind, never to change, to the site\'s people alone', async () => {
     const answer = await world.people.auditor.client.fetch(path())
     expect(Buffer.from(await answer.arrayBuffer()).equals(drawing)).toBe(true)

@@ -26,7 +26,7 @@ export async function paperOf(writer: RecordWriter, variant: PaperVariant = 'rec
   const drawings = new Map<string, Uint8Array>()
   for (const [hash, bytes] of files) drawings.set(hash, await flattened(bytes))
   const picture = async (hash: string) => { const bytes = files.get(hash); return bytes ? printed(bytes) : null }
-  return { state, entries, now, summary: summaryOf(state, entries, recordFacts(state, now), now), verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held: new Set(files.keys()), picture, variant, record: recordText(recordOf(writer)) }
+  return { state, entries, now, summary: summaryOf(state, entries, recordFacts(state, now), now), verified: await verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held: new Set(files.keys()), picture, variant, record: recordText(recordOf(writer)) }
 }
 
 /** The bytes of a paper. */

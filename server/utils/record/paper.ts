@@ -50,7 +50,7 @@ export async function readPaper(db: Queries, outage: OutageRow, variant: PaperVa
     if (bytes) drawings.set(drawing, await flattened(bytes))
   }
   const record = variant === 'record' ? textOf(state, entries, await readCheckpoints(db, outage.id)) : ''
-  return { state, entries, summary, now, verified: verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held, picture: printedPhoto, variant, record }
+  return { state, entries, summary, now, verified: await verifyEntries(state, entries), sealHolds: sealHolds(state, entries), drawings, held, picture: printedPhoto, variant, record }
 }
 
 /** A photo from the store, small; null where it cannot be had, which must not cost the reader the rest of the paper. */

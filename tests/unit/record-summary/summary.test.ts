@@ -1,11 +1,12 @@
 // The figures are counted by hand from the scenario that is signed; no published source.
 import { beforeAll, describe, expect, it } from 'vitest'
+import { attentionOf, numbered, openCount } from '../../../shared/record/attention'
 import { recordFacts } from '../../../server/utils/hold/record-facts'
 import { sealHolds } from '../../../shared/record/record-document'
 import { recordDisc, temperatureCharts } from '../../../shared/record/record-charts'
 import { summaryOf } from '../../../shared/record/summary'
 import type { RecordSummary } from '../../../shared/record/summary'
-import { attentionOf, hashWords, signatureDigits, spanWords, summaryRows, zoneWords } from '../../../shared/record/summary-words'
+import { hashWords, signatureDigits, spanWords, summaryRows, zoneWords } from '../../../shared/record/summary-words'
 import { busyRecord } from '../../support/busy'
 import type { RecordWriter } from '../../support/record'
 import { buildRecord } from '../../support/scenario'
@@ -44,7 +45,7 @@ describe('an outage without trouble', () => {
       { what: 'sealed', by: 'Ines Calloway', role: 'supervisor', stands: true },
     ])
     expect(summary.signatures[0]!.meaning).toContain('I did or saw')
-    expect(attentionOf(summary).map(item => item.what)).toEqual(['No reading in time'])
+    expect(attentionOf(writer.state, summary).map(item => item.what)).toEqual(['No reading in time'])
     expect(sealHolds(writer.state, writer.entries)).toBe(true)
   })
 
@@ -88,14 +89,25 @@ describe('an outage with everything in it', () => {
   })
 
   it('points out every kind of trouble', () => {
-    const attention = attentionOf(summary, ['a breach'], 'a reason')
-    expect(attention.map(item => item.what)).toEqual(['Questioned entries', 'Control lost past a gate', 'Turned back', 'Still in hand', 'Left by exception', 'Excused points', 'Verdicts', 'Acts', 'Decided otherwise', 'No reading in time', 'Clock differences', 'Corrections', 'Refused entries'])
-    const of = (what: string) => attention.find(item => item.what === what)!.items.join('\n')
+    const attention = attentionOf(writer.state, summary)
+    expect(attention.map(item => item.what)).toEqual(['Questioned entries', 'Turned back', 'Still in hand', 'Left by exception', 'Excused points', 'Verdicts', 'Acts', 'Decided otherwise', 'No reading in time', 'Warmer than foretold', 'Clock differences', 'Corrections', 'Refused entries'])
+    const of = (what: string) => attention.find(item => item.what === what)!.items.map(numbered).join('\n')
     expect(of('Questioned entries')).toContain('there is no such step. Dealt with by Ada Quill: pressed the wrong line')
     expect(of('Clock differences')).toContain('7 min ahead, 1 entry')
     expect(of('Corrections')).toContain('42.3 °F, misread the display')
     expect(of('Corrections')).toContain('does not count, probe was in my hand')
     expect(of('Left by exception')).toContain('ASH-1: Bram Oster')
+    expect(of('Still in hand')).toMatch(/^No\. \d+: ASH-1 anti-sweat heaters, doors, on$/)
+    expect(openCount(attention)).toBe(0)
+  })
+
+  it('leads each thing to the entry that it comes from', () => {
+    const kinds = new Map(writer.entries.map(stored => [stored.seq, stored.entry.kind]))
+    const led = Object.fromEntries(attentionOf(writer.state, summary).map(({ what, items }) => [what, [...new Set(items.map(({ seq }) => seq === null ? null : kinds.get(seq)))]]))
+    expect(led).toEqual({
+      'Questioned entries': ['step-ticked'], 'Turned back': ['turned-back'], 'Still in hand': ['point-in-hand'], 'Left by exception': ['left-in-exception'], 'Excused points': ['point-excused'],
+      'Verdicts': ['verdict-changed'], 'Acts': ['act-signed'], 'Decided otherwise': ['decided-otherwise'], 'No reading in time': ['verdict-changed'], 'Warmer than foretold': ['reading-taken'], 'Clock differences': ['note-added'], 'Corrections': ['correction'], 'Refused entries': ['entry-refused'],
+    })
   })
 
   it('says what a correction corrects, in its first words', () => {
