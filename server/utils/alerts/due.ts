@@ -50,7 +50,8 @@ export function alertsDue(state: OutageState, now: number, settings: AlertSettin
     const mine = open.filter(item => item.alert === alert)
     const held = mine.filter(item => findings.some(finding => covers(item, finding)))
     due.over.push(...mine.filter(item => !held.includes(item)).map(item => item.key))
-    due.passOn.push(...held.flatMap(item => passOn(item, now, settings)))
+    const yields = open.some(item => item.alert === ALERT_RULES[alert].yieldsTo)
+    if (!yields) due.passOn.push(...held.flatMap(item => passOn(item, now, settings)))
     due.raise.push(...raise(view, alert, findings.filter(finding => !held.some(item => covers(item, finding))), settings))
   }
   return due

@@ -17,6 +17,8 @@ export interface AlertRule {
   start: 1 | 2
   /** all that is so goes into one alert, instead of one for each */
   together: boolean
+  /** while one of this kind is open it is not passed on: that one tells the next people already */
+  yieldsTo?: AlertName
   find: (view: AlertView) => Finding[]
   words: (view: AlertView, about: readonly string[]) => string
   /** when what is feared comes to pass, Unix ms; null: it has no time */

@@ -41,6 +41,7 @@ function holdWords({ state, now, forecasts, holdEnds }: AlertView): string {
 export const ROUND_LATE: AlertRule = {
   start: 1,
   together: true,
+  yieldsTo: 'round-missed',
   find: view => lateFindings(view, due => due.dueAt + LATE_MS),
   words: (view, about) => `the round is late: ${dueWords(view, about)}${holdWords(view)}. Take the round now.`,
   until: view => view.holdEnds,
