@@ -32,7 +32,9 @@ function classSettingWords(value: unknown, unit: 'F' | 'C'): string {
 const DEEDS: Record<ChangeDeed, string> = { added: 'added', changed: 'changed', deleted: 'deleted' }
 const OTHER_LABELS: Record<string, string> = {
   email: 'E-mail', name: 'Name', role: 'Role', sites: 'Sites', switchedOff: 'Switched off', password: 'Password',
-  steps: 'Steps', rollBack: 'Way back', addedPoints: 'Added points', changedPoints: 'Changed points',
+  steps: 'Steps', rollBack: 'Way back', addedPoints: 'Added points',
+  first: 'Told first', second: 'Told second', third: 'Told third', secondAfter: 'Told second after, minutes', thirdAfter: 'Told third after, minutes',
+  changedPoints: 'Changed points',
 }
 
 /** 'Rack A, a rack, changed'; 'The site itself changed'. */
@@ -40,6 +42,7 @@ export function changeTitle({ subject, subjectName, deed }: ChangeItem): string 
   switch (subject) {
     case 'site': return deed === 'added' ? 'The site added' : 'The site itself changed'
     case 'limits': return 'Limits changed'
+    case 'alerts': return 'Alert rules changed'
     case 'person': return `${subjectName} ${DEEDS[deed]}`
     case 'work-kind': return `${subjectName} ${DEEDS[deed]}`
     default: return `${subjectName}, ${RESOURCE_WORDS[subject].one}, ${DEEDS[deed]}`

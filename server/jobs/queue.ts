@@ -103,9 +103,9 @@ export async function enqueue(db: Queries, name: string, data: object, key?: str
 }
 
 /** Asks for a run of a job that would come by itself later; where there is no queue, as in a script, it does come later. */
-export async function hasten(db: Queries, name: string): Promise<void> {
+export async function hasten(db: Queries, name: string, data: object = {}): Promise<void> {
   // Under a key of its own: two transactions that ask for the same would wait for each other.
-  if (boss) await enqueue(db, name, {}, randomUUID())
+  if (boss) await enqueue(db, name, data, randomUUID())
 }
 
 /** Waits a second for runs that are on; what is not over by then is tried again by whoever comes. */

@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { RESOURCE_NAMES } from './site-view'
 
 /** What an administrator changes; its history is kept for ever. */
-export const CHANGE_SUBJECTS = ['site', 'limits', ...RESOURCE_NAMES, 'person', 'work-kind'] as const
+export const CHANGE_SUBJECTS = ['site', 'limits', 'alerts', ...RESOURCE_NAMES, 'person', 'work-kind'] as const
 export type ChangeSubject = (typeof CHANGE_SUBJECTS)[number]
 
 export const CHANGE_DEEDS = ['added', 'changed', 'deleted'] as const

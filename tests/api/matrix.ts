@@ -3,6 +3,7 @@
  * right request; where a role is let through and the request does nothing here, its answer to an empty
  * one (422, 400) shows that it got past the guards.
  */
+import { PLAIN_ALERT_RULES } from '../../shared/schemas/alert-rules'
 import type { World } from '../support/world'
 
 /** Who asks, in the order of a row's statuses. */
@@ -70,6 +71,10 @@ export const MATRIX: Row[] = [
   { route: 'POST /api/sites', expected: ADMIN(422), path: () => '/api/sites', body: () => ({}) },
   { route: 'GET /api/sites/[siteId]', expected: SITE(200), path: ids => `/api/sites/${ids.site}`, unknown: `/api/sites/${NOTHING}` },
   { route: 'PATCH /api/sites/[siteId]', expected: SITE_ADMIN(200), path: ids => `/api/sites/${ids.site}`, body: () => ({}), unknown: `/api/sites/${NOTHING}` },
+  { route: 'GET /api/alerts', expected: ALL(200), path: () => '/api/alerts' },
+  { route: 'POST /api/outages/[id]/alerts/acknowledge', expected: [401, 404, 404, 403, 404, 404], path: ids => `/api/outages/${ids.outage}/alerts/acknowledge`, body: () => ({ key: 'overrun work 1' }), unknown: `/api/outages/${NOTHING}/alerts/acknowledge` },
+  { route: 'GET /api/sites/[siteId]/alerts', expected: SITE(200), path: ids => `/api/sites/${ids.site}/alerts`, unknown: `/api/sites/${NOTHING}/alerts` },
+  { route: 'PUT /api/sites/[siteId]/alerts', expected: SITE_ADMIN(200), path: ids => `/api/sites/${ids.site}/alerts`, body: () => PLAIN_ALERT_RULES, unknown: `/api/sites/${NOTHING}/alerts` },
   { route: 'GET /api/sites/[siteId]/limits', expected: SITE(200), path: ids => `/api/sites/${ids.site}/limits`, unknown: `/api/sites/${NOTHING}/limits` },
   { route: 'PUT /api/sites/[siteId]/limits', expected: SITE_ADMIN(200), path: ids => `/api/sites/${ids.site}/limits`, body: () => ({ holding: { addAccuracy: false, allowsMinus12: false, classes: [] }, instrumentCheckDays: 90 }), unknown: `/api/sites/${NOTHING}/limits` },
   { route: 'GET /api/sites/[siteId]/history', expected: SITE(200), path: ids => `/api/sites/${ids.site}/history`, unknown: `/api/sites/${NOTHING}/history` },

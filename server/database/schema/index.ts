@@ -1,3 +1,4 @@
+export * from './alerts'
 export * from './changes'
 export * from './lessons'
 export * from './mails'

@@ -1,5 +1,7 @@
 import { sql } from 'drizzle-orm'
 import { boolean, check, date, doublePrecision, index, integer, jsonb, pgTable, text, timestamp, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
+import type { AlertRules } from '../../../shared/schemas/alert-rules'
+import { PLAIN_ALERT_RULES } from '../../../shared/schemas/alert-rules'
 import { CASE_KINDS } from '../../../shared/schemas/case-kinds'
 import type { DefrostSchedule, QuietHours, SiteHolding } from '../../../shared/schemas/equipment'
 import { DEFROST_KINDS, INSTRUMENT_CHECK_DAYS, INSTRUMENT_KINDS, ON_LOSS, PAPERS, PLAIN_HOLDING, PRESSURE_UNITS, STAGES, TEMPERATURE_UNITS } from '../../../shared/schemas/equipment'
@@ -31,6 +33,7 @@ export const sites = pgTable('sites', {
   quietHours: jsonb().$type<QuietHours[]>().notNull().default([]),
   holding: jsonb().$type<SiteHolding>().notNull().default(PLAIN_HOLDING), // stricter than the rulebook; set by its own route, which keeps its history
   instrumentCheckDays: integer().notNull().default(INSTRUMENT_CHECK_DAYS),
+  alertRules: jsonb().$type<AlertRules>().notNull().default(PLAIN_ALERT_RULES), // who is told of alerts; set by its own route, which keeps its history
   outageCount: integer().notNull().default(0), // the last number given to an outage here
   ...stamps(),
 }, table => [

@@ -13,6 +13,7 @@ import { maySeeSite } from '../access'
 import type { Database, Queries } from '../database'
 import { notFound } from '../errors'
 import type { PushResult, Refusal } from './admit'
+import { hastenAlerts } from '../alerts/hasten'
 import { admit, refuse } from './admit'
 import { openingFault } from './check-opening'
 import type { Draft } from './draft'
@@ -48,6 +49,7 @@ export async function appendEntries(db: Database, person: Person, outageId: stri
     for (const [index, item] of items.entries()) results.push(await appendOne(draft, known, person, item, `entries[${index}]`))
     if (draft.state.size > before) {
       await followUp(draft)
+      await hastenAlerts(draft)
       await saveProjection(draft)
     }
     return { results, size: draft.state.size, phase: draft.state.phase, code: draft.state.code, checkpoint: draft.checkpoint }

@@ -2,6 +2,7 @@ import { asc, gt } from 'drizzle-orm'
 import { foldLog } from '../../../shared/record/fold'
 import { frontierOf } from '../../../shared/record/merkle'
 import { outages } from '../../database/schema'
+import { rebuildAlerts } from '../alerts/keep'
 import type { Database } from '../database'
 import { renewSearch } from '../records/save'
 import { saveProjection } from './draft'
@@ -27,6 +28,7 @@ export async function rebuildProjections(db: Database): Promise<{ count: number,
       if (row.size !== state.size || row.phase !== state.phase) differed.push(row.code)
       await saveProjection({ db: tx, state, frontier: frontierOf(log), checkpoint: (await readCheckpoints(tx, row.id)).at(-1) ?? null, signer, now: row.updatedAt.getTime(), rows: [], cached: null })
       await renewSearch(tx, state, log)
+      await rebuildAlerts(tx, state)
     })
   }
 }
