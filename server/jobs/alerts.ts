@@ -6,8 +6,6 @@ import { ALERT_NOW } from './names'
 export const alertsJob: Job = {
   name: 'alerts',
   every: 20,
-  // Each outage is locked by its row, and what was raised stands in its log.
-  together: true,
   run: sweepAlerts,
 }
 

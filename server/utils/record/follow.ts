@@ -1,18 +1,14 @@
-import { eq } from 'drizzle-orm'
 import { isoTime } from '../../../shared/record/entry'
 import { watchedCases } from '../../../shared/record/select'
 import type { CaseState } from '../../../shared/record/state'
-import { outages } from '../../database/schema'
-import type { Database } from '../database'
 import { actNeeded, holdsAgain } from '../hold/act-needed'
 import { forecastCase } from '../hold/for-outage'
 import { LATE_MS } from '../hold/history'
 import { assessCase } from '../holding/for-outage'
 import type { JudgedCase } from '../holding/for-outage'
 import type { Draft } from './draft'
-import { addServerEntry, draftOf, saveProjection } from './draft'
+import { addServerEntry } from './draft'
 import { plantChanges } from './plant-entries'
-import { serverSigner } from './server-signer'
 
 /** Entries of the server's own after others were added: a warning of the plant or a verdict where it changed, an act where one is needed. */
 export async function followUp(draft: Draft): Promise<void> {
@@ -44,24 +40,6 @@ async function enterVerdict(draft: Draft, item: CaseState, judged: JudgedCase): 
     act: judged.act,
     why: judged.why,
     judgedAt: isoTime(draft.now),
-  })
-}
-
-/**
- * Looks at an outage anew although nobody has signed anything: time alone brings a verdict, or an act.
- * @param now Unix ms
- * @returns whether an entry was added
- */
-export async function lookAgain(db: Database, outageId: string, now: number): Promise<boolean> {
-  return db.transaction(async (tx) => {
-    const [row] = await tx.select().from(outages).where(eq(outages.id, outageId)).for('update')
-    if (!row) return false
-    const draft = await draftOf(tx, outageId, row, await serverSigner(tx), now)
-    const before = draft.state.size
-    await followUp(draft)
-    if (draft.state.size === before) return false
-    await saveProjection(draft)
-    return true
   })
 }
 
