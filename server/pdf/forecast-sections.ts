@@ -1,14 +1,12 @@
 import { clockWords, countWords, numberWords } from '../../shared/charts/words'
 import { isoTime } from '../../shared/record/entry'
-import { differenceOf } from '../../shared/record/forecast-summary'
+import { differenceOf, differenceWords } from '../../shared/record/forecast-summary'
 import type { RecordPaper } from './record'
 import type { Sheet } from './sheet'
 import { drawTable } from './table'
 
 /** Rounds that stand side by side. */
 const ROUNDS_ACROSS = 9
-
-const signed = (value: number) => `${value > 0 ? '+' : value < 0 ? '−' : ''}${numberWords(Math.abs(value))}`
 
 /** What the fits foretold against what came: by case, then the difference of each reading. */
 export async function drawForecasts(sheet: Sheet, { summary }: RecordPaper): Promise<void> {
@@ -17,13 +15,13 @@ export async function drawForecasts(sheet: Sheet, { summary }: RecordPaper): Pro
   sheet.begin('Forecast against what came')
   sheet.paragraph(`Each reading without control is set beside what the fit to the readings before it foretold for that moment; differences are came less foretold, °${unit}. A case came early when it was found over its limit before the careful forecast had it there.`)
   await drawTable(sheet, [{ label: 'Case', width: 1 }, { label: 'Readings', width: 52, align: 'right' }, { label: 'Median', width: 46, align: 'right' }, { label: 'Largest', width: 46, align: 'right' }, { label: 'Came early', width: 58 }],
-    cases.map(item => [item.name, String(item.lines.length), numberWords(item.median), signed(item.largest), item.early ? 'yes' : 'no']))
+    cases.map(item => [item.name, String(item.lines.length), numberWords(item.median), differenceWords(item.largest), item.early ? 'yes' : 'no']))
   const most = Math.max(...cases.map(item => item.lines.length))
   for (let from = 0; from < most; from += ROUNDS_ACROSS) {
     const across = Array.from({ length: Math.min(ROUNDS_ACROSS, most - from) }, (_, index) => from + index)
     sheet.heading(`Differences, °${unit}, ${across.length === 1 ? `reading ${from + 1}` : `readings ${from + 1} to ${from + across.length}`} of each case`)
     await drawTable(sheet, [{ label: 'Case', width: 1 }, ...across.map(index => ({ label: String(index + 1), width: 42, align: 'right' as const }))],
-      cases.filter(item => item.lines.length > from).map(item => [item.name, ...across.map((index) => { const line = item.lines[index]; return line ? signed(differenceOf(line)) : '' })]))
+      cases.filter(item => item.lines.length > from).map(item => [item.name, ...across.map((index) => { const line = item.lines[index]; return line ? differenceWords(differenceOf(line)) : '' })]))
   }
 }
 

@@ -19,7 +19,7 @@ export async function drawPlan(sheet: Sheet, { state, summary }: RecordPaper): P
   sheet.begin('Plan')
   const { duration } = plan
   const facts = [
-    `${state.planned ? `Work: ${plan.workKind.name}` : 'Unplanned outage'}${state.cause ? `; cause: ${state.cause}` : ''}.`,
+    `${state.planned ? `Work: ${plan.workKind.name}` : 'Unplanned outage'}${state.cause ? `; cause: ${state.cause.replace(/\.$/, '')}` : ''}.`,
     plan.startsAt ? `Start planned for ${fullStampWords(Date.parse(plan.startsAt), timeZone)}.` : '',
     duration.darkMean > 0 ? `Without control: ${minuteWords(duration.darkMean)} likely, over by ${minuteWords(duration.dark19in20)} 19 times in 20; turning back takes up to ${minuteWords(duration.rollBack19in20)}. These are estimates.` : '',
     state.approved ? `Approved by ${nameOf(state, state.approved.by)}, ${fullStampWords(state.approved.at, timeZone)}.` : state.planned ? 'Not approved.' : '',

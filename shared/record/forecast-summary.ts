@@ -1,3 +1,4 @@
+import { numberWords } from '../charts/words'
 import type { ForecastLine } from './record-lines'
 import { caseName } from './select'
 import type { OutageState } from './state'
@@ -41,6 +42,12 @@ export function forecastSummary(state: OutageState, lines: readonly ForecastLine
 /** What came less what was foretold, in the site's unit. */
 export function differenceOf({ came, foretold }: ForecastLine): number {
   return came - foretold
+}
+
+/** "+0.4", "−1.2", and "0.0" for what is nothing when it is rounded. */
+export function differenceWords(difference: number): string {
+  const words = numberWords(Math.abs(difference))
+  return words === numberWords(0) ? words : `${difference > 0 ? '+' : '−'}${words}`
 }
 
 function medianOf(differences: readonly number[]): number {

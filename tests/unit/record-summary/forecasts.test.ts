@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { forecastSummary } from '../../../shared/record/forecast-summary'
+import { differenceWords, forecastSummary } from '../../../shared/record/forecast-summary'
 import type { ForecastLine } from '../../../shared/record/record-lines'
 import { DAIRY, FISH, storyTo } from '../record/store'
 
@@ -22,5 +22,11 @@ describe('forecast against what came, in sum', () => {
 
   it('has nothing to say of a record without readings in dark', () => {
     expect(forecastSummary(state, [])).toMatchObject({ readings: 0, median: 0, early: [], cases: [] })
+  })
+})
+
+describe('a difference in words', () => {
+  it('bears its sign, but none where it is nothing once it is rounded', () => {
+    expect([0.44, -1.2, 0.04, -0.04, 0].map(differenceWords)).toEqual(['+0.4', '−1.2', '0.0', '0.0', '0.0'])
   })
 })
