@@ -3,6 +3,8 @@ import { describe, expect, it } from 'vitest'
 import { recordFacts } from '../../../server/utils/hold/record-facts'
 import type { Attention } from '../../../shared/record/attention'
 import { attentionOf, openCount } from '../../../shared/record/attention'
+import { clockWords } from '../../../shared/charts/words'
+import { isoTime } from '../../../shared/record/entry'
 import { sealGate } from '../../../shared/record/gates'
 import { summaryOf } from '../../../shared/record/summary'
 import type { RecordWriter } from '../../support/record'
@@ -46,6 +48,22 @@ describe('a late round', () => {
     const [late, never] = itemsOf(writer, 'Late rounds')
     expect(late).toMatchObject({ words: expect.stringMatching(/^Round 1: 1 reading late, by \d+ min at most$/) as string, seq })
     expect(never).toMatchObject({ words: expect.stringMatching(/cases not read when due$/) as string, seq: null })
+  })
+})
+
+describe('an alert', () => {
+  it('says whom it reached, and whether anybody acknowledged it', () => {
+    const writer = buildRecord({ until: 'dark' })
+    const at = isoTime(writer.now)
+    const raised = { alert: 'round-late', about: [caseId('Fish service')], level: 1, words: 'Quarry Street: Fish service is late', until: null, to: ['Ines Calloway'], judgedAt: at } as const
+    writer.serverEntry('alert-raised', { key: 'round-late one', ...raised })
+    writer.serverEntry('alert-raised', { key: 'round-late two', ...raised, to: [] })
+    writer.serverEntry('alert-acknowledged', { key: 'round-late one', person: supervisor.id, name: supervisor.name, acknowledgedAt: at })
+    const clock = clockWords(at, 'America/Chicago')
+    expect(itemsOf(writer, 'Alerts').map(({ words }) => words)).toEqual([
+      `Round late at ${clock}, told to Ines Calloway; acknowledged by Ines Calloway at ${clock}`,
+      `Round late at ${clock}, told to nobody: no one is named for it; acknowledged by nobody`,
+    ])
   })
 })
 
