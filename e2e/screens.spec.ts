@@ -55,13 +55,13 @@ test('the screens of the others', async ({ page, open }) => {
   const { items } = await (await page.request.get('/api/outages')).json() as { items: Item[] }
   const submitted = items.find(item => item.phase === 'submitted')!
   const sealed = items.find(item => item.phase === 'sealed')!
-  for (const path of ['/', '/records', `/records/${submitted.id}`, `/outages/${submitted.id}`, `/outages/${submitted.id}/review`]) await look(page, path, false)
+  for (const path of ['/', '/records', '/insights', '/exports', `/records/${submitted.id}`, `/outages/${submitted.id}`, `/outages/${submitted.id}/review`]) await look(page, path, false)
   const desk = await open('desk')
   await signInAs(desk, people.auditor)
-  for (const path of ['/', '/records', `/records/${sealed.id}`]) await look(desk, path, false)
+  for (const path of ['/', '/records', '/insights', '/exports', `/records/${sealed.id}`]) await look(desk, path, false)
   const admin = await open('desk')
   await signInAs(admin, people.administrator)
   const sites = await (await admin.request.get('/api/sites')).json() as { id: string }[]
   const technician = (await (await admin.request.get('/api/people')).json() as { items: { id: string, email: string }[] }).items.find(person => person.email === people.technician)!
-  for (const path of ['/', '/people', '/people/new', `/people/${technician.id}`, '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/history`, '/people/history', '/work-kinds/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
+  for (const path of ['/', '/people', '/people/new', `/people/${technician.id}`, '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/history`, '/people/history', '/work-kinds/history', '/exports/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
 })

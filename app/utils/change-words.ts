@@ -29,12 +29,13 @@ function classSettingWords(value: unknown, unit: 'F' | 'C'): string {
   return parts.length > 0 ? parts.join(' and ') : 'as the rulebook'
 }
 
-const DEEDS: Record<ChangeDeed, string> = { added: 'added', changed: 'changed', deleted: 'deleted' }
+const DEEDS: Record<ChangeDeed, string> = { added: 'added', changed: 'changed', deleted: 'deleted', exported: 'exported', downloaded: 'downloaded' }
 const OTHER_LABELS: Record<string, string> = {
   email: 'E-mail', name: 'Name', role: 'Role', sites: 'Sites', switchedOff: 'Switched off', password: 'Password',
   steps: 'Steps', rollBack: 'Way back', addedPoints: 'Added points',
   first: 'Told first', second: 'Told second', third: 'Told third', secondAfter: 'Told second after, minutes', thirdAfter: 'Told third after, minutes',
   changedPoints: 'Changed points',
+  records: 'Records', bytes: 'Bytes',
 }
 
 /** 'Rack A, a rack, changed'; 'The site itself changed'. */
@@ -44,7 +45,8 @@ export function changeTitle({ subject, subjectName, deed }: ChangeItem): string 
     case 'limits': return 'Limits changed'
     case 'alerts': return 'Alert rules changed'
     case 'person': return `${subjectName} ${DEEDS[deed]}`
-    case 'work-kind': return `${subjectName} ${DEEDS[deed]}`
+    case 'work-kind':
+    case 'export': return `${subjectName} ${DEEDS[deed]}`
     default: return `${subjectName}, ${RESOURCE_WORDS[subject].one}, ${DEEDS[deed]}`
   }
 }
@@ -56,7 +58,7 @@ export function changeLines(change: ChangeItem, site: SiteView | null): string[]
     const spec = specOf(change.subject, field)
     const words = (value: unknown) => valueWords(value, field, spec, site)
     const label = spec?.label ?? OTHER_LABELS[field] ?? field
-    if (change.deed === 'added') return `${label}: ${words(after)}`
+    if (change.deed === 'added' || change.subject === 'export') return `${label}: ${words(after)}`
     if (change.deed === 'deleted') return `${label}: ${words(before)}`
     return before === null && (field === 'password' || field.endsWith('Points')) ? `${label}: ${words(after)}` : `${label}: ${words(after)}, before ${words(before)}`
   })

@@ -22,6 +22,7 @@ export function navigationFor(role: string | null | undefined): NavigationItem[]
     { label: 'Sites', to: '/sites' },
     { label: 'Rulebooks', to: '/rulebooks' },
   ]
+  if (role !== 'technician') items.splice(2, 0, { label: 'Insights', to: '/insights' })
   if (role === 'administrator') items.push({ label: 'People', to: '/people' })
   items.push({ label: 'Account', to: '/account' })
   return items

@@ -8,8 +8,8 @@ import { caseName, nameOf } from './select'
 import type { OutageState, ReadingState } from './state'
 
 /** Excel reads UTF-8 only behind this mark. */
-const BYTE_ORDER_MARK = '\uFEFF'
-const HEAD = ['seq', 'round', 'case', 'time', 'time_utc', 'value', 'unit', 'value_signed', 'limit', 'limit_unit', 'method', 'instrument', 'instrument_check', 'by', 'verdict', 'standing', 'corrected', 'struck', 'words'] as const
+export const BYTE_ORDER_MARK = '\uFEFF'
+export const READINGS_HEAD = ['seq', 'round', 'case', 'time', 'time_utc', 'value', 'unit', 'value_signed', 'limit', 'limit_unit', 'method', 'instrument', 'instrument_check', 'by', 'verdict', 'standing', 'corrected', 'struck', 'words'] as const
 
 /**
  * One cell by RFC 4180. Words that a spreadsheet would take for a formula get an apostrophe before
@@ -44,25 +44,31 @@ function withOffset(second: number, format: Intl.DateTimeFormat): string {
   return `${isoTime(second + offset * 60_000).slice(0, 19)}${sign}${hours}:${minutes}`
 }
 
+type Cells = (string | number | null)[]
+
 /** Every reading of a record, in the order of the log, as CSV with a head. */
 export function readingsCsv(state: OutageState, entries: readonly StoredEntry[]): string {
+  return BYTE_ORDER_MARK + csvRow(READINGS_HEAD) + readingCells(state, entries).map(csvRow).join('')
+}
+
+/** The cells of every reading, under READINGS_HEAD. */
+export function readingCells(state: OutageState, entries: readonly StoredEntry[]): Cells[] {
   const folded = new Map<string, ReadingState>(Object.values(state.cases).flatMap(item => item.readings.map(reading => [reading.entry, reading])))
   const verdictThen = verdictsThen(state, entries)
   const local = localTimes(state.snapshot.site.timeZone)
-  const rows = entries.flatMap((stored) => {
+  return entries.flatMap((stored): Cells[] => {
     const { entry } = stored
     if (entry.kind !== 'reading-taken') return []
     const { body } = entry
     const reading = folded.get(entry.id)
     const limit = state.snapshot.cases.find(item => item.id === body.caseId)?.limit ?? null
     const instrument = state.snapshot.instruments.find(item => item.id === body.instrumentId)?.name ?? null
-    return [csvRow([
+    return [[
       stored.seq, body.round, caseName(state, body.caseId), local(happenedAt(entry)), isoTime(happenedAt(entry)),
       reading?.struck ? null : reading?.value ?? body.value, body.unit, body.value, limit?.value ?? null, limit?.unit ?? null, body.method, instrument, checkWords(state, body.instrumentId, happenedAt(entry)), nameOf(state, entry.by),
       verdictThen(body.caseId, stored), stored.standing, reading?.correctedBy ? 'yes' : 'no', reading?.struck ? 'yes' : 'no', body.words,
-    ])]
+    ]]
   })
-  return BYTE_ORDER_MARK + csvRow(HEAD) + rows.join('')
 }
 
 /** Gives the verdict in force once a reading had been judged: the last one entered by the time it was received; null before control was lost. */

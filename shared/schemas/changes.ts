@@ -1,11 +1,11 @@
 import { z } from 'zod'
 import { RESOURCE_NAMES } from './site-view'
 
-/** What an administrator changes; its history is kept for ever. */
-export const CHANGE_SUBJECTS = ['site', 'limits', 'alerts', ...RESOURCE_NAMES, 'person', 'work-kind'] as const
+/** What an administrator changes, or somebody takes away; its history is kept for ever. */
+export const CHANGE_SUBJECTS = ['site', 'limits', 'alerts', ...RESOURCE_NAMES, 'person', 'work-kind', 'export'] as const
 export type ChangeSubject = (typeof CHANGE_SUBJECTS)[number]
 
-export const CHANGE_DEEDS = ['added', 'changed', 'deleted'] as const
+export const CHANGE_DEEDS = ['added', 'changed', 'deleted', 'exported', 'downloaded'] as const
 export type ChangeDeed = (typeof CHANGE_DEEDS)[number]
 
 /** One field before and after; null: there was nothing, or is nothing any more. */
@@ -41,6 +41,6 @@ export interface ChangePage { items: ChangeItem[], next: string | null }
 
 export const changePageSchema = z.object({ before: z.string().uuid().optional() })
 export const changeListSchema = changePageSchema.extend({
-  subject: z.enum(['person', 'work-kind'], { errorMap: () => ({ message: 'Choose person or work-kind' }) }),
+  subject: z.enum(['person', 'work-kind', 'export'], { errorMap: () => ({ message: 'Choose person, work-kind or export' }) }),
   subjectId: z.string().uuid().optional(),
 })

@@ -58,8 +58,8 @@ export const recordFilterFields = {
   tag: blank(z.string().trim().max(32)), // a point that was in the plan or in hand
 }
 
-const dayOrder = { path: ['to'], message: 'The last day lies before the first' }
-const isOrdered = ({ from, to }: { from?: string, to?: string }) => from === undefined || to === undefined || from <= to
+export const dayOrder = { path: ['to'], message: 'The last day lies before the first' }
+export const isOrdered = ({ from, to }: { from?: string, to?: string }) => from === undefined || to === undefined || from <= to
 
 /** A search for records. Fields that it does not know are left alone: an address may hold others. */
 export const recordFilterSchema = z.object(recordFilterFields).refine(isOrdered, dayOrder)

@@ -44,6 +44,8 @@ const SITE = (status: number): Row['expected'] => [401, status, 404, status, sta
 /** The administrator alone; to the stranger the site does not exist. */
 const SITE_ADMIN = (status: number): Row['expected'] => [401, 403, 404, 403, 403, status]
 const ADMIN = (status: number): Row['expected'] => [401, 403, 403, 403, 403, status]
+/** Supervisors, auditors and administrators. */
+const DESK = (status: number): Row['expected'] => [401, 403, 403, status, status, status]
 const OPEN = (status: number): Row['expected'] => [status, status, status, status, status, status]
 
 export const MATRIX: Row[] = [
@@ -101,6 +103,15 @@ export const MATRIX: Row[] = [
   { route: 'GET /api/refrigerants/[id]/saturation', expected: ALL(200), path: () => '/api/refrigerants/R-744/saturation?celsius=-10', unknown: '/api/refrigerants/R-0/saturation?celsius=0' },
   { route: 'POST /api/holding/assess', expected: ALL(422), path: () => '/api/holding/assess', body: () => ({}) },
   ...['cover', 'duration', 'fit', 'hold', 'order', 'window'].map((engine): Row => ({ route: `POST /api/plan/${engine}`, expected: ALL(422), path: () => `/api/plan/${engine}`, body: () => ({}) })),
+
+  // Exports are each person's own: another's does not exist.
+  { route: 'GET /api/exports', expected: DESK(200), path: () => '/api/exports' },
+  { route: 'POST /api/exports', expected: DESK(422), path: () => '/api/exports', body: () => ({}) },
+  { route: 'DELETE /api/exports/[id]', expected: ALL(404), path: () => `/api/exports/${NOTHING}`, unknown: `/api/exports/${NOTHING}` },
+  { route: 'GET /api/exports/[id]/file', expected: ALL(404), path: () => `/api/exports/${NOTHING}/file`, unknown: `/api/exports/${NOTHING}/file` },
+  { route: 'GET /api/insights', expected: DESK(200), path: () => '/api/insights' },
+  { route: 'GET /api/insights/[table]', expected: DESK(200), path: () => '/api/insights/work.csv', unknown: '/api/insights/none.csv' },
+  { route: 'POST /api/insights/times', expected: [401, 403, 403, 403, 422, 422], path: () => '/api/insights/times', body: () => ({}) },
 
   { route: 'GET /api/outages', expected: ALL(200), path: () => '/api/outages' },
   { route: 'GET /api/outages/[id]', expected: SITE(200), path: ids => `/api/outages/${ids.outage}`, unknown: `/api/outages/${NOTHING}` },

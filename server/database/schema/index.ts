@@ -1,5 +1,7 @@
 export * from './alerts'
 export * from './changes'
+export * from './exports'
+export * from './insights'
 export * from './lessons'
 export * from './mails'
 export * from './outages'

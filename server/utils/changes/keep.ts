@@ -3,7 +3,7 @@ import type { ChangeDeed, ChangeSubject, FieldChange } from '../../../shared/sch
 import { changes } from '../../database/schema'
 import type { Queries } from '../database'
 
-/** The administrator who changes something. */
+/** Who changes something, or takes records away. */
 export interface Changer { id: string, name: string }
 
 export interface ChangeToKeep {

@@ -37,13 +37,13 @@ function reasonAgainst(known: SnapshotCase, readings: number, held: boolean): st
 }
 
 /** A time without control, its end, and the state just before control came back: who was held on is seen there alone. */
-function endOf(state: OutageState, entries: readonly StoredEntry[], dark: DarkInterval): { dark: DarkInterval, at: number, before: OutageState } {
+export function endOf(state: OutageState, entries: readonly StoredEntry[], dark: DarkInterval): { dark: DarkInterval, at: number, before: OutageState } {
   const back = entries.find(stored => stored.seq > dark.mark.seq && stored.standing === 'accepted' && stored.entry.kind === 'control-back')
   return { dark, at: dark.to ?? dark.from, before: foldLog(state.id, back ? entries.filter(stored => stored.seq < back.seq) : entries) }
 }
 
 /** The first act after which the case warmed otherwise than with nothing running ends what can be learned. */
-function untilAct(state: OutageState, caseId: string, dark: DarkInterval, end: number): number {
+export function untilAct(state: OutageState, caseId: string, dark: DarkInterval, end: number): number {
   return Math.min(end, ...state.cases[caseId]!.acts.filter(({ mark }) => mark.at > dark.from).map(({ mark }) => mark.at - 1))
 }
 

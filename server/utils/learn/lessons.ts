@@ -80,7 +80,7 @@ async function acceptCase(tx: Queries, person: Person, outage: OutageRow, lesson
   await keepChange(tx, person, { subject: 'cases', subjectId: known.id, subjectName: known.name, siteId: outage.siteId, deed: 'changed', fields: [{ field: 'tauHours', before: known.tauHours, after: tauHours }, { field: 'learnedFrom', before: null, after: outage.code }] }, now)
 }
 
-async function acceptStep(tx: Queries, person: Person, lesson: typeof stepLessons.$inferInsert, now: number): Promise<void> {
+export async function acceptStep(tx: Queries, person: Person, lesson: typeof stepLessons.$inferInsert, now: number): Promise<void> {
   const [kind] = await tx.select().from(workKinds).where(eq(workKinds.id, lesson.workKindId)).for('update')
   const added = await tx.insert(stepLessons).values(lesson).onConflictDoNothing().returning({ id: stepLessons.id })
   if (!kind || added.length === 0) return

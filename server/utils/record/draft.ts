@@ -17,6 +17,7 @@ import { uuidv7 } from '../../../shared/record/uuid'
 import { devices, entries, outages, people } from '../../database/schema'
 import type { Person } from '../access'
 import type { Queries } from '../database'
+import { keepFacts } from '../insights/keep'
 import { saveSearch } from '../records/save'
 import { signBytes } from './keys'
 import type { OutageRow } from './log'
@@ -126,6 +127,7 @@ export async function saveProjection(draft: Draft): Promise<void> {
     endedAt: ended === null ? null : new Date(ended),
     updatedAt: new Date(draft.now),
   }).where(eq(outages.id, state.id))
+  await keepFacts(draft.db, state, cached?.phase ?? null, draft.now)
 }
 
 /** Decisions by voice that wait for a signature: lists read them off the cached fold. */
