@@ -1,5 +1,7 @@
 import { z } from 'zod'
 import { PHASES } from '../record/phases'
+import type { Phase } from '../record/phases'
+import type { Role } from './people'
 
 /** What became of an outage, as far as lists are searched for it. Several may be true of one. */
 export const RECORD_OUTCOMES = ['unplanned', 'turned-back', 'act', 'above-limit', 'discard', 'late-rounds', 'excused', 'left-in-hand', 'questioned', 'returned'] as const
@@ -75,3 +77,37 @@ export const recordQuerySchema = z.object({
   limit: z.coerce.number().int().min(1).max(RECORD_PAGE_MAX, `At most ${RECORD_PAGE_MAX}`).default(25),
 }).refine(isOrdered, dayOrder)
 export type RecordQuery = z.output<typeof recordQuerySchema>
+
+/** An outage as the search finds it; times in ISO 8601, UTC. */
+export interface RecordItem {
+  id: string
+  code: string
+  phase: Phase
+  site: { id: string, code: string, name: string, timeZone: string }
+  controller: { id: string, name: string }
+  workKind: string
+  openedAt: string
+  endedAt: string | null
+  /** where control is away now: since when */
+  darkSince: string | null
+  /** time without control that is over; 0: none */
+  darkSeconds: number
+  /** the shortest hold that readings gave; null: none */
+  holdSeconds: number | null
+  lateReadings: number
+  outcomes: RecordOutcome[]
+}
+
+/** Counting stops here. */
+export const MOST_COUNTED = 1000
+
+/** A page of a search; `next` goes on from here, null at the end. The first page also says how many there are. */
+export interface RecordPage { items: RecordItem[], next: string | null, count: { found: number, more: boolean } | null }
+
+/** What a search may name, of the sites of who asks; each by name. */
+export interface RecordChoices {
+  sites: { id: string, code: string, name: string }[]
+  controllers: { id: string, name: string, siteId: string }[]
+  people: { id: string, name: string, role: Role }[]
+  workKinds: string[]
+}

@@ -114,6 +114,8 @@ export const MATRIX: Row[] = [
   { route: 'POST /api/insights/times', expected: [401, 403, 403, 403, 422, 422], path: () => '/api/insights/times', body: () => ({}) },
 
   { route: 'GET /api/outages', expected: ALL(200), path: () => '/api/outages' },
+  { route: 'GET /api/records', expected: ALL(200), path: () => '/api/records' },
+  { route: 'GET /api/records/choices', expected: ALL(200), path: () => '/api/records/choices' },
   { route: 'GET /api/outages/[id]', expected: SITE(200), path: ids => `/api/outages/${ids.outage}`, unknown: `/api/outages/${NOTHING}` },
   { route: 'GET /api/outages/[id]/entries', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/entries`, unknown: `/api/outages/${NOTHING}/entries` },
   // An entry of nobody's is 422 to whoever may see the outage; who may sign what is judged entry by entry.

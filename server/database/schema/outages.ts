@@ -32,9 +32,9 @@ export const outages = pgTable('outages', {
   updatedAt: timestamp({ withTimezone: true }).notNull(),
 }, table => [
   uniqueIndex('outages_code').on(table.code),
-  index('outages_site_opened').on(table.siteId, table.openedAt.desc(), table.id.desc()),
-  index('outages_opened').on(table.openedAt.desc(), table.id.desc()),
-  index('outages_phase').on(table.phase, table.openedAt.desc()),
+  index('outages_site_opened').on(table.siteId, table.openedAt, table.id),
+  index('outages_opened').on(table.openedAt, table.id),
+  index('outages_phase').on(table.phase, table.openedAt, table.id),
   index('outages_controller').on(table.controllerId),
 ])
 

@@ -40,6 +40,9 @@ export const outageSearch = pgTable('outage_search', {
   index('outage_search_opened').on(table.openedAt, table.outageId),
   index('outage_search_dark').on(table.darkSeconds, table.outageId),
   index('outage_search_hold').on(table.holdSeconds, table.outageId),
+  // For the few that are of a rare phase or kind of work; the orders above find the others sooner.
+  index('outage_search_phase').on(table.phase, table.openedAt, table.outageId),
+  index('outage_search_work').on(table.workKind, table.openedAt, table.outageId),
   // What was written last waits in a list that each search reads through: a short one.
   index('outage_search_terms').using('gin', table.words, table.tags, table.people, table.outcomes).with({ fastupdate: true, gin_pending_list_limit: 128 }),
 ])

@@ -6,16 +6,24 @@ import type { OutagePage } from '../../../shared/schemas/outage-list'
 import { controllers, outages, sites } from '../../database/schema'
 import type { Person } from '../access'
 import { visibleSites } from '../access'
+import type { Queries } from '../database'
 import { useDatabase } from '../database'
 import { unprocessable } from '../errors'
 
 export interface OutageFilter { phase: Phase[], site?: string, after?: string, limit: number }
 
 /** A page of outages, newest first; `next` goes on from here, null at the end. */
-export async function listOutages(person: Person, filter: OutageFilter): Promise<OutagePage> {
-  const visible = await visibleSites(person)
+export async function listOutages(person: Person, filter: OutageFilter, db: Queries = useDatabase()): Promise<OutagePage> {
+  const visible = await visibleSites(person, db)
   if (visible?.length === 0 || (filter.site && visible && !visible.includes(filter.site))) return { items: [], next: null }
-  const rows = await useDatabase().select({
+  // Which rows make the page is settled first, by an index alone: the fold that they carry is long.
+  const best = db.select({ id: outages.id }).from(outages).where(and(
+    visible ? inArray(outages.siteId, visible) : undefined,
+    filter.site ? eq(outages.siteId, filter.site) : undefined,
+    filter.phase.length > 0 ? inArray(outages.phase, filter.phase) : undefined,
+    filter.after ? beyond(filter.after) : undefined,
+  )).orderBy(desc(outages.openedAt), desc(outages.id)).limit(filter.limit + 1).as('best')
+  const rows = await db.select({
     outage: {
       id: outages.id, code: outages.code, phase: outages.phase, planned: outages.planned, workKind: outages.workKind, pointsInHand: outages.pointsInHand,
       size: outages.size, openedAt: outages.openedAt, startsAt: outages.startsAt, darkAt: outages.darkAt, endedAt: outages.endedAt,
@@ -24,14 +32,8 @@ export async function listOutages(person: Person, filter: OutageFilter): Promise
     },
     site: { id: sites.id, code: sites.code, name: sites.name, timeZone: sites.timeZone },
     controller: { id: controllers.id, name: controllers.name },
-  }).from(outages).innerJoin(sites, eq(sites.id, outages.siteId)).innerJoin(controllers, eq(controllers.id, outages.controllerId))
-    .where(and(
-      visible ? inArray(outages.siteId, visible) : undefined,
-      filter.site ? eq(outages.siteId, filter.site) : undefined,
-      filter.phase.length > 0 ? inArray(outages.phase, filter.phase) : undefined,
-      filter.after ? beyond(filter.after) : undefined,
-    ))
-    .orderBy(desc(outages.openedAt), desc(outages.id)).limit(filter.limit + 1)
+  }).from(outages).innerJoin(best, eq(best.id, outages.id)).innerJoin(sites, eq(sites.id, outages.siteId)).innerJoin(controllers, eq(controllers.id, outages.controllerId))
+    .orderBy(desc(outages.openedAt), desc(outages.id))
   const page = rows.slice(0, filter.limit)
   const last = page.at(-1)?.outage
   return {
@@ -49,5 +51,5 @@ function beyond(place: string) {
   const parsed = placeSchema.safeParse(place.split('_'))
   if (!parsed.success) return unprocessable('after', 'Give the "next" of an earlier page')
   const [at, id] = parsed.data
-  return sql`(date_trunc('milliseconds', ${outages.openedAt}), ${outages.id}) < (${at}::timestamptz, ${id}::uuid)`
+  return sql`(${outages.openedAt}, ${outages.id}) < (${at}::timestamptz, ${id}::uuid)`
 }

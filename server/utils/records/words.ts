@@ -44,14 +44,15 @@ export function withWords(words: SQL | { getSQL(): SQL }, more: SQL): SQL {
  * @returns null where the text names nothing to seek
  */
 export function wordsSought(text: string): SQL | null {
-  const tokens = [...new Set(text.toLowerCase().split(/[^\p{L}\p{N}\-./]+/u).map(token => token.replace(/^[-./]+|[-./]+$/g, '')).filter(Boolean))]
+  const tokens = [...new Set(text.toLowerCase().split(/[^\p{L}\p{N}\-./@_]+/u).map(token => token.replace(/^[-./]+|[-./]+$/g, '')).filter(Boolean))]
   if (tokens.length === 0) return null
   return sql`(${sql.join(tokens.map(tokenSought), sql` && `)})`
 }
 
 function tokenSought(token: string): SQL {
   const written = `'${token}'${token.length >= BEGINNING_MIN ? ':*' : ''}` // a token holds neither quote nor backslash
-  const inEnglish = sql`to_tsquery('english', ${written}::text)`
+  // What the dictionary takes apart, such as 555-0127, it wants side by side; rows keep no places of words, so it is asked for together.
+  const inEnglish = sql`regexp_replace(to_tsquery('english', ${written}::text)::text, '<(-|[0-9]+)>', '&', 'g')::tsquery`
   // Words that say nothing, such as "the", are in no row and ask for nothing.
   return sql`(case when numnode(${inEnglish}) = 0 then ''::tsquery else ${inEnglish} || ${written}::tsquery end)`
 }
