@@ -70,7 +70,7 @@ export function holdWords({ holdSeconds }: Pick<RecordItem, 'holdSeconds'>): str
 }
 
 /** What became of it, in words, one after another. */
-export function outcomeWords({ outcomes, lateReadings }: Pick<RecordItem, 'outcomes' | 'lateReadings'>): string {
+export function becameWords({ outcomes, lateReadings }: Pick<RecordItem, 'outcomes' | 'lateReadings'>): string {
   const each = outcomes.map(outcome => outcome === 'late-rounds' ? countWords(lateReadings, 'late reading') : OUTCOME_WORDS[outcome].replace(/^With /, '').toLowerCase())
   const text = each.join(', ')
   return text.charAt(0).toUpperCase() + text.slice(1)

@@ -1,6 +1,6 @@
 // The search as it stands in an address, and what a row says; promises of this project's own, no published source.
 import { describe, expect, it } from 'vitest'
-import { countFound, darkWords, holdWords, outcomeWords, searchFault, searchOf, searchWords, sortOf } from '../../../app/utils/record-search'
+import { countFound, darkWords, holdWords, becameWords, searchFault, searchOf, searchWords, sortOf } from '../../../app/utils/record-search'
 
 const SITE = '0190a000-0000-7000-8000-000000000001'
 const ADA = '0190a000-0000-7000-8000-000000000002'
@@ -51,8 +51,8 @@ describe('in words', () => {
   })
 
   it('what became of it', () => {
-    expect(outcomeWords({ outcomes: ['unplanned', 'discard', 'late-rounds'], lateReadings: 3 })).toBe('Not planned, discard, 3 late readings')
-    expect(outcomeWords({ outcomes: ['late-rounds'], lateReadings: 1 })).toBe('1 late reading')
-    expect(outcomeWords({ outcomes: [], lateReadings: 0 })).toBe('')
+    expect(becameWords({ outcomes: ['unplanned', 'discard', 'late-rounds'], lateReadings: 3 })).toBe('Not planned, discard, 3 late readings')
+    expect(becameWords({ outcomes: ['late-rounds'], lateReadings: 1 })).toBe('1 late reading')
+    expect(becameWords({ outcomes: [], lateReadings: 0 })).toBe('')
   })
 })
