@@ -8,7 +8,7 @@ import type { Queries } from '../database'
 import { useDatabase } from '../database'
 import { sitesSought } from './filter'
 import type { Scope } from './queries'
-import { countQuery, pageQuery, placeOf } from './queries'
+import { countQuery, pageQuery, pageEnd } from './queries'
 
 type Row = Awaited<ReturnType<typeof pageQuery>>[number]
 
@@ -22,7 +22,7 @@ export async function listRecords(person: Person, query: RecordQuery, db: Querie
   const found = counted?.[0]!.found
   return {
     items: await withNames(db, page),
-    next: rows.length > query.limit ? placeOf(query.sort, page.at(-1)!) : null,
+    next: rows.length > query.limit ? pageEnd(query.sort, page.at(-1)!) : null,
     count: found === undefined ? null : { found: Math.min(found, MOST_COUNTED), more: found > MOST_COUNTED },
   }
 }

@@ -61,7 +61,7 @@ export function countQuery(db: Queries, scope: Scope, filter: RecordFilter) {
 }
 
 /** The place of a row in an order, for the page that goes on after it. */
-export function placeOf(sort: RecordSort, row: { outageId: string, openedAt: Date, darkSeconds: number, holdSeconds: number }): string {
+export function pageEnd(sort: RecordSort, row: { outageId: string, openedAt: Date, darkSeconds: number, holdSeconds: number }): string {
   const value = { 'newest': row.openedAt.toISOString(), 'oldest': row.openedAt.toISOString(), 'longest-dark': row.darkSeconds, 'shortest-hold': row.holdSeconds }[sort]
   return `${value}_${row.outageId}`
 }
