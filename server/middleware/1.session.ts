@@ -8,4 +8,5 @@ export default defineEventHandler(async (event) => {
   if (!event.path.startsWith('/api/') || event.path.startsWith('/api/auth/') || event.path.startsWith('/api/health')) return
   const token = await getToken({ event, secret: useRuntimeConfig().authSecret }).catch(() => null)
   event.context.person = await resolvePerson(token)
+  event.context.sessionVersion = token?.sessionVersion
 })

@@ -64,6 +64,7 @@ export async function drawDarks(sheet: Sheet, { state, summary, now }: RecordPap
     stampWords(dark.from, timeZone), dark.to === null ? 'not yet' : stampWords(dark.to, timeZone), durationWords(((dark.to ?? now) - dark.from) / 1000),
     [dark.how === 'gate' ? 'taken away at the gate' : 'lost', dark.words, ...dark.breach].filter(Boolean).join(' · '), nameOf(state, dark.mark.by),
   ]))
+  if (state.turnBackOrdered) { sheet.y += 6; sheet.paragraph(`Turning back ordered at ${stampWords(state.turnBackOrdered.mark.at, timeZone)}, ${nameOf(state, state.turnBackOrdered.mark.by)}: ${state.turnBackOrdered.reason}`) }
   if (state.turnedBack) { sheet.y += 6; sheet.paragraph(`Turned back at ${stampWords(state.turnedBack.mark.at, timeZone)}, ${nameOf(state, state.turnedBack.mark.by)}: ${state.turnedBack.reason}`) }
 }
 

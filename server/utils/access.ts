@@ -10,7 +10,11 @@ import { forbidden, notFound, unauthenticated } from './errors'
 export interface Person { id: string, name: string, email: string, role: Role, mustChangePassword: boolean }
 
 declare module 'h3' {
-  interface H3EventContext { person?: Person | null }
+  interface H3EventContext {
+    person?: Person | null
+    /** of the session that the request came with */
+    sessionVersion?: unknown
+  }
 }
 
 /** Who is signed in. 401 when nobody is. */

@@ -44,6 +44,7 @@ function unsettled(state: OutageState, summary: RecordSummary): Attention[] {
     { what: 'Changed hands', items: summary.hands.map(({ seq, words }) => item(words, seq)) },
     { what: 'Margin accepted', items: state.marginAccepted ? [item(`${nameOf(state, state.marginAccepted.mark.by)} accepted ${acceptedWords(state.marginAccepted)}: ${state.marginAccepted.reason}`, state.marginAccepted.mark.seq)] : [] },
     { what: 'Control lost past a gate', items: state.darks.flatMap(dark => dark.breach.map(words => item(words, dark.mark.seq))) },
+    { what: 'Ordered to turn back', items: state.turnBackOrdered ? [item(`${nameOf(state, state.turnBackOrdered.mark.by)}: ${state.turnBackOrdered.reason}`, state.turnBackOrdered.mark.seq)] : [] },
     { what: 'Turned back', items: state.turnedBack ? [item(state.turnedBack.reason, state.turnedBack.mark.seq)] : [] },
     { what: 'Returned before', items: state.returned.map(({ reason, mark }) => item(`${nameOf(state, mark.by)}: ${reason}`, mark.seq)) },
   ]

@@ -153,6 +153,7 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
     const known = Object.hasOwn(state.steps, body.step) ? state.steps[body.step] : undefined
     state.steps[body.step] = { begun: null, done: null, ...known, [body.state]: mark }
   },
+  'turn-back-ordered': (state, { body }, mark) => { state.turnBackOrdered = { reason: body.reason, mark } },
   'turned-back': (state, { body }, mark) => { state.turnedBack = { reason: body.reason, mark } },
   'control-back': (state, entry) => {
     const backAt = correctedTime(entry, entry.body.backAt)

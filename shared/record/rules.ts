@@ -13,7 +13,7 @@ import { asNewest } from './newest'
 import { PHASE_WORDS, PHASES } from './phases'
 import type { Phase } from './phases'
 import { exceptionUnfit, knownPoint, pointInHandUnfit, stillHeld } from './point-rules'
-import { nameOf, turningBack } from './select'
+import { nameOf, turnBackOrder, turningBack } from './select'
 import { openVoices, spokenEntry } from './voice'
 import type { OutageState } from './state'
 
@@ -138,6 +138,7 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   } },
   'control-lost': { roles: HANDS, phases: ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], unfit: (_state, entry) => ahead(entry, entry.body.lostAt) },
   'step-ticked': { roles: HANDS, phases: ['approved', ...RUN], unfit: (state, { body }) => [...state.plan.steps, ...state.plan.rollBack].some(step => step.id === body.step) ? [] : ['there is no such step'] },
+  'turn-back-ordered': { roles: SUPERVISOR, phases: ['dark'], unfit: state => turningBack(state) ? ['the way back has begun already'] : turnBackOrder(state) ? ['it is ordered already'] : [] },
   'turned-back': { roles: HANDS, phases: ['dark'], unfit: state => turningBack(state) ? ['the way back has begun already'] : [] },
   'control-back': { roles: HANDS, phases: ['dark'], unfit: (state, entry) => {
     const from = state.darks.at(-1)?.from ?? 0

@@ -110,6 +110,13 @@ export function turningBack(state: OutageState): OutageState['turnedBack'] {
   return dark && state.turnedBack && state.turnedBack.mark.seq > dark.mark.seq ? state.turnedBack : null
 }
 
+/** A supervisor's order to turn back in the dark interval that runs now, while nobody has begun the way back; or null. */
+export function turnBackOrder(state: OutageState): OutageState['turnBackOrdered'] {
+  const dark = openDark(state)
+  const order = state.turnBackOrdered
+  return dark && order && order.mark.seq > dark.mark.seq && !turningBack(state) ? order : null
+}
+
 /** Time without control until now over all intervals, ms; where signed times overlap, the time counts once. */
 export function darkMs(state: OutageState, now: number): number {
   const intervals = state.darks.map(dark => ({ from: dark.from, to: dark.to ?? now })).sort((a, b) => a.from - b.from)

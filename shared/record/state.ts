@@ -12,7 +12,7 @@ import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 10
+export const FOLD_VERSION = 11
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
@@ -216,6 +216,8 @@ export interface OutageState {
   alerts: AlertState[]
   darks: DarkInterval[]
   turnedBack: { reason: string, mark: Mark } | null
+  /** a supervisor's order to turn back, the last one */
+  turnBackOrdered: { reason: string, mark: Mark } | null
   steps: Record<string, { begun: Mark | null, done: Mark | null }>
   /** when the last control came back, Unix ms */
   backAt: number | null
@@ -274,7 +276,7 @@ export function emptyState(id: string): OutageState {
     foldVersion: FOLD_VERSION, id, code: null, size: 0, phase: 'plan', planned: true,
     snapshot: structuredClone(EMPTY_SNAPSHOT), opened: null, cause: '', plan: structuredClone(EMPTY_PLAN),
     authors: [], planSubmitted: null, planReturned: null, approved: null, marginAccepted: null, inHandBegun: null, holder: null, offers: [], taken: [], voices: [], named: {},
-    checks: {}, points: {}, cases: {}, instrumentChecks: [], pressures: [], plant: [], alerts: [], darks: [], turnedBack: null, steps: {}, backAt: null,
+    checks: {}, points: {}, cases: {}, instrumentChecks: [], pressures: [], plant: [], alerts: [], darks: [], turnedBack: null, turnBackOrdered: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
     calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],
     refusals: [], chain: {}, heard: {}, largestSkew: null,

@@ -84,6 +84,7 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'went-dark': () => tell('Control taken away'),
   'control-lost': (_state, { body }) => tell('Control lost', body.words),
   'step-ticked': (state, { body }) => tell(`${[...state.plan.steps, ...state.plan.rollBack].find(step => step.id === body.step)?.name ?? body.step}: ${body.state}`, body.words),
+  'turn-back-ordered': (_state, { body }) => tell('Turn back ordered', body.reason),
   'turned-back': (_state, { body }) => tell('Turned back', body.reason),
   'control-back': (_state, { body }) => tell('Control is back', body.words),
   'silence-announced': (state, entry) => tell(`No signal until ${clockWords(isoTime(correctedTime(entry, entry.body.until)), state.snapshot.site.timeZone)}`, entry.body.words),

@@ -113,6 +113,10 @@ export const MATRIX: Row[] = [
   { route: 'GET /api/insights/[table]', expected: DESK(200), path: () => '/api/insights/work.csv', unknown: '/api/insights/none.csv' },
   { route: 'POST /api/insights/times', expected: [401, 403, 403, 403, 422, 422], path: () => '/api/insights/times', body: () => ({}) },
 
+  { route: 'GET /api/watch', expected: ALL(200), path: () => '/api/watch' },
+  { route: 'GET /api/watch/outages', expected: ALL(200), path: () => '/api/watch/outages' },
+  { route: 'POST /api/watch/outages', expected: ALL(200), path: () => '/api/watch/outages', body: () => ({}) },
+
   { route: 'GET /api/outages', expected: ALL(200), path: () => '/api/outages' },
   { route: 'GET /api/records', expected: ALL(200), path: () => '/api/records' },
   { route: 'GET /api/records/choices', expected: ALL(200), path: () => '/api/records/choices' },

@@ -6,6 +6,7 @@ import type { Database } from '../database'
 import { conflict, notFound } from '../errors'
 import { addServerEntry, draftOf, saveProjection } from '../record/draft'
 import { serverSigner } from '../record/server-signer'
+import { wakeWatch } from '../watch/wake'
 import { keepAlerts } from './keep'
 
 /** Who acknowledged an alert, and when (ISO 8601 UTC). */
@@ -17,7 +18,7 @@ export interface Acknowledged { key: string, name: string, at: string }
  * @throws 404 where there is no such alert; 409 where the record is closed and nobody had acknowledged it
  */
 export async function acknowledgeAlert(db: Database, person: Person, outageId: string, key: string, now: number): Promise<Acknowledged> {
-  return db.transaction(async (tx) => {
+  const acknowledged = await db.transaction(async (tx) => {
     const [row] = await tx.select().from(outages).where(eq(outages.id, outageId)).for('update')
     if (!row) return notFound('outage')
     const draft = await draftOf(tx, outageId, row, await serverSigner(tx), now)
@@ -31,4 +32,6 @@ export async function acknowledgeAlert(db: Database, person: Person, outageId: s
     }
     return { key, name: alert.acknowledged!.name, at: isoTime(alert.acknowledged!.at) }
   })
+  wakeWatch(db, outageId)
+  return acknowledged
 }

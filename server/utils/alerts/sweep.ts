@@ -13,6 +13,7 @@ import { alertEntries } from './entries'
 import { keepAlerts } from './keep'
 import { keepTold, mailTold } from './mail'
 import { alertingOf, alertSettings } from './people'
+import { wakeWatch } from '../watch/wake'
 
 /**
  * Looks at every outage that may have something to alert, enters what time has brought, and tells whom it concerns.
@@ -35,7 +36,7 @@ const hasOpen = (db: Queries) => exists(db.select({ key: alerts.key }).from(aler
  * @returns whether the log grew
  */
 export async function lookForAlerts(db: Database, outageId: string, now: number): Promise<boolean> {
-  return db.transaction(async (tx) => {
+  const grown = await db.transaction(async (tx) => {
     const [row] = await tx.select().from(outages).where(eq(outages.id, outageId)).for('update', { skipLocked: true })
     if (!row) return false
     const draft = await draftOf(tx, outageId, row, await serverSigner(tx), now)
@@ -47,6 +48,8 @@ export async function lookForAlerts(db: Database, outageId: string, now: number)
     await saveProjection(draft)
     return true
   })
+  if (grown) wakeWatch(db, outageId)
+  return grown
 }
 
 async function enterAlerts(draft: Draft, siteId: string): Promise<void> {

@@ -41,6 +41,7 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'went-dark': { lostAt: isoTime(BEGAN) },
   'control-lost': { lostAt: isoTime(BEGAN), words, photos: [] },
   'step-ticked': { step: 'load', state: 'begun', words },
+  'turn-back-ordered': { reason: words },
   'turned-back': { reason: words },
   'control-back': { backAt: isoTime(BEGAN), words },
   'silence-announced': { until: isoTime(BEGAN), words },

@@ -4,7 +4,7 @@ import { BACK_CHECKS, BEFORE_CHECKS } from '../../../shared/record/checks'
 import { isoTime } from '../../../shared/record/entry'
 import { startedWarm } from '../../../shared/record/gates'
 import { logRoot } from '../../../shared/record/merkle'
-import { judgedReadings, pointsInHand, turningBack } from '../../../shared/record/select'
+import { judgedReadings, pointsInHand, turnBackOrder, turningBack } from '../../../shared/record/select'
 import { lastHash, RecordWriter, secondTechnician, supervisor, technician } from '../../support/record'
 import { BEGAN, DAIRY, DRAWING, FISH, goOn, inHand, judged, putAllInHand, readAll, reading, returnAll, seal, signChecks, storyTo, submission, unplanned } from './store'
 
@@ -122,6 +122,24 @@ describe('turning back', () => {
     expect(turningBack(writer.state)).toBeNull()
     writer.sign(technician, 'turned-back', { reason: 'once more' })
     expect(turningBack(writer.state)?.reason).toBe('once more')
+  })
+})
+
+describe('an order to turn back', () => {
+  it('is a supervisor\'s, stands until the way back is begun, and ends with the time without control', () => {
+    const writer = storyTo('dark')
+    expect(() => writer.sign(technician, 'turn-back-ordered', { reason: 'mine' })).toThrow('turn-back-ordered is refused')
+    writer.sign(supervisor, 'turn-back-ordered', { reason: 'the fish comes first' })
+    expect(turnBackOrder(writer.state)?.reason).toBe('the fish comes first')
+    writer.sign(supervisor, 'turn-back-ordered', { reason: 'again' }, QUESTIONED)
+    expect(writer.entries.at(-1)!.why).toEqual(['it is ordered already'])
+    writer.sign(technician, 'turned-back', { reason: 'as ordered' })
+    expect([turnBackOrder(writer.state), turningBack(writer.state)?.reason]).toEqual([null, 'as ordered'])
+    writer.sign(supervisor, 'turn-back-ordered', { reason: 'now' }, QUESTIONED)
+    expect(writer.entries.at(-1)!.why).toEqual(['the way back has begun already'])
+    writer.pass(5).sign(technician, 'control-back', { backAt: isoTime(writer.now) })
+    writer.sign(technician, 'control-lost', { lostAt: isoTime(writer.now), words: 'again' })
+    expect(turnBackOrder(writer.state)).toBeNull()
   })
 })
 

@@ -12,7 +12,7 @@ import type { PhaseTold } from './store'
 
 const kinds = Object.keys(KINDS) as EntryKind[]
 const HANDS: Role[] = ['technician', 'supervisor']
-const BY_SUPERVISOR: EntryKind[] = ['plan-approved', 'margin-accepted', 'plan-returned', 'left-in-exception', 'decided-otherwise', 'question-asked', 'review-begun', 'returned', 'sealed', 'voice-confirmed', 'voice-denied']
+const BY_SUPERVISOR: EntryKind[] = ['plan-approved', 'margin-accepted', 'plan-returned', 'left-in-exception', 'decided-otherwise', 'question-asked', 'review-begun', 'returned', 'sealed', 'voice-confirmed', 'voice-denied', 'turn-back-ordered']
 const stories = Object.fromEntries(PHASES_TOLD.map(phase => [phase, storyTo(phase)])) as Record<PhaseTold, RecordWriter>
 
 /** Judges a kind without its body being typed. */
@@ -42,7 +42,7 @@ describe('phases', () => {
     'point-in-hand': RUN, 'point-excused': ['in-hand', 'dark'], 'point-in-auto': ['in-hand', 'hand-back', 'settle'], 'point-proven': ['hand-back', 'settle'],
     'left-in-exception': ['hand-back', 'settle'], 'hand-back-closed': ['hand-back'], 'defrost-watched': ['hand-back', 'settle'],
     'reading-taken': ['approved', ...RUN], 'pressure-read': ['approved', ...RUN], 'act-signed': ['approved', ...RUN, 'submitted'], 'decided-otherwise': [...RUN, 'submitted'], 'instrument-checked': ['approved', ...RUN],
-    'went-dark': ['in-hand'], 'control-lost': ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], 'step-ticked': ['approved', ...RUN], 'turned-back': ['dark'], 'control-back': ['dark'],
+    'went-dark': ['in-hand'], 'control-lost': ['plan', 'approved', 'in-hand', 'hand-back', 'settle'], 'step-ticked': ['approved', ...RUN], 'turn-back-ordered': ['dark'], 'turned-back': ['dark'], 'control-back': ['dark'],
     'silence-announced': BEFORE_SEAL, 'note-added': BEFORE_SEAL, 'correction': BEFORE_SEAL, 'questioned-settled': BEFORE_SEAL, 'question-asked': [...RUN, 'submitted'], 'question-answered': BEFORE_SEAL,
     'hands-offered': ['approved', ...RUN], 'hands-withdrawn': ['approved', ...RUN], 'hands-refused': ['approved', ...RUN], 'hands-taken': ['approved', ...RUN],
     'voice-decision': [...RUN, 'submitted'], 'voice-confirmed': BEFORE_SEAL, 'voice-denied': BEFORE_SEAL, // the decision in the body is one of those phases

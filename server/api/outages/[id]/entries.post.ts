@@ -7,6 +7,7 @@ import { readBodyAs, readParamsAs } from '~~/server/utils/parse'
 import { markSeen } from '~~/server/utils/people/devices'
 import type { PushAnswer } from '~~/server/utils/record/append'
 import { appendEntries } from '~~/server/utils/record/append'
+import { wakeWatch } from '~~/server/utils/watch/wake'
 
 const PUSH_MAX_BYTES = 4_000_000
 const params = z.object({ id: z.string().uuid().toLowerCase() })
@@ -21,6 +22,7 @@ export default defineEventHandler(async (event) => {
   const { entries } = await readBodyAs(event, pushSchema, PUSH_MAX_BYTES)
   const [db, now] = [useDatabase(), Date.now()]
   const answer = await appendEntries(db, person, id, entries, now)
+  wakeWatch(db, id)
   await markSeen(db, person.id, devicesTaken(entries, answer), now)
   setResponseStatus(event, statusOf(answer))
   return withReason(answer)
