@@ -1,10 +1,25 @@
 import type { z } from 'zod'
-import type { PersonItem, personCreateSchema, personUpdateSchema } from '~~/shared/schemas/people'
+import type { MaybeRefOrGetter } from 'vue'
+import type { PeoplePage, PersonItem, Role, personCreateSchema, personUpdateSchema } from '~~/shared/schemas/people'
 
-/** Everybody, by name; for administrators. */
-export function usePeople() {
+export interface PeopleFilter { q?: string, role?: Role, account?: 'on' | 'off' }
+
+/** The first page of accounts by name, for administrators. It is read anew when the filter changes. */
+export function usePeople(filter: MaybeRefOrGetter<PeopleFilter> = {}) {
   const request = useRequestFetch()
-  return useAsyncData('people', async () => (await request<{ items: PersonItem[] }>('/api/people')).items)
+  return useAsyncData(() => `people:${JSON.stringify(toValue(filter))}`, () => request<PeoplePage>('/api/people', { query: toValue(filter) }))
+}
+
+/** A further page: `after` is the `next` of the one before. */
+export function fetchPeople(filter: PeopleFilter, after: string): Promise<PeoplePage> {
+  return $fetch<PeoplePage>('/api/people', { query: { ...filter, after } })
+}
+
+/** One account. */
+export function usePerson(id: string) {
+  const request = useRequestFetch()
+  const path: string = `/api/people/${id}`
+  return useAsyncData(`person-${id}`, () => request<PersonItem>(path))
 }
 
 export function createPerson(body: z.input<typeof personCreateSchema>): Promise<PersonItem> {

@@ -67,6 +67,17 @@ export interface PersonItem {
   createdAt: string
 }
 
+/** What a list of people is asked for. */
+export const personFilterSchema = z.object({
+  q: z.string().trim().max(100, 'At most 100 characters').default(''),
+  role: z.enum(ROLES, { errorMap: () => ({ message: 'Choose a role' }) }).optional(),
+  account: z.enum(['on', 'off'], { errorMap: () => ({ message: 'Choose on or off' }) }).optional(),
+  after: z.string().max(1000).optional(),
+})
+
+/** A page of people, by name; `all` and `on` count every account. */
+export interface PeoplePage { items: PersonItem[], next: string | null, all: number, on: number }
+
 export interface SiteName { id: string, code: string, name: string }
 
 /** Who is signed in, and the sites that are theirs. */

@@ -1,4 +1,5 @@
 // Promises of this project's own; no published source.
+import postgres from 'postgres'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { Account, PersonItem } from '../../shared/schemas/people'
 import { signIn, visitor } from '../support/client'
@@ -121,5 +122,44 @@ describe('changing a person', () => {
     expect((await client.send('GET', '/api/account')).status).toBe(401)
     await expect(signIn(server.url, 'forgot@quillfeather.example', OWN_PASSWORD)).rejects.toThrow('was not let in')
     expect((await change(first.id, { password: 'given for one day' })).status).toBe(403)
+  })
+})
+
+describe('a long list of people', () => {
+  interface Page { items: PersonItem[], next: string | null, all: number, on: number }
+  const list = async (query: string) => (await administrator.send<Page>('GET', `/api/people?${query}`)).body
+
+  it('comes by pages, in one order, each account once', async () => {
+    const sql = postgres(server.databaseUrl, { max: 1, onnotice: () => {} })
+    // Several of one name: the order breaks on the id.
+    await sql`insert into people (email, name, role, password_hash) select 'many' || n || '@quillfeather.example', 'Many ' || (n / 3), 'auditor', 'none' from generate_series(1, 120) n`
+    await sql.end()
+    const seen: PersonItem[] = []
+    for (let after = ''; ;) {
+      const page = await list(`role=auditor&q=many${after}`)
+      expect(page.items.length).toBeLessThanOrEqual(50)
+      seen.push(...page.items)
+      if (page.next === null) break
+      after = `&after=${encodeURIComponent(page.next)}`
+    }
+    expect(seen).toHaveLength(120)
+    expect(new Set(seen.map(person => person.id)).size).toBe(120)
+  })
+
+  it('is searched in names, addresses and sites, by role, and by accounts that are off', async () => {
+    expect((await list('q=MANY7%40')).items.map(person => person.email)).toEqual(['many7@quillfeather.example'])
+    expect((await list('q=%25')).items).toEqual([])
+    expect((await list('q=many&role=technician')).items).toEqual([])
+    const off = await list('account=off')
+    expect(off.items.length).toBeGreaterThan(0)
+    expect(off.items.every(person => person.disabledAt !== null)).toBe(true)
+    expect(off.all - off.on).toBe(off.items.length)
+    for (const query of ['role=owner', 'account=gone', `q=${'x'.repeat(101)}`, 'after=nothing']) expect((await administrator.send('GET', `/api/people?${query}`)).status).toBe(422)
+  })
+
+  it('has each account under its own address, for administrators', async () => {
+    const { items: [one] } = await list('q=many7%40')
+    expect((await administrator.send<PersonItem>('GET', `/api/people/${one!.id}`)).body).toEqual(one)
+    expect((await administrator.send('GET', '/api/people/00000000-0000-4000-8000-000000000000')).status).toBe(404)
   })
 })

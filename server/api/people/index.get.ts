@@ -1,8 +1,11 @@
+import { personFilterSchema } from '~~/shared/schemas/people'
 import { requireRole } from '~~/server/utils/access'
-import { listPeople } from '~~/server/utils/people/manage'
+import { useDatabase } from '~~/server/utils/database'
+import { readQueryAs } from '~~/server/utils/parse'
+import { listPeople } from '~~/server/utils/people/list'
 
-/** Everybody who has an account, for administrators. */
+/** Accounts by name, by keyset pages; for administrators. */
 export default defineEventHandler(async (event) => {
   requireRole(event, 'administrator')
-  return { items: await listPeople() }
+  return listPeople(useDatabase(), readQueryAs(event, personFilterSchema))
 })

@@ -13,15 +13,6 @@ import { hashPassword } from './password'
 
 type Row = typeof people.$inferSelect
 
-/** Everybody, by name. */
-export async function listPeople(): Promise<PersonItem[]> {
-  const db = useDatabase()
-  const [rows, access] = await Promise.all([db.select().from(people).orderBy(asc(people.name), asc(people.id)), db.select().from(siteAccess)])
-  const siteIds = new Map<string, string[]>()
-  for (const { personId, siteId } of access) siteIds.set(personId, [...siteIds.get(personId) ?? [], siteId])
-  return rows.map(row => itemOf(row, siteIds.get(row.id) ?? []))
-}
-
 /** Makes an account with a password that its owner must change. 409 for an e-mail address in use. */
 export async function createPerson(by: Changer, { email, name, role, password, siteIds }: z.output<typeof personCreateSchema>): Promise<PersonItem> {
   const passwordHash = await hashPassword(password)
@@ -102,7 +93,8 @@ async function keepPerson(tx: Queries, by: Changer, { id, name }: PersonItem, be
   await keepChange(tx, by, { subject: 'person', subjectId: id, subjectName: name, siteId: null, deed, fields: differences(before, after) })
 }
 
-function itemOf(row: Row, siteIds: string[]): PersonItem {
+/** An account as an administrator sees it. */
+export function itemOf(row: Row, siteIds: string[]): PersonItem {
   const { id, email, name, role, mustChangePassword, disabledAt, createdAt } = row
   return { id, email, name, role, siteIds: [...siteIds].sort(), mustChangePassword, disabledAt: disabledAt?.toISOString() ?? null, createdAt: createdAt.toISOString() }
 }
