@@ -3,9 +3,11 @@ import { navigateTo, useAsyncData, useAuth } from '#imports'
 import type { BodyInput } from '~~/shared/record/kinds'
 import type { Snapshot } from '~~/shared/record/snapshot'
 import { uuidv7 } from '~~/shared/record/uuid'
+import type { WorkKindItem } from '~~/shared/schemas/site-view'
 import { useOutage } from '~/composables/useOutage'
 import { keptEquipment } from '~/offline/equipment'
-import { fetchControllers, fetchSnapshot } from '~/queries/opening'
+import { keptWorkKinds } from '~/offline/work-kinds'
+import { fetchControllers, fetchSnapshot, fetchWorkKinds } from '~/queries/opening'
 import type { ControllerItem } from '~/queries/opening'
 import { readFault } from '~/utils/api-error'
 import { signingFault } from '~/utils/signing-fault'
@@ -23,6 +25,18 @@ async function controllersHere(person: string, error: unknown): Promise<Choice[]
   const held = await keptEquipment(person).catch(() => [])
   if (held.length === 0) throw error
   return held.map(({ snapshot: { controller, site }, keptAt }) => ({ id: controller.id, name: controller.name, place: controller.place, site: { id: site.id, code: site.code, name: site.name, timeZone: site.timeZone }, keptAt }))
+}
+
+/** The kinds of work: the server's, or those that this phone keeps. */
+export async function workKindsFor(person: string): Promise<{ items: WorkKindItem[], keptAt: number | null }> {
+  try {
+    return { items: await fetchWorkKinds(), keptAt: null }
+  } catch (error) {
+    rethrowIfHeard(error)
+    const held = await keptWorkKinds(person).catch(() => null)
+    if (!held) throw error
+    return held
+  }
 }
 
 async function snapshotFor(controller: string, person: string): Promise<Snapshot> {

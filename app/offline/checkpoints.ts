@@ -10,7 +10,7 @@ import type { CheckSignature } from '~~/shared/record/verify/signatures'
 import { webSignatures } from '~~/shared/record/verify/signatures'
 
 /** What a device has seen of an outage's log: the last checkpoint that the log gave, and where it once parted from it. */
-export interface Seen { outage: string, checkpoint: Checkpoint, parting: Parting | null }
+export interface Seen { outage: string, checkpoint: Checkpoint, parting: Parting | null, /** those of logs that this device left, by its person's word */ left?: Checkpoint[] }
 
 export interface SeenStore { get: (outage: string) => Promise<Seen | null>, put: (seen: Seen) => Promise<void> }
 
@@ -41,6 +41,12 @@ export async function isParted(outage: string): Promise<boolean> {
   return await seenStore.get(outage).then(seen => seen?.parting != null, () => false)
 }
 
+/** The device goes on from another log: what it saw of the one before stays beside it. @param checkpoint of the log that is taken */
+export async function leaveSeen(outage: string, checkpoint: Checkpoint, store: SeenStore = seenStore): Promise<void> {
+  const before = await store.get(outage)
+  await store.put({ outage, checkpoint, parting: null, left: [...before?.left ?? [], ...before ? [before.checkpoint] : []] })
+}
+
 export interface LogPage { size: number, checkpoint: Checkpoint | null }
 
 export interface LogWatch {
@@ -62,11 +68,13 @@ export function watchLog(outage: string, store: SeenStore = seenStore, signature
   const parting = shallowRef<Parting | null>(null)
   let frontier = EMPTY_FRONTIER
   let seen: Checkpoint | null = null
+  let left: Pick<Seen, 'left'> = {}
   let check: Promise<CheckSignature> | null = null
 
   async function open(): Promise<void> {
     const kept = await store.get(outage).catch(() => null)
     seen = kept?.checkpoint ?? null
+    left = kept?.left ? { left: kept.left } : {}
     parting.value = kept?.parting ?? null
   }
 
@@ -80,14 +88,14 @@ export function watchLog(outage: string, store: SeenStore = seenStore, signature
     if (parted) return part(parted)
     if (!told || told.statement.size > frontier.size || told.statement.size <= (seen?.statement.size ?? 0) || !await isSigned(told, keyOf)) return
     seen = told
-    await store.put({ outage, checkpoint: told, parting: null }).catch(() => undefined)
+    await store.put({ outage, checkpoint: told, parting: null, ...left }).catch(() => undefined)
   }
 
   /** What is shown is what this device saw first, not what it is told now. */
   async function part(found: Parting): Promise<void> {
     const checkpoint = seen ?? found.checkpoint
     parting.value = { ...found, checkpoint }
-    await store.put({ outage, checkpoint, parting: parting.value }).catch(() => undefined)
+    await store.put({ outage, checkpoint, parting: parting.value, ...left }).catch(() => undefined)
   }
 
   /** A checkpoint that is not validly signed proves nothing, and is not kept; where signatures cannot be checked it is taken as it comes. */

@@ -1,4 +1,5 @@
 import type { Role } from '~~/shared/schemas/people'
+import type { WorkKindItem } from '~~/shared/schemas/site-view'
 import type { KeptPerson } from './database'
 import { openKept } from './database'
 
@@ -12,6 +13,8 @@ interface Facts {
   colleagues: Record<string, { id: string, name: string, role: Role }[]>
   /** the tag of the kept equipment, and whose it is */
   equipmentTag: { person: string, tag: string, keptAt: number }
+  /** the kinds of work, and who was signed in when they were read */
+  workKinds: { person: string, keptAt: number, items: WorkKindItem[] }
 }
 
 export async function keptFact<K extends keyof Facts>(name: K): Promise<Facts[K] | null> {

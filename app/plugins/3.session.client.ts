@@ -1,8 +1,9 @@
 import type { KeptPerson } from '~/offline/database'
-import { fetchEquipment } from '~/queries/opening'
+import { fetchEquipment, fetchWorkKinds } from '~/queries/opening'
 import { fetchSession } from '~/queries/session'
 import { refreshEquipment } from '~/offline/equipment'
 import { forgetOthers, keepPerson } from '~/offline/person'
+import { refreshWorkKinds } from '~/offline/work-kinds'
 import { useSending } from '~/stores/sending'
 
 /**
@@ -19,7 +20,9 @@ export default defineNuxtPlugin((nuxtApp) => {
     sending.session = 'current'
     await keepPerson({ id, name, email, role, mustChangePassword }).catch(() => undefined)
     await forgetOthers(id).catch(() => undefined)
-    if ((role === 'technician' || role === 'supervisor') && !mustChangePassword) await refreshEquipment(id, Date.now(), fetchEquipment).catch(() => undefined)
+    if (mustChangePassword || (role !== 'technician' && role !== 'supervisor')) return
+    await refreshEquipment(id, Date.now(), fetchEquipment).catch(() => undefined)
+    await refreshWorkKinds(id, Date.now(), fetchWorkKinds).catch(() => undefined)
   }
 
   /** @returns whether the server was heard */

@@ -1,14 +1,13 @@
 import type { Snapshot } from '~~/shared/record/snapshot'
 import type { OutageState } from '~~/shared/record/state'
 import type { OutageItem, OutagePage } from '~~/shared/schemas/outage-list'
-import type { StepPlan } from '~~/shared/schemas/work'
+import type { WorkKindItem } from '~~/shared/schemas/site-view'
 
 export interface ControllerItem { id: string, name: string, place: string, site: { id: string, code: string, name: string, timeZone: string } }
-export interface WorkKindItem { id: string, name: string, steps: StepPlan[], rollBack: StepPlan[] }
 
 /** What an outage can be opened of, and for which work. */
 export const fetchControllers = () => $fetch<ControllerItem[]>('/api/controllers', { retry: 0, timeout: 8000 })
-export const fetchWorkKinds = () => $fetch<WorkKindItem[]>('/api/work-kinds')
+export const fetchWorkKinds = () => $fetch<WorkKindItem[]>('/api/work-kinds', { retry: 0, timeout: 8000 })
 export const fetchSnapshot = (controller: string) => $fetch<Snapshot>(`/api/controllers/${controller}/snapshot`, { retry: 0, timeout: 8000 })
 
 /** All equipment of the person's sites with its tag; null where it is as `tag` says. Throws where it cannot be had. */

@@ -1,5 +1,6 @@
 /** Receipts and checkpoints over HTTP, recomputed with code of the test's own (RFC 9162, 2.1.1; RFC 8032). */
 import { createHash, createPublicKey, verify } from 'node:crypto'
+import postgres from 'postgres'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { canonical, verifyRecord } from '../../scripts/verify.mjs'
 import type { Checkpoint } from '../../shared/record/checkpoint'
@@ -75,6 +76,26 @@ describe('signers in the log', () => {
     expect(entries.slice(-2).map(({ entry }) => entry.kind)).toEqual(['signer-named', 'note-added'])
     expect(entries.at(-2)!.entry.body).toMatchObject({ person: world.people.technician.id, name: 'Another Name', publicKey: phone.publicKey })
     await check(answer.checkpoint!)
+  })
+})
+
+describe('a database that was restored from a backup', () => {
+  it('takes again, byte for byte, what a device signed after it', async () => {
+    const kept = await world.open(phone)
+    const later = ['one', 'two', 'three'].map(words => phone.write(kept, 'note-added', { words }))
+    const { body: backup } = await phone.push(kept, later.slice(0, 1))
+    await phone.push(kept, later.slice(1))
+    // The log as a backup of after the first note has it; only the owner of the database can do this.
+    const sql = postgres(world.server.databaseUrl, { max: 1, onnotice: () => {} })
+    await sql.begin(async (tx) => {
+      await tx`set local session_replication_role = replica`
+      await tx`delete from entries where outage_id = ${kept} and seq > ${backup.size}`
+      await tx`update outages set size = ${backup.size}, fold_version = 0, frontier = null, checkpoint = (select checkpoint from entries where outage_id = ${kept} and seq = ${backup.size}) where id = ${kept}`
+    })
+    await sql.end()
+    const { status, body } = await phone.push(kept, later)
+    expect([status, body.results.map(result => [result.status, 'seq' in result && result.seq])]).toEqual([200, later.map((_, index) => ['accepted', backup.size + index])])
+    expect((await phone.act(kept, 'note-added', { words: 'and on' })).status).toBe(200)
   })
 })
 
