@@ -1,8 +1,8 @@
 import { clockWords, countWords, minuteWords, numberWords, temperatureWords } from '../../shared/charts/words'
 import { isoTime } from '../../shared/record/entry'
-import type { PointLine } from '../../shared/record/record-lines'
+import type { ExceptionLine, PointLine } from '../../shared/record/record-lines'
 import { celsius, groupName, inUnit, isOver, judgedReadings, nameOf } from '../../shared/record/select'
-import { fullStampWords } from '../../shared/record/summary-words'
+import { deniedWords, exceptionWords, fullStampWords } from '../../shared/record/summary-words'
 import { handWords } from '../../shared/schemas/point-kinds'
 import { pressureFigure, pressureUnitWords } from '../../shared/utils/pressure'
 import type { PaperMark } from './marks'
@@ -40,10 +40,18 @@ export async function drawPoints(sheet: Sheet, { summary }: RecordPaper): Promis
   sheet.y += 6
   const notes = summary.pointLines.flatMap(({ tag, excused, exception, inHand }) => [
     ...(excused && !inHand ? [[`${tag}, excused`, `${excused.reason}; instead: ${excused.measure} (${excused.by}, ${clock(excused)})`] as const] : []),
-    ...(exception ? [[`${tag}, left`, `${exception.reason}; ${exception.owner} until ${fullStampWords(exception.until, timeZone)} (signed by ${exception.by}, ${clock(exception)})`] as const] : []),
+    ...(exception ? [exceptionNote(tag, exception, timeZone)] : []),
   ])
   if (notes.length > 0) sheet.list(() => notes.forEach(([label, words]) => sheet.labelled(label, words)))
   sheet.paragraph('Marks: ring = in auto, filled square = in hand, ring with a tick = back and proven, ring with a bar = excused.', { style: { size: 7.5 } })
+}
+
+/** What the paper says of an exception; one given by voice and denied afterwards is struck. */
+function exceptionNote(tag: string, exception: ExceptionLine, timeZone: string): readonly [string, string] {
+  const { reason, owner, until, voice, by, at, denied } = exception
+  const clock = (time: number) => clockWords(isoTime(time), timeZone, true)
+  if (denied) return [`${tag}, struck`, `${exceptionWords(exception, timeZone)} (taken down by ${by}, ${clock(at)}). Struck: ${deniedWords(exception)} (${clock(denied.at)})`]
+  return [`${tag}, left`, `${reason}; ${owner} until ${fullStampWords(until, timeZone)} (${voice === null ? 'signed' : `by voice of ${voice}, taken down`} by ${by}, ${clock(at)})`]
 }
 
 /** The rounds, then every product temperature by case and round. */

@@ -10,7 +10,7 @@ import { acceptedWords } from './margin'
 import { nameOf, pointName, pointsInHand, proofsDue } from './select'
 import type { OutageState } from './state'
 import type { RecordSummary } from './summary'
-import { amountWords, fullStampWords } from './summary-words'
+import { amountWords, deniedWords, fullStampWords } from './summary-words'
 
 /** One thing to look at: in words, and the place in the log of the entry that it comes from (null where none does). */
 export interface AttentionItem { words: string, seq: number | null, /** it stands in the way of the seal */ open: boolean }
@@ -57,7 +57,8 @@ function leftBehind(state: OutageState, summary: RecordSummary): Attention[] {
   return [
     { what: 'Still in hand', items: pointsInHand(state).map(point => item(`${named(point.tag)}${point.hand === null ? '' : `, ${handWords(point.hand)}`}`, point.mark?.seq ?? null)) },
     { what: 'Proofs due', items: proofsDue(state).map(point => item(`${named(point.tag)}, back in auto and not seen to answer`, point.mark?.seq ?? null)) },
-    { what: 'Left by exception', items: summary.pointLines.flatMap(({ tag, exception }) => exception ? [item(`${tag}: ${exception.owner}, by ${fullStampWords(exception.until, timeZone)}: ${exception.reason}`, exception.seq)] : []) },
+    { what: 'Left by exception', items: summary.pointLines.flatMap(({ tag, exception }) => exception && !exception.denied ? [item(`${tag}: ${exception.owner}, by ${fullStampWords(exception.until, timeZone)}: ${exception.reason}`, exception.seq)] : []) },
+    { what: 'Exceptions denied', items: summary.pointLines.flatMap(({ tag, exception }) => exception?.denied ? [item(`${tag}: ${deniedWords(exception)}`, exception.denied.seq)] : []) },
     { what: 'Excused points', items: summary.pointLines.flatMap(({ tag, excused, inHand }) => excused && !inHand ? [item(`${tag}: ${excused.reason}; instead: ${excused.measure}`, excused.seq)] : []) },
   ]
 }

@@ -40,7 +40,18 @@ export interface PointLine {
   backSeen: Entry<'point-in-auto'>['body']['seen'] | null
   proven: Line | null
   excused: (Line & { reason: string, measure: string }) | null
-  exception: (Line & { owner: string, until: number, reason: string }) | null
+  exception: ExceptionLine | null
+}
+
+/** A point left in hand or unproven by a supervisor's exception. */
+export interface ExceptionLine extends Line {
+  owner: string
+  until: number
+  reason: string
+  /** who gave it by voice, by name; null where they signed it themselves */
+  voice: string | null
+  /** that supervisor, or another, said afterwards that it was not so: then it never stood */
+  denied: (Line & { reason: string }) | null
 }
 
 /**
@@ -56,10 +67,10 @@ export function pointLines(state: OutageState, entries: readonly StoredEntry[]):
     open.set(tag, line)
     return line
   }
-  for (const { stored, entry } of acceptedOf(entries, 'point-in-hand', 'point-excused', 'point-in-auto', 'point-proven', 'left-in-exception')) {
+  for (const { stored, entry } of acceptedOf(entries, 'point-in-hand', 'point-excused', 'point-in-auto', 'point-proven', 'left-in-exception', 'voice-decision')) {
     const line = lineOf(state, stored)
-    if (entry.kind === 'left-in-exception') {
-      for (const left of entry.body.points) (open.get(left.tag) ?? begin(left.tag)).exception = { ...line, owner: left.owner, until: Date.parse(left.by) - entry.skew, reason: left.reason }
+    if (entry.kind === 'left-in-exception' || entry.kind === 'voice-decision') {
+      for (const { tag, exception } of exceptionsOf(state, entry, line)) (open.get(tag) ?? begin(tag)).exception = exception
       continue
     }
     const { tag } = entry.body
@@ -83,6 +94,15 @@ export function pointLines(state: OutageState, entries: readonly StoredEntry[]):
   const untouched = state.plan.points.map(planned => planned.tag).filter(tag => !open.has(tag)).sort()
   for (const tag of untouched) begin(tag)
   return lines
+}
+
+/** The exceptions that an entry gives, also one that a supervisor gave by voice. */
+function exceptionsOf(state: OutageState, entry: Entry<'left-in-exception'> | Entry<'voice-decision'>, line: Line): { tag: string, exception: ExceptionLine }[] {
+  const spoken = entry.kind === 'voice-decision' ? entry.body : null
+  const body = entry.kind === 'left-in-exception' ? entry.body : entry.body.decision.kind === 'left-in-exception' ? entry.body.decision.body : null
+  const answer = spoken ? state.voices.find(voice => voice.entry === entry.id)?.answer ?? null : null
+  const denied = answer?.what === 'denied' ? { ...lineOfMark(state, answer.mark), reason: answer.words } : null
+  return (body?.points ?? []).map(left => ({ tag: left.tag, exception: { ...line, owner: left.owner, until: Date.parse(left.by) - entry.skew, reason: left.reason, voice: spoken?.supervisorName ?? null, denied } }))
 }
 
 export interface CheckLine { id: string, ask: string, outcome: 'done' | 'needless' | 'not signed', words: string, line: Line | null }

@@ -1,4 +1,5 @@
 import { clockWords, countWords, dateWords, durationWords, listWords, numberWords, offsetWords, temperatureWords } from '../charts/words'
+import type { ExceptionLine } from './record-lines'
 import type { ActLine, RecordSummary } from './summary'
 import { isoTime } from './entry'
 
@@ -77,4 +78,14 @@ export function signatureDigits(signature: string): string {
 /** A hash in groups of four: "8f1c 52ab 90de 417c … 2b6e". */
 export function hashWords(hash: string): string {
   return `${(hash.slice(0, 16).match(/.{4}/g) ?? []).join(' ')} … ${hash.slice(-4)}`
+}
+
+/** What an exception said, in words. */
+export function exceptionWords({ owner, until, reason, voice }: ExceptionLine, timeZone: string): string {
+  return `left by exception${voice === null ? '' : ` (by voice, ${voice})`}: ${reason}; ${owner} until ${fullStampWords(until, timeZone)}`
+}
+
+/** That an exception given by voice was denied, by whom and why; empty where it was not. */
+export function deniedWords({ voice, denied }: ExceptionLine): string {
+  return denied === null ? '' : `denied by ${denied.by}: ${denied.reason}. ${voice ?? 'Nobody'} did not leave it; it never stood`
 }

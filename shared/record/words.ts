@@ -36,6 +36,11 @@ const voiceOf = (state: OutageState, decision: string) => {
   return voice ? `: ${voice.supervisorName} ${spokenWords(state, voice.decision)}` : ''
 }
 
+const deniedBy = (state: OutageState, decision: string) => {
+  const answer = state.voices.find(item => item.entry === decision)?.answer
+  return answer?.what === 'denied' && `struck: denied by ${nameOf(state, answer.mark.by)}`
+}
+
 /** Every kind in words: one way to say a thing on screens, in the PDF and in the CSV. */
 const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } = {
   'signer-named': (_state, { body }) => tell(`Signer named: ${body.name}, ${body.role}`, `key on ${body.deviceName}`),
@@ -65,7 +70,7 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'hands-withdrawn': (state, { body }) => tell(`Offer to ${offeredTo(state, body.offer)} withdrawn`, body.reason),
   'hands-refused': (state, { body }) => tell(`Offer of ${offeredBy(state, body.offer)} refused`, body.reason),
   'hands-taken': (state, { body }) => tell(`Work taken over from ${nameOf(state, body.from)}${body.offer === null ? ', without an offer' : ''}`, join(`${body.looked.length} looked at`, ...body.looked.filter(item => item.found !== '').map(item => `${lookedAt(state, item)}: ${item.found}`), body.words)),
-  'voice-decision': (state, { body }) => tell(`By voice: ${body.supervisorName} ${spokenWords(state, body.decision)}`, join(`given ${body.givenAt.slice(0, 16).replace('T', ' ')} UTC`, `“${body.words}”`)),
+  'voice-decision': (state, { id, body }) => tell(`By voice: ${body.supervisorName} ${spokenWords(state, body.decision)}`, join(`given ${body.givenAt.slice(0, 16).replace('T', ' ')} UTC`, `“${body.words}”`, deniedBy(state, id))),
   'voice-confirmed': (state, { body }) => tell(`Decision by voice signed${voiceOf(state, body.decision)}`, body.words),
   'voice-denied': (state, { body }) => tell(`Decision by voice denied${voiceOf(state, body.decision)}`, body.reason),
   'hand-back-closed': (_state, { body }) => tell('Hand back closed', body.words),

@@ -7,8 +7,11 @@ import type { Spoken } from '../../../shared/record/kinds/hands'
 import { marginAt } from '../../../server/utils/hold/margin'
 import { acceptanceWanted, namedMinutes } from '../../../shared/record/margin'
 import { otherMeasure } from '../../../shared/record/measures'
+import { pointLines } from '../../../shared/record/record-lines'
 import { nameOf } from '../../../shared/record/select'
+import { deniedWords, exceptionWords } from '../../../shared/record/summary-words'
 import { deniedFaults, openVoices, VOICE_MS, voiceDue, voiceLine, voicesLate } from '../../../shared/record/voice'
+import { told } from '../../../shared/record/words'
 import type { RecordWriter } from '../../support/record'
 import { secondTechnician, supervisor, technician, testSigner, uuidFor } from '../../support/record'
 import { BEGAN, DAIRY, goOn, judged, planOf, returnAll, signChecks, storyTo } from './store'
@@ -125,6 +128,19 @@ describe('a denial', () => {
     writer.sign(supervisor, 'returned', { reason: 'prove C-1' })
     writer.sign(technician, 'point-proven', { tag: 'C-1' })
     expect(deniedFaults(writer.state)).toEqual([])
+  })
+
+  it('strikes the exception in the lines of the points, with who denied it and why', () => {
+    const writer = proofDue()
+    const decision = writer.sign(technician, 'voice-decision', spoken(writer, exception())).id
+    const line = () => pointLines(writer.state, writer.entries).find(item => item.tag === 'C-1')!.exception!
+    expect(line()).toMatchObject({ owner: 'Piet Harrow', reason: 'not called for tonight', voice: 'Ines Calloway', by: technician.name, denied: null })
+    expect([exceptionWords(line(), 'UTC'), deniedWords(line())]).toEqual([expect.stringMatching(/^left by exception \(by voice, Ines Calloway\): not called for tonight; Piet Harrow until /), ''])
+    writer.sign(other, 'voice-denied', { decision, reason: 'Ines was asleep' })
+    expect(line().denied).toMatchObject({ by: 'Orla Finch', reason: 'Ines was asleep' })
+    expect(deniedWords(line())).toBe('denied by Orla Finch: Ines was asleep. Ines Calloway did not leave it; it never stood')
+    const entry = writer.entries.find(stored => stored.entry.id === decision)!.entry
+    expect(told(writer.state, entry).seen).toContain('struck: denied by Orla Finch')
   })
 
   it('leaves alone what a supervisor signed meanwhile', () => {
