@@ -58,10 +58,10 @@ test('the screens of the others', async ({ page, open }) => {
   for (const path of ['/', '/records', '/records?words=nobodywrotethis', '/insights', '/exports', `/records/${submitted.id}`, `/outages/${submitted.id}`, `/outages/${submitted.id}/review`]) await look(page, path, false)
   const desk = await open('desk')
   await signInAs(desk, people.auditor)
-  for (const path of ['/', '/records', '/records?tag=C-1&sort=shortest-hold&from=2026-01-01', '/insights', '/exports', `/records/${sealed.id}`]) await look(desk, path, false)
+  for (const path of ['/', '/records', '/records?tag=C-1&sort=shortest-hold&from=2026-01-01', '/insights', '/exports', `/records/${sealed.id}`, '/retention/deleted']) await look(desk, path, false)
   const admin = await open('desk')
   await signInAs(admin, people.administrator)
   const sites = await (await admin.request.get('/api/sites')).json() as { id: string }[]
   const technician = (await (await admin.request.get('/api/people')).json() as { items: { id: string, email: string }[] }).items.find(person => person.email === people.technician)!
-  for (const path of ['/', '/people', '/people/new', `/people/${technician.id}`, '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/history`, '/people/history', '/work-kinds/history', '/exports/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
+  for (const path of ['/', '/people', '/people/new', `/people/${technician.id}`, '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/history`, '/people/history', '/retention', '/retention/due', '/retention/history', `/retention/records/${sealed.id}`, '/account/device', '/work-kinds/history', '/exports/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
 })

@@ -1,8 +1,8 @@
 import { defineStore } from 'pinia'
 import { computed, ref, shallowRef } from 'vue'
-import type { EntryKind } from '~~/shared/record/kinds'
 import type { Phase } from '~~/shared/record/phases'
 import { GATES } from '~~/shared/signing/gate-kinds'
+import type { SignedAct } from '~~/shared/signing/gate-kinds'
 import { IDLE_MINUTES, isIdle, waitLeft } from '~~/shared/signing/pin'
 import { canSign, forgetKey, hasPin, keepKey, keptKey, makeKey, openWithPin, plainUnlocked } from '~/offline/keys'
 import type { PinAnswer, UnlockedKey } from '~/offline/keys'
@@ -14,7 +14,7 @@ export interface EnrolledDevice { id: string, name: string, publicKey: string }
 export class NotUnlocked extends Error {}
 
 /** The PIN dialog that stands open: which act it is for, and whom it answers. */
-export interface PinRequest { kind: EntryKind | null, settle: (key: UnlockedKey | null) => void }
+export interface PinRequest { kind: SignedAct | null, settle: (key: UnlockedKey | null) => void }
 
 /** The signing key of the person on this device. Unlocked it stands in the memory of this page only. */
 export const useSigner = defineStore('signer', () => {
@@ -79,14 +79,14 @@ export const useSigner = defineStore('signer', () => {
    * The key, ready to sign; asks for the PIN where it is locked, and before a gate always.
    * @throws NotUnlocked when the person gives none
    */
-  function unlocked(kind: EntryKind): Promise<UnlockedKey> {
+  function unlocked(kind: SignedAct): Promise<UnlockedKey> {
     if (!key.value) return Promise.reject(new Error('This browser is not enrolled to sign for you'))
     touch()
     if (open.value && !GATES[kind]) return Promise.resolve(open.value)
     return ask(kind)
   }
 
-  function ask(kind: EntryKind | null): Promise<UnlockedKey> {
+  function ask(kind: SignedAct | null): Promise<UnlockedKey> {
     asking ??= new Promise<UnlockedKey>((resolve, reject) => {
       request.value = { kind, settle: found => found ? resolve(found) : reject(new NotUnlocked('Nothing is signed: the PIN was not given.')) }
     }).finally(() => {

@@ -36,10 +36,11 @@ const OTHER_LABELS: Record<string, string> = {
   first: 'Told first', second: 'Told second', third: 'Told third', secondAfter: 'Told second after, minutes', thirdAfter: 'Told third after, minutes',
   changedPoints: 'Changed points',
   records: 'Records', bytes: 'Bytes',
+  legalHold: 'Legal hold', liftedReason: 'Lifted because', reason: 'Reason', years: 'Years that records are kept',
 }
 
 /** 'Rack A, a rack, changed'; 'The site itself changed'. */
-export function changeTitle({ subject, subjectName, deed }: ChangeItem): string {
+export function changeTitle({ subject, subjectName, deed, fields }: ChangeItem): string {
   switch (subject) {
     case 'site': return deed === 'added' ? 'The site added' : 'The site itself changed'
     case 'limits': return 'Limits changed'
@@ -47,6 +48,8 @@ export function changeTitle({ subject, subjectName, deed }: ChangeItem): string 
     case 'person': return `${subjectName} ${DEEDS[deed]}`
     case 'work-kind':
     case 'export': return `${subjectName} ${DEEDS[deed]}`
+    case 'retention': return `${subjectName}: how long records are kept`
+    case 'record': return deed === 'deleted' ? `Record ${subjectName} deleted` : `Record ${subjectName}: legal hold ${fields.some(field => field.field === 'liftedReason') ? 'lifted' : 'put on'}`
     default: return `${subjectName}, ${RESOURCE_WORDS[subject].one}, ${DEEDS[deed]}`
   }
 }
@@ -70,6 +73,7 @@ function specOf(subject: ChangeItem['subject'], field: string): FieldSpec | unde
 }
 
 function valueWords(value: unknown, field: string, spec: FieldSpec | undefined, site: SiteView | null): string {
+  if (field === 'years' && value === null) return 'as all sites'
   if (value === null || value === '' || (Array.isArray(value) && value.length === 0)) return 'nothing'
   if (field === 'role') return ROLE_WORDS[value as Role].toLowerCase()
   if (field === 'steps' || field === 'rollBack') return (value as StepPlan[]).map(step => `${step.name} ${step.shortest}–${step.likely}–${step.longest} min${step.dark ? ', dark' : ''}`).join('; ')

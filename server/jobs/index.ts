@@ -2,6 +2,7 @@ import { alertNowJob, alertsJob } from './alerts'
 import type { AnyJob } from './job'
 import { expireExportsJob, makeExportsJob } from './make-exports'
 import { makeFactsJob } from './make-facts'
+import { removeFilesJob } from './remove-files'
 import { sendMailsJob } from './send-mails'
 
 /** Every job there is. */
@@ -11,5 +12,6 @@ export const JOBS: readonly AnyJob[] = [
   expireExportsJob,
   makeExportsJob,
   makeFactsJob,
+  removeFilesJob,
   sendMailsJob,
 ]

@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { RESOURCE_NAMES } from './site-view'
 
 /** What an administrator changes, or somebody takes away; its history is kept for ever. */
-export const CHANGE_SUBJECTS = ['site', 'limits', 'alerts', ...RESOURCE_NAMES, 'person', 'work-kind', 'export'] as const
+export const CHANGE_SUBJECTS = ['site', 'limits', 'alerts', ...RESOURCE_NAMES, 'person', 'work-kind', 'export', 'retention', 'record'] as const
 export type ChangeSubject = (typeof CHANGE_SUBJECTS)[number]
 
 export const CHANGE_DEEDS = ['added', 'changed', 'deleted', 'exported', 'downloaded'] as const
@@ -39,8 +39,11 @@ export function settingMarks(latestFirst: readonly Pick<ChangeItem, 'at' | 'by' 
 /** A page of a history; `next` is asked for as `before`. */
 export interface ChangePage { items: ChangeItem[], next: string | null }
 
+/** Subjects of no one site's equipment, whose histories are read on their own. */
+const LISTED_SUBJECTS = ['person', 'work-kind', 'export', 'retention', 'record'] as const
+
 export const changePageSchema = z.object({ before: z.string().uuid().optional() })
 export const changeListSchema = changePageSchema.extend({
-  subject: z.enum(['person', 'work-kind', 'export'], { errorMap: () => ({ message: 'Choose person, work-kind or export' }) }),
+  subject: z.enum(LISTED_SUBJECTS, { errorMap: () => ({ message: `Choose one of ${LISTED_SUBJECTS.join(', ')}` }) }),
   subjectId: z.string().uuid().optional(),
 })

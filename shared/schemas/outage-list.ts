@@ -15,9 +15,13 @@ export interface OutageItem {
   startsAt: string | null
   darkAt: string | null
   endedAt: string | null
+  /** under legal hold */
+  held: boolean
   planSubmitted: boolean
   /** decisions given by voice in the reader's name, not signed yet */
   voices: number
+  /** decisions by voice that nobody signed within 12 hours */
+  voicesLate: number
 }
 
 /** A page of outages, newest first; `next` goes on from here, null at the end. */

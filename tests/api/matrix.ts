@@ -60,13 +60,14 @@ export const MATRIX: Row[] = [
 
   { route: 'GET /api/devices', expected: ALL(200), path: () => '/api/devices' },
   { route: 'PATCH /api/devices/[id]', expected: [401, 404, 404, 404, 404, 404], path: ids => `/api/devices/${ids.device}`, body: () => ({ name: 'Not mine' }), unknown: `/api/devices/${NOTHING}` },
-  { route: 'POST /api/devices', expected: [401, 422, 422, 403, 422, 403], path: () => '/api/devices', body: () => ({}) },
+  { route: 'POST /api/devices', expected: [401, 422, 422, 403, 422, 422], path: () => '/api/devices', body: () => ({}) },
   // Another's device: not theirs, so not there, but for an administrator. Asked last, since it is revoked then.
   { route: 'DELETE /api/devices/[id]', expected: [401, 404, 404, 404, 404, 200], path: ids => `/api/devices/${ids.device}`, unknown: `/api/devices/${NOTHING}` },
 
   { route: 'GET /api/people', expected: ADMIN(200), path: () => '/api/people' },
   { route: 'POST /api/people', expected: ADMIN(422), path: () => '/api/people', body: () => ({}) },
   { route: 'GET /api/people/[id]/devices', expected: ADMIN(200), path: ids => `/api/people/${ids.person}/devices`, unknown: `/api/people/${NOTHING}/devices` },
+  { route: 'GET /api/people/[id]', expected: ADMIN(200), path: ids => `/api/people/${ids.person}`, unknown: `/api/people/${NOTHING}` },
   { route: 'PATCH /api/people/[id]', expected: ADMIN(200), path: ids => `/api/people/${ids.person}`, body: () => ({}), unknown: `/api/people/${NOTHING}` },
 
   { route: 'GET /api/sites', expected: ALL(200), path: () => '/api/sites' },
@@ -79,10 +80,16 @@ export const MATRIX: Row[] = [
   { route: 'PUT /api/sites/[siteId]/alerts', expected: SITE_ADMIN(200), path: ids => `/api/sites/${ids.site}/alerts`, body: () => PLAIN_ALERT_RULES, unknown: `/api/sites/${NOTHING}/alerts` },
   { route: 'GET /api/sites/[siteId]/limits', expected: SITE(200), path: ids => `/api/sites/${ids.site}/limits`, unknown: `/api/sites/${NOTHING}/limits` },
   { route: 'PUT /api/sites/[siteId]/limits', expected: SITE_ADMIN(200), path: ids => `/api/sites/${ids.site}/limits`, body: () => ({ holding: { addAccuracy: false, allowsMinus12: false, classes: [] }, instrumentCheckDays: 90 }), unknown: `/api/sites/${NOTHING}/limits` },
+  { route: 'PUT /api/sites/[siteId]/retention', expected: SITE_ADMIN(422), path: ids => `/api/sites/${ids.site}/retention`, body: () => ({}), unknown: `/api/sites/${NOTHING}/retention` },
   { route: 'GET /api/sites/[siteId]/history', expected: SITE(200), path: ids => `/api/sites/${ids.site}/history`, unknown: `/api/sites/${NOTHING}/history` },
   { route: 'POST /api/sites/[siteId]/[resource]', expected: SITE_ADMIN(422), path: ids => `/api/sites/${ids.site}/racks`, body: () => ({}), unknown: `/api/sites/${NOTHING}/racks` },
   { route: 'PATCH /api/sites/[siteId]/[resource]/[id]', expected: SITE_ADMIN(200), path: (ids, asker) => `/api/sites/${ids.site}/racks/${ids.rack(asker)}`, body: () => ({}), unknown: `/api/sites/${NOTHING}/racks/${NOTHING}` },
   { route: 'DELETE /api/sites/[siteId]/[resource]/[id]', expected: SITE_ADMIN(204), path: (ids, asker) => `/api/sites/${ids.site}/racks/${ids.rack(asker)}`, unknown: `/api/sites/${NOTHING}/racks/${NOTHING}` },
+
+  { route: 'GET /api/retention', expected: ADMIN(200), path: () => '/api/retention' },
+  { route: 'PUT /api/retention', expected: ADMIN(422), path: () => '/api/retention', body: () => ({}) },
+  { route: 'GET /api/retention/due', expected: ADMIN(200), path: () => '/api/retention/due' },
+  { route: 'GET /api/retention/deleted', expected: ALL(200), path: () => '/api/retention/deleted' },
 
   { route: 'GET /api/controllers', expected: ALL(200), path: () => '/api/controllers' },
   { route: 'GET /api/controllers/[id]/snapshot', expected: SITE(200), path: ids => `/api/controllers/${ids.controller}/snapshot`, unknown: `/api/controllers/${NOTHING}/snapshot` },
@@ -128,6 +135,11 @@ export const MATRIX: Row[] = [
   { route: 'GET /api/outages/[id]/files/[sha256]', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/files/${ids.file}`, unknown: `/api/outages/${NOTHING}/files/${HASH}` },
   // Bytes that are no picture are 422 to those who may send one.
   { route: 'PUT /api/outages/[id]/files/[sha256]', expected: [401, 422, 404, 403, 422, 403], path: ids => `/api/outages/${ids.outage}/files/${HASH}`, body: () => ({}), unknown: `/api/outages/${NOTHING}/files/${HASH}` },
+  { route: 'GET /api/outages/[id]/retention', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/retention`, unknown: `/api/outages/${NOTHING}/retention` },
+  { route: 'PUT /api/outages/[id]/hold', expected: [401, 403, 404, 403, 422, 422], path: ids => `/api/outages/${ids.outage}/hold`, body: () => ({}), unknown: `/api/outages/${NOTHING}/hold` },
+  // Nothing of this outage was deleted.
+  { route: 'GET /api/outages/[id]/deletion', expected: SITE(404), path: ids => `/api/outages/${ids.outage}/deletion`, unknown: `/api/outages/${NOTHING}/deletion` },
+  { route: 'POST /api/outages/[id]/deletion', expected: ADMIN(422), path: ids => `/api/outages/${ids.outage}/deletion`, body: () => ({}), unknown: `/api/outages/${NOTHING}/deletion` },
   { route: 'GET /api/outages/[id]/lessons', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/lessons`, unknown: `/api/outages/${NOTHING}/lessons` },
   { route: 'GET /api/outages/[id]/people', expected: SITE(200), path: ids => `/api/outages/${ids.outage}/people`, unknown: `/api/outages/${NOTHING}/people` },
   { route: 'POST /api/outages/[id]/lessons', expected: [401, 403, 404, 403, 422, 422], path: ids => `/api/outages/${ids.outage}/lessons`, body: () => ({ cases: [], steps: [] }), unknown: `/api/outages/${NOTHING}/lessons` },

@@ -9,7 +9,7 @@ import { requirePassword } from '~~/server/utils/people/fresh'
 
 /** Registers a device's public key for the person, who gives their password once more; the key that it replaces is revoked with it. */
 export default defineEventHandler(async (event) => {
-  const person = requireRole(event, 'technician', 'supervisor')
+  const person = requireRole(event, 'technician', 'supervisor', 'administrator')
   const { id, name, publicKey, password, replaces } = await readBodyAs(event, deviceEnrolSchema)
   await requirePassword(event, person, password, 'password')
   const db = useDatabase()

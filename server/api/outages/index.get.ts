@@ -15,5 +15,5 @@ const query = z.object({
 /** Outages that the person may see, newest first, by keyset pages. */
 export default defineEventHandler(async (event) => {
   const person = requirePerson(event)
-  return listOutages(person, readQueryAs(event, query))
+  return listOutages(person, readQueryAs(event, query), Date.now())
 })

@@ -36,9 +36,10 @@ export const outages = pgTable('outages', {
   index('outages_opened').on(table.openedAt, table.id),
   index('outages_phase').on(table.phase, table.openedAt, table.id),
   index('outages_controller').on(table.controllerId),
+  index('outages_ended').on(table.endedAt, table.id).where(sql`${table.endedAt} is not null`),
 ])
 
-/** The log. Append-only: a trigger in the migrations refuses update and delete. */
+/** The log. Append-only: a trigger in the migrations refuses update, and delete but for a whole record by its signed statement. */
 export const entries = pgTable('entries', {
   outageId: uuid().notNull().references(() => outages.id, { onDelete: 'restrict' }),
   seq: integer().notNull(),

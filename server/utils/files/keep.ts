@@ -3,6 +3,7 @@ import type { Storage } from 'unstorage'
 import { files } from '../../database/schema'
 import type { Queries } from '../database'
 import { unprocessable } from '../errors'
+import { lockFile } from './lock'
 import { inspectPicture } from './picture'
 import { readBytes, writeBytes } from './storage'
 
@@ -21,7 +22,7 @@ export async function heldFiles(db: Queries, outageId: string): Promise<Set<stri
 }
 
 /**
- * Keeps a photo or drawing of an outage. The bytes are stored before the row that says so, and the same
+ * Keeps a photo or drawing of an outage. The bytes are stored before the row that says so can be seen, and the same
  * file may be sent again.
  * @throws 422 with the reason where the file is not what its name says, no picture, too large a one, or carries metadata
  */
@@ -30,8 +31,11 @@ export async function keepFile(db: Queries, storage: Storage, { outageId, person
   if ('fault' in inspected) return unprocessable(inspected.field, inspected.fault)
   const known = await fileOf(db, outageId, sha256)
   if (known && await readBytes(storage, sha256)) return { file: known, fresh: false }
-  await writeBytes(storage, sha256, bytes)
   const file: KeptFile = { sha256, mime: inspected.mime, size: bytes.length }
-  await db.insert(files).values({ outageId, personId, ...file }).onConflictDoNothing()
+  await db.transaction(async (tx) => {
+    await lockFile(tx, sha256)
+    await tx.insert(files).values({ outageId, personId, ...file }).onConflictDoNothing()
+    await writeBytes(storage, sha256, bytes)
+  })
   return { file, fresh: known === null }
 }

@@ -40,6 +40,11 @@ export async function readBytes(storage: Storage, sha256: string): Promise<Uint8
   return bytes instanceof Uint8Array ? bytes : null
 }
 
+/** Takes a file away; one that is not there is taken away already. */
+export async function removeBytes(storage: Storage, sha256: string): Promise<void> {
+  await storage.removeItem(keyOf(sha256))
+}
+
 let opened: Storage | null = null
 
 /** The process's one store. */

@@ -12,6 +12,7 @@ import type { Person } from '../access'
 import { maySeeSite } from '../access'
 import type { Database, Queries } from '../database'
 import { notFound } from '../errors'
+import { readDeletion } from '../retention/tombstone'
 import type { PushResult, Refusal } from './admit'
 import { hastenAlerts } from '../alerts/hasten'
 import { admit, refuse } from './admit'
@@ -56,13 +57,14 @@ export async function appendEntries(db: Database, person: Person, outageId: stri
   })
 }
 
-/** The outage's row, locked; null where it is still to be opened, and then nobody else opens it meanwhile. */
+/** The outage's row, locked; null where it is still to be opened, and then nobody else opens it meanwhile. One that was deleted is never opened again. */
 async function lockOutage(tx: Queries, id: string): Promise<OutageRow | null> {
   const find = () => tx.select().from(outages).where(eq(outages.id, id)).for('update')
   const [row] = await find()
   if (row) return row
   await tx.execute(sql`select pg_advisory_xact_lock(hashtextextended(${id}, 0))`)
   const [opened] = await find()
+  if (!opened && await readDeletion(tx, id)) notFound('outage')
   return opened ?? null
 }
 

@@ -2,8 +2,9 @@ import { and, desc, eq, inArray, sql } from 'drizzle-orm'
 import { z } from 'zod'
 import { time } from '../../../shared/record/kinds/common'
 import type { Phase } from '../../../shared/record/phases'
+import { VOICE_MS } from '../../../shared/record/voice'
 import type { OutagePage } from '../../../shared/schemas/outage-list'
-import { controllers, outages, sites } from '../../database/schema'
+import { controllers, legalHolds, outages, sites } from '../../database/schema'
 import type { Person } from '../access'
 import { visibleSites } from '../access'
 import type { Queries } from '../database'
@@ -12,8 +13,8 @@ import { unprocessable } from '../errors'
 
 export interface OutageFilter { phase: Phase[], site?: string, after?: string, limit: number }
 
-/** A page of outages, newest first; `next` goes on from here, null at the end. */
-export async function listOutages(person: Person, filter: OutageFilter, db: Queries = useDatabase()): Promise<OutagePage> {
+/** A page of outages, newest first; `next` goes on from here, null at the end. @param now Unix ms */
+export async function listOutages(person: Person, filter: OutageFilter, now: number, db: Queries = useDatabase()): Promise<OutagePage> {
   const visible = await visibleSites(person, db)
   if (visible?.length === 0 || (filter.site && visible && !visible.includes(filter.site))) return { items: [], next: null }
   // Which rows make the page is settled first, by an index alone: the fold that they carry is long.
@@ -27,8 +28,10 @@ export async function listOutages(person: Person, filter: OutageFilter, db: Quer
     outage: {
       id: outages.id, code: outages.code, phase: outages.phase, planned: outages.planned, workKind: outages.workKind, pointsInHand: outages.pointsInHand,
       size: outages.size, openedAt: outages.openedAt, startsAt: outages.startsAt, darkAt: outages.darkAt, endedAt: outages.endedAt,
+      held: sql<boolean>`exists (select 1 from ${legalHolds} where ${legalHolds.outageId} = ${outages.id} and ${legalHolds.liftedAt} is null)`,
       planSubmitted: sql<boolean>`${outages.state} -> 'planSubmitted' <> 'null'::jsonb`,
       voices: sql<number>`(select count(*)::int from jsonb_array_elements(coalesce(${outages.state} -> 'voices', '[]'::jsonb)) voice where voice -> 'answer' = 'null'::jsonb and voice ->> 'supervisor' = ${person.id})`,
+      voicesLate: sql<number>`(select count(*)::int from jsonb_array_elements(coalesce(${outages.state} -> 'voices', '[]'::jsonb)) voice where voice -> 'answer' = 'null'::jsonb and (voice ->> 'givenAt')::numeric + ${VOICE_MS}::bigint < ${now}::bigint)`,
     },
     site: { id: sites.id, code: sites.code, name: sites.name, timeZone: sites.timeZone },
     controller: { id: controllers.id, name: controllers.name },

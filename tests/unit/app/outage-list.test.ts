@@ -8,7 +8,7 @@ const item = (more: Partial<OutageItem>): OutageItem => ({
   id: 'b', code: 'Q027-0041', phase: 'plan', planned: true,
   site: { id: 's', code: 'Q027', name: 'Quarry Street', timeZone: 'America/Chicago' },
   controller: { id: 'c', name: 'Rack A' },
-  workKind: 'Software update', pointsInHand: 0, size: 3, openedAt: '2026-03-01T00:00:00.000Z', startsAt: null, darkAt: null, endedAt: null, planSubmitted: false, voices: 0,
+  workKind: 'Software update', pointsInHand: 0, size: 3, openedAt: '2026-03-01T00:00:00.000Z', startsAt: null, darkAt: null, endedAt: null, held: false, planSubmitted: false, voices: 0, voicesLate: 0,
   ...more,
 })
 
