@@ -86,6 +86,8 @@ export interface RecordItem {
   site: { id: string, code: string, name: string, timeZone: string }
   controller: { id: string, name: string }
   workKind: string
+  /** under legal hold */
+  held: boolean
   openedAt: string
   endedAt: string | null
   /** where control is away now: since when */

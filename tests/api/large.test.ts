@@ -52,7 +52,7 @@ const dayOf = (from: Date, days: number) => new Date(from.getTime() + days * 86_
 
 type Work = (db: typeof listening.db) => Promise<unknown>
 const records = (who: keyof typeof cast, query: Record<string, unknown>): Work => db => listRecords(cast[who], recordQuerySchema.parse(query), db)
-const list = (who: keyof typeof cast, phase: readonly Phase[], limit: number): Work => db => listOutages(cast[who], { phase: [...phase], limit }, db)
+const list = (who: keyof typeof cast, phase: readonly Phase[], limit: number): Work => db => listOutages(cast[who], { phase: [...phase], limit }, Date.now(), db)
 
 /** Four pages, each from where the one before ended. */
 async function later(page: (after?: string) => Promise<{ next: string | null }>): Promise<void> {
@@ -86,7 +86,7 @@ function screens(): Record<string, Work> {
   return {
     ...all,
     'records: a page later on': db => later(after => listRecords(cast.auditor, recordQuerySchema.parse({ after }), db)),
-    'outages: a page later on': db => later(after => listOutages(cast.auditor, { phase: [], limit: 20, after }, db)),
+    'outages: a page later on': db => later(after => listOutages(cast.auditor, { phase: [], limit: 20, after }, Date.now(), db)),
     'a technician\'s first screen': list('second', OPEN_PHASES, 100),
     'a supervisor\'s first screen': list('auditor', [...OPEN_PHASES, 'submitted'], 100),
     'an auditor\'s first screen': list('auditor', RECORD_PHASES, 10),

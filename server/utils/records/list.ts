@@ -1,7 +1,7 @@
-import { eq, inArray } from 'drizzle-orm'
+import { and, eq, inArray, isNull } from 'drizzle-orm'
 import type { RecordFilter, RecordItem, RecordPage, RecordQuery } from '../../../shared/schemas/record-filter'
 import { MOST_COUNTED } from '../../../shared/schemas/record-filter'
-import { controllers, NO_HOLD, sites as sitesTable } from '../../database/schema'
+import { controllers, legalHolds, NO_HOLD, sites as sitesTable } from '../../database/schema'
 import type { Person } from '../access'
 import { visibleSites } from '../access'
 import type { Queries } from '../database'
@@ -41,14 +41,16 @@ export async function scopeOf(person: Person, filter: RecordFilter, db: Queries)
 /** Names are the present ones, though a site or a controller may have been renamed since. */
 async function withNames(db: Queries, rows: Row[]): Promise<RecordItem[]> {
   if (rows.length === 0) return []
-  const [sites, ofControllers] = await Promise.all([
+  const [sites, ofControllers, holds] = await Promise.all([
     db.select({ id: sitesTable.id, code: sitesTable.code, name: sitesTable.name, timeZone: sitesTable.timeZone }).from(sitesTable).where(inArray(sitesTable.id, [...new Set(rows.map(row => row.siteId))])),
     db.select({ id: controllers.id, name: controllers.name }).from(controllers).where(inArray(controllers.id, [...new Set(rows.map(row => row.controllerId))])),
+    db.select({ outageId: legalHolds.outageId }).from(legalHolds).where(and(inArray(legalHolds.outageId, rows.map(row => row.outageId)), isNull(legalHolds.liftedAt))),
   ])
+  const held = new Set(holds.map(hold => hold.outageId))
   const siteOf = new Map(sites.map(site => [site.id, site]))
   const controllerOf = new Map(ofControllers.map(controller => [controller.id, controller]))
   return rows.map(({ outageId, siteId, controllerId, holdSeconds, openedAt, endedAt, darkSince, ...row }) => ({
     id: outageId, ...row, site: siteOf.get(siteId)!, controller: controllerOf.get(controllerId)!,
-    openedAt: openedAt.toISOString(), endedAt: endedAt?.toISOString() ?? null, darkSince: darkSince?.toISOString() ?? null, holdSeconds: holdSeconds === NO_HOLD ? null : holdSeconds,
+    held: held.has(outageId), openedAt: openedAt.toISOString(), endedAt: endedAt?.toISOString() ?? null, darkSince: darkSince?.toISOString() ?? null, holdSeconds: holdSeconds === NO_HOLD ? null : holdSeconds,
   }))
 }
