@@ -46,18 +46,21 @@ const id = (what: string) => z.string().uuid(`The id of ${what}`)
 /** An empty field of a form asks for nothing. */
 const blank = <T extends z.ZodTypeAny>(schema: T) => z.preprocess(value => value === '' ? undefined : value, schema.optional())
 
+/** A text that a database can hold. */
+const text = (most: number) => z.string().trim().max(most, `At most ${most} characters`).refine(value => !value.includes('\0'), 'The character NUL is in no record')
+
 /** Fields of a search for records, as they stand in an address. */
 export const recordFilterFields = {
-  words: blank(z.string().trim().max(WORDS_SOUGHT_MAX, `At most ${WORDS_SOUGHT_MAX} characters`)), // each must occur in what was signed
+  words: blank(text(WORDS_SOUGHT_MAX)), // each must occur in what was signed
   site: blank(id('a site')),
   controller: blank(id('a controller')),
   from: blank(day), // opened on this day of the site or later
   to: blank(day), // opened on this day of the site or earlier
   person: blank(id('a person')), // who signed in it
-  work: blank(z.string().trim().max(120)), // kind of work, by its name
+  work: blank(text(120)), // kind of work, by its name
   phase: blank(several(PHASES, 'Phases')), // any of them
   outcome: blank(several(RECORD_OUTCOMES, 'Outcomes')), // all of them
-  tag: blank(z.string().trim().max(32)), // a point that was in the plan or in hand
+  tag: blank(text(32)), // a point that was in the plan or in hand
 }
 
 export const dayOrder = { path: ['to'], message: 'The last day lies before the first' }
