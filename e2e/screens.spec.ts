@@ -33,7 +33,7 @@ test('the technician\'s screens', async ({ page }) => {
   const tag = Object.keys((await (await page.request.get(`/api/outages/${dark.id}`)).json()).points)[0]
   const instrumentId = (await (await page.request.get(`/api/outages/${dark.id}`)).json()).snapshot.instruments[0].id
   for (const path of ['/', '/outages', '/outages/new', '/outages/lost', '/account', '/rulebooks', '/rulebooks/us-food-code-2022', '/rulebooks/us-food-code-2022/trial']) await look(page, path, true)
-  for (const path of ['', '/round', '/points', `/points/${encodeURIComponent(tag!)}`, '/pressures', '/steps', '/act', `/act/${caseId}`, '/turn-back', '/back', '/note', '/sent', '/silence', '/plan', '/questioned', '/hands', '/voice', '/correct', '/questions', '/instruments', `/instruments/${instrumentId}`]) await look(page, `/outages/${dark.id}${path}`, true)
+  for (const path of ['', '/round', '/points', `/points/${encodeURIComponent(tag!)}`, '/pressures', '/steps', '/act', `/act/${caseId}`, '/turn-back', '/back', '/note', '/sent', '/silence', '/plan', '/questioned', '/hands', '/voice', '/other-log', '/correct', '/questions', '/instruments', `/instruments/${instrumentId}`]) await look(page, `/outages/${dark.id}${path}`, true)
   const planned = items.find(item => item.phase === 'plan')!
   for (const path of ['', '/plan-edit', '/accept-margin', '/call-off', '/lost', '/checks', '/go-dark', '/return', '/proofs', '/exception', '/defrost', '/submit']) await look(page, `/outages/${planned.id}${path}`, true)
   await test.step('the PIN', async () => {

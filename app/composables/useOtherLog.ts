@@ -77,6 +77,6 @@ export function useOtherLog() {
     busy.value = false
   }
 
-  onMounted(read)
+  onMounted(() => { if (parting.value) void read() })
   return { parting, seen, held, given, lost, trouble, busy, done, read, goOn }
 }
