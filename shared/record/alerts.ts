@@ -54,6 +54,12 @@ export function alertLines(state: OutageState): AlertLine[] {
     .sort(byUrgency)
 }
 
+/** What an alert says, without the site that its line begins with. */
+export function withoutSite(state: OutageState, words: string): string {
+  const site = `${state.snapshot.site.name}: `
+  return words.startsWith(site) ? words.slice(site.length) : words
+}
+
 /** Those that nobody has acknowledged first, then the latest first; ties by key. */
 export function byUrgency(a: AlertLine, b: AlertLine): number {
   return Number(a.acknowledged !== null) - Number(b.acknowledged !== null) || b.raisedAt - a.raisedAt || a.key.localeCompare(b.key)

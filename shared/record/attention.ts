@@ -71,7 +71,7 @@ function product(state: OutageState, summary: RecordSummary): Attention[] {
     { what: 'Verdicts', items: summary.verdicts.filter(({ verdict }) => verdict !== 'within' && verdict !== 'unknown').map(({ at, name, verdict, clause, seq }) => item(`${clock(at)} ${name} ${VERDICT_WORDS[verdict]}${clause ? ` (${clause})` : ''}`, seq)) },
     { what: 'Acts', items: summary.acts.map(act => item(`${clock(act.at)} ${act.name}: ${act.act.toLowerCase()}${[act.product, amountWords(act.quantity, act.unit), act.place].filter(Boolean).map(part => `, ${part}`).join('')}`, act.seq)) },
     { what: 'Decided otherwise', items: summary.decidedOtherwise.map(({ name, clause, reason, seq }) => item(`${name}: ${[clause, reason].filter(Boolean).join(', ')}`, seq)) },
-    { what: 'Alerts', items: state.alerts.map(({ alert, to, acknowledged, mark }) => item(`${ALERT_WORDS[alert]} at ${clock(mark.at)}, told ${toldWords(to)}; ${acknowledged ? `acknowledged by ${acknowledged.name} at ${clock(acknowledged.at)}` : 'acknowledged by nobody'}`, mark.seq)) },
+    { what: 'Alerts', items: state.alerts.map(({ alert, to, acknowledged, mark }) => item(`${ALERT_WORDS[alert]} at ${clock(mark.at)}, sent ${toldWords(to)}; ${acknowledged ? `acknowledged by ${acknowledged.name} at ${clock(acknowledged.at)}` : 'acknowledged by nobody'}`, mark.seq)) },
     { what: 'Plant warnings not over', items: state.plant.map(({ words, seq }) => item(words, seq)) },
   ]
 }

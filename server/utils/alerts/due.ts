@@ -4,7 +4,7 @@ import type { AlertName } from '~~/shared/record/kinds/alerts'
 import type { Phase } from '~~/shared/record/phases'
 import type { AlertState, OutageState } from '~~/shared/record/state'
 import { MINUTE } from '../hold/evidence'
-import type { Finding } from './finding'
+import type { AlertFinding } from './finding'
 import { isAbout } from './finding'
 import { ALERT_RULES } from './rules'
 import { alertView } from './view'
@@ -57,9 +57,9 @@ export function alertsDue(state: OutageState, now: number, settings: AlertSettin
   return due
 }
 
-const covers = (alert: AlertState, finding: Finding) => isAbout({ about: alert.about, raisedAt: alert.mark.at }, finding)
+const covers = (alert: AlertState, finding: AlertFinding) => isAbout({ about: alert.about, raisedAt: alert.mark.at }, finding)
 
-function raise(view: AlertView, alert: AlertName, findings: Finding[], settings: AlertSettings): DueAlert[] {
+function raise(view: AlertView, alert: AlertName, findings: AlertFinding[], settings: AlertSettings): DueAlert[] {
   const rule = ALERT_RULES[alert]
   const groups = rule.together ? [findings] : findings.map(finding => [finding])
   let before = view.state.alerts.filter(item => item.alert === alert).length

@@ -2,7 +2,7 @@ import type { AlertName } from '~~/shared/record/kinds/alerts'
 import type { AlertView } from './view'
 
 /** Something of which a rule says that it is so now. */
-export interface Finding {
+export interface AlertFinding {
   /** a case's id, a point's tag, a person's id, by the rule */
   about: string
   /** an alert that was raised before this moment is not about it, Unix ms; null: any open one is */
@@ -19,7 +19,7 @@ export interface AlertRule {
   together: boolean
   /** while one of this kind is open it is not passed on: that one tells the next people already */
   yieldsTo?: AlertName
-  find: (view: AlertView) => Finding[]
+  find: (view: AlertView) => AlertFinding[]
   words: (view: AlertView, about: readonly string[]) => string
   /** when what is feared comes to pass, Unix ms; null: it has no time */
   until: (view: AlertView, about: readonly string[]) => number | null
@@ -28,6 +28,6 @@ export interface AlertRule {
 export type AlertRules = { [K in AlertName]: AlertRule }
 
 /** Whether an alert raised at a moment is about a finding. */
-export function isAbout(alert: { about: readonly string[], raisedAt: number }, finding: Finding): boolean {
+export function isAbout(alert: { about: readonly string[], raisedAt: number }, finding: AlertFinding): boolean {
   return alert.about.includes(finding.about) && (finding.since === null || alert.raisedAt >= finding.since)
 }

@@ -7,13 +7,13 @@ import type { OutageState } from '~~/shared/record/state'
 import { LONG_AGAIN_MINUTES } from '../hold/act-needed'
 import { MINUTE } from '../hold/evidence'
 import type { CaseForecast } from '../hold/for-outage'
-import type { AlertRule, Finding } from './finding'
+import type { AlertRule, AlertFinding } from './finding'
 import type { AlertView } from './view'
 
 /** A case whose verdict is worse than within is alerted by that, not by its forecast. */
 const isWithin = (state: OutageState, caseId: string) => ['within', 'unknown'].includes(state.cases[caseId]?.verdict?.verdict ?? 'within')
 
-function nearFinding({ state }: AlertView, { caseId, toward, holdMinutes }: CaseForecast): Finding[] {
+function nearFinding({ state }: AlertView, { caseId, toward, holdMinutes }: CaseForecast): AlertFinding[] {
   const read = (state.cases[caseId]?.readings ?? []).some(reading => !reading.struck && reading.method === 'product')
   if (!read || toward !== 'limit' || holdMinutes === null || holdMinutes >= LONG_AGAIN_MINUTES || !isWithin(state, caseId)) return []
   return [{ about: caseId, since: null, begins: holdMinutes < SHORT_HOLD_MINUTES }]
@@ -39,8 +39,8 @@ export const LIMIT_NEAR: AlertRule = {
   until: endOf,
 }
 
-function asked({ state }: AlertView, cause: 'act' | 'discard'): Finding[] {
-  return state.snapshot.cases.flatMap(({ id }): Finding[] => {
+function asked({ state }: AlertView, cause: 'act' | 'discard'): AlertFinding[] {
+  return state.snapshot.cases.flatMap(({ id }): AlertFinding[] => {
     const opening = state.cases[id] && openingOf(state.cases[id])
     return opening?.cause === cause ? [{ about: id, since: opening.at, begins: true }] : []
   })

@@ -5,7 +5,7 @@ import { shortList } from '~~/shared/record/alerts'
 import { caseName } from '~~/shared/record/select'
 import { MINUTE } from '../hold/evidence'
 import { LATE_MS } from '../hold/history'
-import type { AlertRule, Finding } from './finding'
+import type { AlertRule, AlertFinding } from './finding'
 import { areRoundsHeard, isSilenceAnnounced } from './view'
 import type { AlertView, DueCase, Heard } from './view'
 
@@ -16,9 +16,9 @@ const SILENT_INTERVALS = 2
 
 const isUnderWay = ({ now, lastReading }: AlertView) => lastReading !== null && now - lastReading < UNDER_WAY_MS
 /** When a case is late by half of its own interval, or by two minutes where that is more. Unix ms. */
-const missedAt = ({ from, dueAt }: DueCase) => dueAt + Math.max(LATE_MS, Math.round((dueAt - from) / 2))
+const missedAt = ({ dueAt, every }: DueCase) => dueAt + Math.max(LATE_MS, Math.round(every / 2))
 
-function lateFindings(view: AlertView, lateAt: (due: DueCase) => number): Finding[] {
+function lateFindings(view: AlertView, lateAt: (due: DueCase) => number): AlertFinding[] {
   if (!areRoundsHeard(view)) return []
   return view.due.filter(due => due.dueAt <= view.now && lateAt(due) - LATE_MS <= view.now).map(due => ({
     about: due.caseId, since: lateAt(due) - LATE_MS, begins: lateAt(due) <= view.now && !isUnderWay(view),
@@ -57,7 +57,7 @@ export const ROUND_MISSED: AlertRule = {
 
 /** The interval at which something is to be heard, ms: that of the case that is read most often, but no less than the site's. */
 function interval({ state, due }: AlertView): number {
-  return Math.max(state.snapshot.site.intervalMinutes * MINUTE, Math.min(...due.map(item => item.dueAt - item.from), Infinity))
+  return Math.max(state.snapshot.site.intervalMinutes * MINUTE, Math.min(...due.map(item => item.every), Infinity))
 }
 
 function silentSince(view: AlertView, { at, until }: Heard): number {

@@ -24,12 +24,12 @@ export async function siteAlerts(db: Queries, siteId: string): Promise<SiteAlert
 /** Sets who is told of a site's alerts; who set it and when is kept with it. 422: somebody is named who may not see the site. */
 export async function setAlertRules(siteId: string, by: Changer, rules: AlertRules): Promise<AlertRules> {
   return withSite(siteId, async (tx, site) => {
-    const { people } = await alertingOf(tx, siteId)
+    const { rules: before, people } = await alertingOf(tx, siteId)
     rules.levels.forEach(({ people: named }, index) => {
       if (named.some(id => !people.some(person => person.id === id))) unprocessable(`levels[${index}].people`, 'Somebody who stands here may not see this site, or is switched off')
     })
     await tx.update(sites).set({ alertRules: rules }).where(eq(sites.id, siteId))
-    await keepChange(tx, by, { subject: 'alerts', subjectId: siteId, subjectName: site.name, siteId, deed: 'changed', fields: differences(told(site.alertRules, people), told(rules, people)) })
+    await keepChange(tx, by, { subject: 'alerts', subjectId: siteId, subjectName: site.name, siteId, deed: 'changed', fields: differences(told(before, people), told(rules, people)) })
     return rules
   })
 }

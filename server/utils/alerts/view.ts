@@ -14,8 +14,8 @@ export interface Heard {
   until: number | null
 }
 
-/** A case that is to be read: from when its time counted, and when it was or is due. Unix ms. */
-export interface DueCase { caseId: string, from: number, dueAt: number }
+/** A case that is to be read: when it was or is due, Unix ms, and at what interval, ms. */
+export interface DueCase { caseId: string, dueAt: number, every: number }
 
 export interface AlertView {
   state: OutageState
@@ -52,7 +52,9 @@ export function alertView(state: OutageState, now: number): AlertView {
 
 function dueCase(state: OutageState, { caseId, dueAt }: CaseForecast, dark: DarkInterval): DueCase {
   const last = productReadings(state.cases[caseId]!).at(-1)
-  return { caseId, from: Math.max(last?.at ?? dark.from, dark.from), dueAt: Math.round(dueAt) }
+  const from = Math.max(last?.at ?? dark.from, dark.from)
+  // Nobody could be asked for a reading before the loss of control was known.
+  return { caseId, dueAt: Math.max(Math.round(dueAt), dark.mark.at), every: Math.round(dueAt) - from }
 }
 
 function handsOf(state: OutageState, dark: DarkInterval | null): Heard[] {

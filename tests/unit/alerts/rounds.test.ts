@@ -60,6 +60,14 @@ describe('a round that is late', () => {
     expect(of(wait(storyTo('settle'), 40), 'round-late')).toEqual([])
   })
 
+  it('of a loss that is told later counts from when it was told', () => {
+    const writer = new RecordWriter('Mill Lane', Date.UTC(2026, 2, 3, 1, 0))
+    writer.sign(technician, 'outage-opened', unplanned(writer.now - 60 * MINUTE))
+    const happened = wait(writer, 10)
+    expect(minutesOf(happened, 'round-late')).toEqual([2])
+    expect(minutesOf(happened, 'round-missed')[0]).toBeGreaterThan(2)
+  })
+
   it('counts by the readings\' own times: a round that comes late from a phone without signal is no late round', () => {
     const writer = storyTo('dark')
     const [began, due] = [writer.now, dueIn(writer)]

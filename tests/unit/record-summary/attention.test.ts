@@ -61,8 +61,8 @@ describe('an alert', () => {
     writer.serverEntry('alert-acknowledged', { key: 'round-late one', person: supervisor.id, name: supervisor.name, acknowledgedAt: at })
     const clock = clockWords(at, 'America/Chicago')
     expect(itemsOf(writer, 'Alerts').map(({ words }) => words)).toEqual([
-      `Round late at ${clock}, told to Ines Calloway; acknowledged by Ines Calloway at ${clock}`,
-      `Round late at ${clock}, told to nobody: no one is named for it; acknowledged by nobody`,
+      `Round late at ${clock}, sent to Ines Calloway; acknowledged by Ines Calloway at ${clock}`,
+      `Round late at ${clock}, sent to nobody: no one is named for it; acknowledged by nobody`,
     ])
   })
 })
