@@ -17,8 +17,8 @@ import { foldLog } from '~~/shared/record/fold'
 import { verifyRecord, webSignatures } from '~~/shared/record/verify'
 import { documentOf, longRecord } from './long-record'
 import { microseconds } from './measure'
-import type { Device } from './push-world'
-import { pushWorld } from './push-world'
+import type { Device } from '../tests/support/push-world'
+import { pushWorld } from '../tests/support/push-world'
 
 const CONNECTIONS = [1, 8, 32]
 const OUTAGES = [1, 8, 100]

@@ -7,7 +7,7 @@ import type { CaseState, OutageState } from '~~/shared/record/state'
 import { assessCase } from '../holding/for-outage'
 import type { JudgedCase } from '../holding/for-outage'
 import { isDeadlineNear } from '../holding/near'
-import { forecastCase } from './for-outage'
+import { holdToLimit } from './for-outage'
 
 const MINUTE = 60_000
 
@@ -55,8 +55,8 @@ function shortHold(state: OutageState, item: CaseState, now: number): NeededAct 
   const known = state.snapshot.cases.find(other => other.id === item.id)
   if (!dark || !known || productReadings(item).length === 0 || measureOf(state, item, now)) return null
   if (item.openings.some(opening => opening.seq > dark.mark.seq && opening.closed?.how !== 'hold')) return null
-  const { toward, holdMinutes } = forecastCase(state, known, now)
-  return toward === 'limit' && holdMinutes !== null && holdMinutes < SHORT_HOLD_MINUTES ? { cause: 'hold-short', deadline: Math.round(now + holdMinutes * MINUTE), entered: false } : null
+  const holdMinutes = holdToLimit(state, known, now)
+  return holdMinutes !== 'held' && holdMinutes !== null && holdMinutes < SHORT_HOLD_MINUTES ? { cause: 'hold-short', deadline: Math.round(now + holdMinutes * MINUTE), entered: false } : null
 }
 
 /** A case that was short of hold must hold this long before it is no longer asked for, minutes: else it would come and go. */
@@ -73,7 +73,7 @@ export function holdsAgain(state: OutageState, caseId: string, now: number): num
   const known = state.snapshot.cases.find(other => other.id === caseId)
   if (!item || !known || opening?.cause !== 'hold-short' || !openDark(state)) return null
   if (!productReadings(item).some(reading => reading.at > opening.at && reading.at <= now && !reading.questioned)) return null
-  const { toward, holdMinutes } = forecastCase(state, known, now)
-  if (toward !== 'limit' || holdMinutes === null) return 'forever'
+  const holdMinutes = holdToLimit(state, known, now)
+  if (holdMinutes === 'held' || holdMinutes === null) return 'forever'
   return holdMinutes >= LONG_AGAIN_MINUTES ? holdMinutes : null
 }

@@ -7,7 +7,7 @@ import { chilledAt } from './chilled'
 import { holdInputOf } from './defaults'
 import { darkAt, fitAt, limitC, MINUTE, SHOP_AIR_C, takenOf } from './evidence'
 import type { RunningFit, Taken } from './evidence'
-import { heldCase, isHeldOn } from './held-case'
+import { heldCase, isHeldOn, suctionOf } from './held-case'
 import type { HeldCase } from './held-case'
 import { holdTime } from './hold-time'
 import { LOW_MARK_C } from './held-on'
@@ -69,6 +69,22 @@ export function forecastCase(state: OutageState, known: SnapshotCase, now: numbe
   const last = taken.findLast(reading => reading.at <= now) ?? null
   const dark = darkAt(state, now)
   return dark === null ? withControl(state, known, last, now) : withoutControl(state, known, taken, last, dark, now)
+}
+
+/**
+ * The hold that `forecastCase` gives, alone: minutes until a case comes to its limit, the careful end; null where
+ * it never does, `held` where it is held on by hand and counts to its low mark. Asked of every case at every push.
+ * @param now Unix ms
+ */
+export function holdToLimit(state: OutageState, known: SnapshotCase, now: number): number | 'held' | null {
+  const taken = takenOf(state, known.id)
+  const last = taken.findLast(reading => reading.at <= now) ?? null
+  const dark = darkAt(state, now)
+  if (dark === null) return bareHold(known, last?.c ?? known.usualC)
+  const from = Math.max(last?.at ?? dark.from, dark.from)
+  if (isHeldOn(state, known) && !isWarming(known, taken, dark, now) && suctionOf(state, known, from) !== null) return 'held'
+  const { fit, start } = fitAt(state, known, taken, dark, now)
+  return fit.minutesFrom((now - start) / MINUTE)?.careful ?? null
 }
 
 function withControl(state: OutageState, known: SnapshotCase, last: Taken | null, now: number): CaseForecast {

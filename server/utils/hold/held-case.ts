@@ -36,12 +36,19 @@ export function isHeldOn(state: OutageState, known: SnapshotCase): boolean {
  * @param startC °C at `now`, Unix ms
  */
 export function heldCase(state: OutageState, known: SnapshotCase, startC: number, now: number): HeldCase | null {
-  const circuit = state.snapshot.circuits.find(item => item.id === known.circuitId)
-  const sstC = circuit ? suctionC(state, circuit, now) : null
-  if (!circuit || sstC === null) return null
+  const suction = suctionOf(state, known, now)
+  if (suction === null) return null
+  const { circuit, sstC } = suction
   const { lastAt, gapHours } = lastDefrost(state.snapshot, circuit, state.inHandBegun?.at ?? state.darks[0]?.from ?? now)
   const held = heldOnHold({ startC, tauHours: known.tauHours, sstC, lastDefrostAt: lastAt === null ? null : new Date(lastAt).toISOString(), usualGapHours: gapHours ?? 0, now: new Date(now).toISOString() })
   return { ...held, usualGapHours: gapHours }
+}
+
+/** The circuit of a case with its saturated suction at a moment; null where that is not known, and then nobody can say how cold it is held. */
+export function suctionOf(state: OutageState, known: SnapshotCase, now: number): { circuit: Snapshot['circuits'][number], sstC: number } | null {
+  const circuit = state.snapshot.circuits.find(item => item.id === known.circuitId)
+  const sstC = circuit ? suctionC(state, circuit, now) : null
+  return circuit && sstC !== null ? { circuit, sstC } : null
 }
 
 /** Saturated suction of a circuit's group: as last read, else its target. °C, dew; null where neither is known. */

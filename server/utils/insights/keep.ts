@@ -9,7 +9,7 @@ import { FACTS_VERSION, factsOf } from './facts'
 
 /** Phases in which an outage counts: its readings and times are there as people stand by them. */
 export const COUNTED_PHASES = ['submitted', 'sealed'] as const satisfies readonly Phase[]
-const isCounted = (phase: Phase): phase is (typeof COUNTED_PHASES)[number] => (COUNTED_PHASES as readonly Phase[]).includes(phase)
+export const isCounted = (phase: Phase): phase is (typeof COUNTED_PHASES)[number] => (COUNTED_PHASES as readonly Phase[]).includes(phase)
 
 /**
  * Keeps the facts of an outage in step with its log, in the transaction that adds entries; an outage that is

@@ -1,7 +1,6 @@
 import { eq, sql } from 'drizzle-orm'
 import type { Checkpoint } from '../../../shared/record/checkpoint'
 import type { AnyEntry, Entry } from '../../../shared/record/entry'
-import { entryHash } from '../../../shared/record/entry'
 import { frontierRoot } from '../../../shared/record/merkle'
 import { asNewest } from '../../../shared/record/newest'
 import type { Judgement } from '../../../shared/record/rules'
@@ -18,13 +17,20 @@ import { hastenAlerts } from '../alerts/hasten'
 import { admit, refuse } from './admit'
 import { openingFault } from './check-opening'
 import type { Draft } from './draft'
-import { addEntry, addServerEntry, draftOf, renameSigner, saveProjection } from './draft'
+import { addEntry, addServerEntry, draftFrom, renameSigner, saveProjection } from './draft'
 import { followUp } from './follow'
+import type { Folds } from './folds'
+import { foldsOf } from './folds'
+import type { NextSigner } from './held'
+import { nextSigner, unlessNeeded, withoutDatabase } from './held'
 import type { Known } from './known'
 import { readKnown } from './known'
-import type { OutageRow } from './log'
+import type { LockedRow } from './locked'
+import { keepFold, LOCKED_COLUMNS, lockedDraft } from './locked'
 import { renewCheck } from './renew-check'
 import { serverSigner } from './server-signer'
+import type { LogEnd } from './store-grown'
+import { isLogAlone, storeGrown } from './store-grown'
 import { surroundingsOf } from './surroundings'
 
 /** One result an entry, and the log as it then stood: its newest checkpoint is the receipt of all that is in it. */
@@ -38,28 +44,88 @@ export interface PushAnswer { results: PushResult[], size: number, phase: string
  * @throws 404 when the outage, or the site that an opening names, is not the person's to see
  */
 export async function appendEntries(db: Database, person: Person, outageId: string, items: unknown[], now: number): Promise<PushAnswer> {
+  const folds = foldsOf(db)
+  return folds.inTurn(outageId, async () => await appendToHeld(db, folds, person, outageId, items, now) ?? appendLocked(db, folds, person, outageId, items, now))
+}
+
+/**
+ * Decides a push upon the fold that this process holds, and stores it by one statement if nothing has changed
+ * meanwhile. Null where that does not do: another process wrote, an entry is refused or was sent before, or
+ * something is to be read first. Then nothing is stored.
+ */
+async function appendToHeld(db: Database, folds: Folds, person: Person, outageId: string, items: unknown[], now: number): Promise<PushAnswer | null> {
+  const held = folds.take(outageId)
+  if (held === null) return null
+  const device = nextSigner(held.state, person, items)
+  const began = { size: held.state.size, root: held.checkpoint.statement.root }
+  const answer = device && await unlessNeeded(async () => {
+    const draft = draftFrom(withoutDatabase, held, await serverSigner(db), now)
+    const known: Known = { devices: new Map([[device.id, { publicKey: device.publicKey, revokedAt: null }]]), answers: new Map() }
+    const results = await appendAll(draft, known, person, items)
+    if (results.some(result => result.status === 'refused') || !await storeHeld(db, draft, began, person, device, items)) return null
+    keepFold(folds, draft)
+    return answerOf(draft, results)
+  })
+  // Nothing was added to it: the slower way can go on from it.
+  if (answer === null && held.state.size === began.size) folds.keep(held)
+  return answer
+}
+
+/**
+ * Stores what was decided upon a held fold, if nothing of what it was decided upon has changed: by one statement,
+ * or in a transaction of several where more is written than the log.
+ */
+async function storeHeld(db: Database, draft: Draft, began: LogEnd, person: Person, device: NextSigner, items: unknown[]): Promise<boolean> {
+  if (isLogAlone(draft)) return storeGrown(db, draft, began, person, device)
   return db.transaction(async (tx) => {
+    const row = await lockOutage(tx, draft.state.id)
+    if (row?.size !== began.size || row.checkpoint?.statement.root !== began.root || !await maySeeSite(person, row.siteId, tx)) return false
+    const { devices, answers } = await readKnown(tx, person.id, items)
+    const known = devices.get(device.id)
+    if (answers.size > 0 || known?.publicKey !== device.publicKey || known.revokedAt !== null) return false
+    const locked = { ...draft, db: tx }
+    await hastenAlerts(locked)
+    await saveProjection(locked)
+    Object.assign(draft, { rows: locked.rows, cached: locked.cached })
+    return true
+  })
+}
+
+async function appendLocked(db: Database, folds: Folds, person: Person, outageId: string, items: unknown[], now: number): Promise<PushAnswer> {
+  const { draft, results } = await db.transaction(async (tx) => {
     const signer = await serverSigner(tx)
     const row = await lockOutage(tx, outageId)
     if (row && !await maySeeSite(person, row.siteId, tx)) notFound('outage')
     if (!row && !isOpening(items[0])) notFound('outage')
-    const draft = await draftOf(tx, outageId, row, signer, now)
+    const draft = await lockedDraft(tx, folds, outageId, row, signer, now)
     const before = draft.state.size
-    const known = await readKnown(tx, person.id, items)
-    const results: PushResult[] = []
-    for (const [index, item] of items.entries()) results.push(await appendOne(draft, known, person, item, `entries[${index}]`))
+    const results = await appendAll(draft, await readKnown(tx, person.id, items), person, items)
     if (draft.state.size > before) {
-      await followUp(draft)
       await hastenAlerts(draft)
       await saveProjection(draft)
     }
-    return { results, size: draft.state.size, phase: draft.state.phase, code: draft.state.code, checkpoint: draft.checkpoint }
+    return { draft, results }
   })
+  keepFold(folds, draft)
+  return answerOf(draft, results)
 }
 
-/** The outage's row, locked; null where it is still to be opened, and then nobody else opens it meanwhile. One that was deleted is never opened again. */
-async function lockOutage(tx: Queries, id: string): Promise<OutageRow | null> {
-  const find = () => tx.select().from(outages).where(eq(outages.id, id)).for('update')
+/** Adds what may be added of a push, and the server's own entries that follow from it. */
+async function appendAll(draft: Draft, known: Known, person: Person, items: unknown[]): Promise<PushResult[]> {
+  const before = draft.state.size
+  const results: PushResult[] = []
+  for (const [index, item] of items.entries()) results.push(await appendOne(draft, known, person, item, `entries[${index}]`))
+  if (draft.state.size > before) await followUp(draft)
+  return results
+}
+
+function answerOf({ state, checkpoint }: Draft, results: PushResult[]): PushAnswer {
+  return { results, size: state.size, phase: state.phase, code: state.code, checkpoint }
+}
+
+/** The outage's row without its cached fold, locked; null where it is still to be opened, and then nobody else opens it meanwhile. One that was deleted is never opened again. */
+async function lockOutage(tx: Queries, id: string): Promise<LockedRow | null> {
+  const find = () => tx.select(LOCKED_COLUMNS).from(outages).where(eq(outages.id, id)).for('update')
   const [row] = await find()
   if (row) return row
   await tx.execute(sql`select pg_advisory_xact_lock(hashtextextended(${id}, 0))`)
@@ -71,25 +137,25 @@ async function lockOutage(tx: Queries, id: string): Promise<OutageRow | null> {
 async function appendOne(draft: Draft, known: Known, person: Person, item: unknown, at: string): Promise<PushResult> {
   const admitted = admit(known, person, draft.state, item, at)
   if ('done' in admitted) return admitted.done
-  if ('faulty' in admitted) return recordRefusal(draft, known, admitted.faulty, admitted.refusal)
-  const { entry, signature } = admitted
+  if ('faulty' in admitted) return recordRefusal(draft, known, admitted.faulty, admitted.hash, admitted.refusal)
+  const { entry, signed, signature } = admitted
   await renameSigner(draft, person, entry.device)
   const judged = judge(draft.state, entry, person, await surroundingsOf(draft.db, draft.state, entry, () => frontierRoot(draft.frontier)))
   const { standing, why } = doubted(judged, draft.state.opened === null ? null : admitted.doubt)
   // There is no log yet to keep a questioned entry in, nor one that comes before the opening.
   if (draft.state.opened === null && entry.kind !== 'outage-opened') return refuse(entry.id, 409, 'This outage is not open yet', `${at}.entry.outage`)
   if (draft.state.opened === null && standing === 'questioned') return refuse(entry.id, 422, why.join('; '), `${at}.entry.body.lostAt`)
-  if (standing === 'refused') return recordRefusal(draft, known, entry, { id: entry.id, status: 'refused', code: 403, field: null, reason: why.join('; '), recorded: true })
+  if (standing === 'refused') return recordRefusal(draft, known, entry, signed.hash, { id: entry.id, status: 'refused', code: 403, field: null, reason: why.join('; '), recorded: true })
   if (entry.kind === 'outage-opened' && draft.state.opened === null) {
     const fault = openingFault((asNewest(entry) as Entry<'outage-opened'>).body)
     if (fault) return refuse(entry.id, 422, fault.reason, `${at}.entry.body.${fault.field}`)
     await openOutage(draft, person, entry)
   }
-  const stored = await addEntry(draft, entry, signature, standing, why)
+  const stored = await addEntry(draft, entry, signed, signature, standing, why)
   if (entry.kind === 'instrument-checked' && standing === 'accepted') await renewCheck(draft, entry)
   if (entry.kind === 'outage-opened' && standing === 'accepted') await numberOutage(draft, entry.body.snapshot.site.id)
   const result: PushResult = { id: entry.id, status: standing, seq: stored.seq, receivedAt: stored.receivedAt, why }
-  known.answers.set(entry.id, { outage: entry.outage, hash: draft.state.chain[entry.device]!.hash, result })
+  known.answers.set(entry.id, { outage: entry.outage, hash: signed.hash, result })
   return result
 }
 
@@ -99,10 +165,9 @@ function doubted({ standing, why }: Judgement, doubt: string | null): Judgement 
 }
 
 /** The refusal leaves n, hash and reason in the log, so that the device's chain stays whole. */
-async function recordRefusal(draft: Draft, known: Known, entry: AnyEntry, refusal: Refusal): Promise<PushResult> {
+async function recordRefusal(draft: Draft, known: Known, entry: AnyEntry, hash: string, refusal: Refusal): Promise<PushResult> {
   if (draft.state.opened === null) return { ...refusal, recorded: false }
   const { device, n, id } = entry
-  const hash = entryHash(entry)
   const stored = await addServerEntry(draft, 'entry-refused', { device, n, id, hash, reason: refusal.reason.slice(0, 1000) })
   await draft.db.insert(refusals).values({ outageId: entry.outage, deviceId: device, n, id, hash, code: refusal.code, field: withinItem(refusal.field), reason: refusal.reason, seq: stored.seq })
   known.answers.set(id, { outage: entry.outage, hash, result: { ...refusal, field: withinItem(refusal.field) } })

@@ -17,7 +17,7 @@ type Added = Pick<typeof entries.$inferInsert, 'kind' | 'standing' | 'personId' 
  * @param state the fold with these entries
  */
 export async function saveSearch(db: Queries, state: OutageState, added: readonly Added[]): Promise<void> {
-  const text = writtenText(added.filter(row => row.personId).map(row => (JSON.parse(row.signed) as { body: unknown }).body))
+  const text = writtenBy(added)
   if (added.some(bearsOnSearch)) await putRow(db, state, text)
   else if (text !== '') await addWords(db, state.id, wordsOfText(text))
 }
@@ -26,6 +26,11 @@ export async function saveSearch(db: Queries, state: OutageState, added: readonl
 async function addWords(db: Queries, outageId: string, words: SQL): Promise<void> {
   const all = withWords(outageSearch.words, words)
   await db.update(outageSearch).set({ words: all }).where(and(eq(outageSearch.outageId, outageId), sql`length(${all}) > length(${outageSearch.words})`))
+}
+
+/** What people wrote in added entries, one text. */
+export function writtenBy(added: readonly Added[]): string {
+  return writtenText(added.filter(row => row.personId).map(row => (JSON.parse(row.signed) as { body: unknown }).body))
 }
 
 /** Makes the row anew from a whole log. */

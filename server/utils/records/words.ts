@@ -6,9 +6,9 @@ const WRITTEN: ReadonlySet<string> = new Set(['words', 'reason', 'measure', 'pro
 /** Equipment as it stood is not what anybody wrote. */
 const NOT_WRITTEN: ReadonlySet<string> = new Set(['snapshot'])
 /** Bytes of one text that PostgreSQL makes words of at a time: it refuses more than a megabyte. */
-const TEXT_MAX = 400_000
+export const TEXT_MAX = 400_000
 /** A row holds no more words than this, so that nobody can fill it until nothing more is taken. */
-const LEXEMES_MAX = 20_000
+export const LEXEMES_MAX = 20_000
 /** A word of this many letters is looked for by its beginning. */
 const BEGINNING_MIN = 3
 

@@ -34,10 +34,10 @@ export class Device {
   get publicKey(): string { return publicKeyText(this.key) }
 
   /** The next entry of this device in an outage. */
-  write<K extends EntryKind>(outage: string, kind: K, input: BodyInput<K>): SignedEntry {
+  write<K extends EntryKind>(outage: string, kind: K, input: BodyInput<K>, id = uuidv7(this.now)): SignedEntry {
     const v = newestVersion(kind)
     const chain = this.chains.get(outage)
-    const entry = { v, id: uuidv7(this.now), outage, kind, body: schemaOf(kind, v)!.parse(input), at: isoTime(this.now), skew: 0, by: this.person.id, device: this.id, n: (chain?.n ?? 0) + 1, prev: chain?.hash ?? null } as unknown as AnyEntry
+    const entry = { v, id, outage, kind, body: schemaOf(kind, v)!.parse(input), at: isoTime(this.now), skew: 0, by: this.person.id, device: this.id, n: (chain?.n ?? 0) + 1, prev: chain?.hash ?? null } as unknown as AnyEntry
     this.chains.set(outage, { n: entry.n, hash: entryHash(entry) })
     return { entry, signature: signBytes(entryBytes(entry), this.key) }
   }
