@@ -36,11 +36,6 @@ export const seenStore: SeenStore = {
   },
 }
 
-/** Whether this device once saw another log of an outage: then nothing is sent to build on the present one. */
-export async function isParted(outage: string): Promise<boolean> {
-  return await seenStore.get(outage).then(seen => seen?.parting != null, () => false)
-}
-
 /** The device goes on from another log: what it saw of the one before stays beside it. @param checkpoint of the log that is taken */
 export async function leaveSeen(outage: string, checkpoint: Checkpoint, store: SeenStore = seenStore): Promise<void> {
   const before = await store.get(outage)

@@ -1,6 +1,6 @@
 import { uuidv7 } from '~~/shared/record/uuid'
 import { pushEntries } from '~/queries/entries'
-import { isParted } from './checkpoints'
+import { seenStore } from './checkpoints'
 import { browserLocks } from './locks'
 import { createOutbox } from './outbox'
 import { Unsent } from './outbox-ports'
@@ -23,8 +23,9 @@ export function keptOutbox(): Outbox {
 
 /** Nothing is sent to build on a log that is not the one this device saw. */
 const pushUnlessParted: Send = async (outage, entries) => {
-  if (await isParted(outage)) throw new Unsent('failed')
-  return pushEntries(outage, entries)
+  const seen = await seenStore.get(outage).catch(() => null)
+  if (seen?.parting) throw new Unsent('other-log')
+  return pushEntries(outage, entries, seen?.checkpoint ?? null)
 }
 
 /** Tells this tab's screens and the other tabs that what is kept of an outage has changed. */

@@ -28,13 +28,14 @@ export interface OutboxEntry {
 /** The server's answer to one entry. `later`: nothing is decided about it, it waits on. */
 export type PushResult
   = | { id: string } & Receipt
-    | { id: string | null, status: 'refused', later?: 'signer' | 'version' } & Refusal
+    | { id: string | null, status: 'refused', later?: 'signer' | 'version' | 'log' } & Refusal
 
 /**
  * Why entries wait: no answer; nobody is signed in; somebody else is; the outage is not to be found;
- * the server failed; it takes no body of this size; it does not know this version of a kind yet.
+ * the server failed; it takes no body of this size; it does not know this version of a kind yet; its log is
+ * not the one that this device saw.
  */
-export type Trouble = 'away' | 'signed-out' | 'another-signer' | 'missing' | 'failed' | 'too-large' | 'newer'
+export type Trouble = 'away' | 'signed-out' | 'another-signer' | 'missing' | 'failed' | 'too-large' | 'newer' | 'other-log'
 
 /** A push without answers to its entries. What was signed stays kept. */
 export class Unsent extends Error {

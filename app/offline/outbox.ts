@@ -14,6 +14,9 @@ const TRIES = 20
 /** Outages that are sent side by side, so that a slow one holds nobody up. */
 const SIDE_BY_SIDE = 4
 
+/** Why an entry waits about which the server has decided nothing. */
+const LATER = { signer: 'another-signer', version: 'newer', log: 'other-log' } as const
+
 const BROKEN = 'it follows an entry that was refused before it took its place in the record'
 
 /** What came of sending one outage: the server's answers by id, and why something still waits. */
@@ -133,7 +136,7 @@ function settlementOf(outage: string, batch: OutboxEntry[], results: PushResult[
       settlement.received.push({ id: kept.id, receipt: { status: result.status, seq: result.seq, receivedAt: result.receivedAt, why: result.why } })
       continue
     }
-    if (result.later) return { settlement, trouble: result.later === 'signer' ? 'another-signer' : 'newer' }
+    if (result.later) return { settlement, trouble: LATER[result.later] }
     const { code, field, reason, recorded } = result
     settlement.refused.push({ id: kept.id, refusal: { code, field, reason, recorded }, after: recorded ? null : brokenBy(kept, code) })
   }

@@ -12,10 +12,12 @@ export function fetchEntries(outage: string, after: number): Promise<EntriesPage
 
 /**
  * Pushes signed entries; one answer an entry.
+ * @param seen how the log stood when this device last saw it; null: it never did
  * @throws Unsent with the reason, when there is no answer to the entries
  */
-export async function pushEntries(outage: string, entries: { entry: AnyEntry, signature: string }[]): Promise<PushResult[]> {
-  const answer = await $fetch.raw<{ results?: PushResult[] }>(`/api/outages/${outage}/entries`, { method: 'POST', body: { entries }, retry: 0, timeout: 20_000, ignoreResponseError: true }).catch(() => null)
+export async function pushEntries(outage: string, entries: { entry: AnyEntry, signature: string }[], seen: Checkpoint | null): Promise<PushResult[]> {
+  const { size, root } = seen?.statement ?? {}
+  const answer = await $fetch.raw<{ results?: PushResult[] }>(`/api/outages/${outage}/entries`, { method: 'POST', body: { entries, ...(seen ? { seen: { size, root } } : {}) }, retry: 0, timeout: 20_000, ignoreResponseError: true }).catch(() => null)
   if (answer?._data?.results) return answer._data.results
   throw new Unsent(troubleOf(answer?.status ?? 0))
 }

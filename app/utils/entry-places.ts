@@ -33,5 +33,6 @@ export const TROUBLE_WORDS: Record<Trouble, string> = {
   'missing': 'The server does not know this outage, or it is no longer one of your sites. They stay here; tell your supervisor.',
   'failed': 'The server failed on them. They stay here and are tried again.',
   'too-large': 'The server does not take an entry of this size. It stays here; tell your administrator.',
+  'other-log': 'The log of this outage is not the one that this phone saw: nothing is sent to it. They stay here; tell your supervisor and whoever keeps the server.',
   'newer': 'They are of a newer version than the server. They are sent once it is renewed.',
 }

@@ -33,7 +33,11 @@ export const signedEntrySchema = z.object({
 export const ENTRIES_PER_PUSH = 50
 /** What the server takes at once: a round of the largest shop is one request, so that all of it is judged together or not at all. */
 export const MOST_ENTRIES_PER_PUSH = 100
-export const pushSchema = z.object({ entries: z.array(z.unknown()).min(1, 'At least one entry').max(MOST_ENTRIES_PER_PUSH, `At most ${MOST_ENTRIES_PER_PUSH} entries at once`) })
+export const pushSchema = z.object({
+  entries: z.array(z.unknown()).min(1, 'At least one entry').max(MOST_ENTRIES_PER_PUSH, `At most ${MOST_ENTRIES_PER_PUSH} entries at once`),
+  /** how the log stood when the device last saw it: on a log that does not give it nothing is built */
+  seen: z.object({ size: z.number().int().positive(), root: z.string().regex(/^[0-9a-f]{64}$/, 'A root is 64 hexadecimal digits') }).strict().optional(),
+})
 
 /** One signed act. See docs/record-format.md. */
 export interface Entry<K extends EntryKind = EntryKind> {

@@ -68,6 +68,35 @@ describe('a checkpoint', () => {
   })
 })
 
+describe('a push that says how its device saw the log', () => {
+  interface Answer { results: { status: string, code?: number, later?: string }[], size: number }
+  const pushSeen = async (entries: unknown[], seen: { size: number, root: string }) => phone.client.send<Answer>('POST', `/api/outages/${outage}/entries`, { entries, seen })
+
+  it('is taken where the log gives that, now or some entries ago, and leaves all to wait where it does not', async () => {
+    const ends: { size: number, root: string }[] = []
+    for (let count = 0; count < 3; count += 1) {
+      const { answer } = await phone.act(outage, 'note-added', { words: 'seen' })
+      ends.push({ size: answer.checkpoint!.statement.size, root: answer.checkpoint!.statement.root })
+    }
+    const [early, , last] = ends
+    const items = [phone.write(outage, 'note-added', { words: 'builds on it' }), phone.write(outage, 'note-added', { words: 'and on that' })]
+    const others = [{ size: last!.size, root: early!.root }, { size: early!.size, root: last!.root }, { size: last!.size + 1, root: last!.root }]
+    for (const seen of others) {
+      const { status, body } = await pushSeen(items, seen)
+      expect([status, body.size, body.results.map(({ status, code, later }) => [status, code, later])]).toEqual([409, last!.size, items.map(() => ['refused', 409, 'log'])])
+    }
+    expect((await pushSeen([items[0]], early!)).body.results).toMatchObject([{ status: 'accepted' }])
+    expect((await pushSeen(items, last!)).body.results).toMatchObject([{ status: 'accepted' }, { status: 'accepted' }])
+    expect((await read(last!.size)).entries).toHaveLength(2)
+  })
+
+  it('is malformed with half a root', async () => {
+    const signed = phone.write(outage, 'note-added', { words: 'never sent again' })
+    expect((await pushSeen([signed], { size: 1, root: 'ab' })).status).toBe(422)
+    phone.unwrite(outage, signed)
+  })
+})
+
 describe('signers in the log', () => {
   it('are named anew when their printed name changes, before what they sign next', async () => {
     await world.administrator.send('PATCH', `/api/people/${world.people.technician.id}`, { name: 'Another Name' })

@@ -15,7 +15,7 @@ import { signedTextOf } from './signed-text'
 /** What becomes of one pushed entry. */
 export type PushResult
   = | { id: string, status: Standing, seq: number, receivedAt: string, why: string[] }
-    | { id: string | null, status: 'refused', code: 403 | 409 | 413 | 422, field: string | null, reason: string, /** its place in the device's chain is taken */ recorded: boolean, /** nothing is decided about it: it is another's to send, or newer than this server, and waits on the device */ later?: 'signer' | 'version' }
+    | { id: string | null, status: 'refused', code: 403 | 409 | 413 | 422, field: string | null, reason: string, /** its place in the device's chain is taken */ recorded: boolean, /** nothing is decided about it: it is another's to send, newer than this server, or would build on another log than its device saw, and waits on the device */ later?: 'signer' | 'version' | 'log' }
 
 export type Refusal = Extract<PushResult, { status: 'refused' }>
 

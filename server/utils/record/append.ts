@@ -28,8 +28,9 @@ import { readKnown } from './known'
 import type { LockedRow } from './locked'
 import { keepFold, LOCKED_COLUMNS, lockedDraft } from './locked'
 import { renewCheck } from './renew-check'
+import type { LogEnd } from './seen'
+import { givesSeen, notThatLog } from './seen'
 import { serverSigner } from './server-signer'
-import type { LogEnd } from './store-grown'
 import { isLogAlone, storeGrown } from './store-grown'
 import { surroundingsOf } from './surroundings'
 
@@ -41,11 +42,12 @@ export interface PushAnswer { results: PushResult[], size: number, phase: string
  * judged and stored with the next seq, or refused with a reason. Replays are answered as the first time.
  * @param items as they came, not yet checked
  * @param now Unix ms
+ * @param seen how the log stood when the device last saw it; where it does not give that, nothing is taken and all waits
  * @throws 404 when the outage, or the site that an opening names, is not the person's to see
  */
-export async function appendEntries(db: Database, person: Person, outageId: string, items: unknown[], now: number): Promise<PushAnswer> {
+export async function appendEntries(db: Database, person: Person, outageId: string, items: unknown[], now: number, seen: LogEnd | null = null): Promise<PushAnswer> {
   const folds = foldsOf(db)
-  return folds.inTurn(outageId, async () => await appendToHeld(db, folds, person, outageId, items, now) ?? appendLocked(db, folds, person, outageId, items, now))
+  return folds.inTurn(outageId, async () => await appendToHeld(db, folds, person, outageId, items, now, seen) ?? appendLocked(db, folds, person, outageId, items, now, seen))
 }
 
 /**
@@ -53,12 +55,13 @@ export async function appendEntries(db: Database, person: Person, outageId: stri
  * meanwhile. Null where that does not do: another process wrote, an entry is refused or was sent before, or
  * something is to be read first. Then nothing is stored.
  */
-async function appendToHeld(db: Database, folds: Folds, person: Person, outageId: string, items: unknown[], now: number): Promise<PushAnswer | null> {
-  const held = folds.take(outageId)
+async function appendToHeld(db: Database, folds: Folds, person: Person, outageId: string, items: unknown[], now: number, seen: LogEnd | null): Promise<PushAnswer | null> {
+  // Where pushes are told within one transaction, as by the seed, there is no other way to the database.
+  const held = '$client' in db ? folds.take(outageId) : null
   if (held === null) return null
   const device = nextSigner(held.state, person, items)
   const began = { size: held.state.size, root: held.checkpoint.statement.root }
-  const answer = device && await unlessNeeded(async () => {
+  const answer = device && await givesSeen(db, outageId, began, seen) && await unlessNeeded(async () => {
     const draft = draftFrom(withoutDatabase, held, await serverSigner(db), now)
     const known: Known = { devices: new Map([[device.id, { publicKey: device.publicKey, revokedAt: null }]]), answers: new Map() }
     const results = await appendAll(draft, known, person, items)
@@ -67,8 +70,8 @@ async function appendToHeld(db: Database, folds: Folds, person: Person, outageId
     return answerOf(draft, results)
   })
   // Nothing was added to it: the slower way can go on from it.
-  if (answer === null && held.state.size === began.size) folds.keep(held)
-  return answer
+  if (!answer && held.state.size === began.size) folds.keep(held)
+  return answer || null
 }
 
 /**
@@ -91,13 +94,14 @@ async function storeHeld(db: Database, draft: Draft, began: LogEnd, person: Pers
   })
 }
 
-async function appendLocked(db: Database, folds: Folds, person: Person, outageId: string, items: unknown[], now: number): Promise<PushAnswer> {
+async function appendLocked(db: Database, folds: Folds, person: Person, outageId: string, items: unknown[], now: number, seen: LogEnd | null): Promise<PushAnswer> {
   const { draft, results } = await db.transaction(async (tx) => {
     const signer = await serverSigner(tx)
     const row = await lockOutage(tx, outageId)
     if (row && !await maySeeSite(person, row.siteId, tx)) notFound('outage')
     if (!row && !isOpening(items[0])) notFound('outage')
     const draft = await lockedDraft(tx, folds, outageId, row, signer, now)
+    if (row && !await givesSeen(tx, outageId, row.checkpoint && row.checkpoint.statement, seen)) return { draft, results: items.map(notThatLog) }
     const before = draft.state.size
     const results = await appendAll(draft, await readKnown(tx, person.id, items), person, items)
     if (draft.state.size > before) {

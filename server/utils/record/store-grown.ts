@@ -8,9 +8,7 @@ import { writtenBy } from '../records/save'
 import { LEXEMES_MAX, TEXT_MAX } from '../records/words'
 import type { Draft } from './draft'
 import { isFoldNear, markSaved, projectionOf } from './draft'
-
-/** A place in a log: how long it is, and the Merkle root of it all. */
-export interface LogEnd { size: number, root: string }
+import type { LogEnd } from './seen'
 
 /**
  * One statement, and so one transaction and one way to the database and back: it takes the row's lock, and stores

@@ -212,3 +212,12 @@ describe('an entry of a newer kind than the server knows', () => {
     expect((await waiting(it)).map(kept => kept.n)).toEqual([2, 3])
   })
 })
+
+describe('a log that is not the one that this device saw', () => {
+  it('gets nothing: what was signed waits, and is not refused', async () => {
+    const it = phone({ send: () => async (_outage, items) => items.map(({ entry }) => ({ id: entry.id, status: 'refused' as const, code: 409, field: null, reason: 'another log', recorded: false, later: 'log' as const })) })
+    for (const text of ['1', '2']) await it.note(text)
+    expect((await it.outbox.drain(OUTAGE, TESS.person)).trouble).toBe('other-log')
+    expect((await waiting(it)).map(kept => [kept.n, kept.refusal])).toEqual([[1, null], [2, null]])
+  })
+})

@@ -19,9 +19,9 @@ const params = z.object({ id: z.string().uuid().toLowerCase() })
 export default defineEventHandler(async (event) => {
   const person = requirePerson(event)
   const { id } = readParamsAs(event, params, 'outage')
-  const { entries } = await readBodyAs(event, pushSchema, PUSH_MAX_BYTES)
+  const { entries, seen } = await readBodyAs(event, pushSchema, PUSH_MAX_BYTES)
   const [db, now] = [useDatabase(), Date.now()]
-  const answer = await appendEntries(db, person, id, entries, now)
+  const answer = await appendEntries(db, person, id, entries, now, seen)
   wakeWatch(db, id)
   await markSeen(db, person.id, devicesTaken(entries, answer), now)
   setResponseStatus(event, statusOf(answer))
