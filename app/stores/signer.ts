@@ -54,6 +54,9 @@ export const useSigner = defineStore('signer', () => {
    */
   async function enrol(person: string, { name, password, pin }: { name: string, password: string, pin: string }): Promise<void> {
     const { kept, unlocked } = await makeKey(person, name, pin)
+    // Where there is no room for the key, nothing is enrolled that could then not sign.
+    await keepKey({ ...kept, person: `${person}/room` })
+    await forgetKey(`${person}/room`)
     await $fetch('/api/devices', { method: 'POST', body: { id: kept.device, name, publicKey: kept.publicKey, password, replaces: key.value?.device ?? null } })
     await keepKey(kept)
     hold(kept)
