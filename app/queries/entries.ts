@@ -16,8 +16,7 @@ export function fetchEntries(outage: string, after: number): Promise<EntriesPage
  * @throws Unsent with the reason, when there is no answer to the entries
  */
 export async function pushEntries(outage: string, entries: { entry: AnyEntry, signature: string }[], seen: Checkpoint | null): Promise<PushResult[]> {
-  const { size, root } = seen?.statement ?? {}
-  const answer = await $fetch.raw<{ results?: PushResult[] }>(`/api/outages/${outage}/entries`, { method: 'POST', body: { entries, ...(seen ? { seen: { size, root } } : {}) }, retry: 0, timeout: 20_000, ignoreResponseError: true }).catch(() => null)
+  const answer = await $fetch.raw<{ results?: PushResult[] }>(`/api/outages/${outage}/entries`, { method: 'POST', body: { entries, seen: seen ? { size: seen.statement.size, root: seen.statement.root } : undefined }, retry: 0, timeout: 20_000, ignoreResponseError: true }).catch(() => null)
   if (answer?._data?.results) return answer._data.results
   throw new Unsent(troubleOf(answer?.status ?? 0))
 }
