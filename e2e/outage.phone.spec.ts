@@ -132,7 +132,7 @@ test('an outage from plan to the auditor\'s PDF', async ({ page, open, advance }
     await desk.goto(`/outages/${id}/review`)
     // What is pointed out leads to its entry, and there it is asked about.
     await desk.getByRole('region', { name: 'What to look at' }).getByRole('link', { name: /^No\. \d+$/ }).first().click()
-    await desk.getByLabel(/^Ask about No\. \d+$/).fill('Was this seen from the aisle?')
+    await desk.getByRole('textbox', { name: /^Ask about No\. \d+$/ }).fill('Was this seen from the aisle?')
     await sign(desk, /^Sign: question about No\. \d+$/)
     await expect(desk.getByText('No answer yet')).toBeVisible()
     await page.goto(`/outages/${id}/questions`)

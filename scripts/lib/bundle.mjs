@@ -2,10 +2,13 @@ import { join } from 'node:path'
 import { pathToFileURL } from 'node:url'
 import { build } from 'vite'
 
+/** Not written out, so that this file can be bundled too. */
+const ADDRESS = ['import', 'meta', 'url'].join('.')
+
 /** A bundle lies elsewhere than its sources: what these find beside themselves they go on finding. */
 const ownAddress = {
   name: 'own-address',
-  transform: (code, id) => code.includes('import.meta.url') ? code.replaceAll('import.meta.url', JSON.stringify(pathToFileURL(id).href)) : null,
+  transform: (code, id) => code.includes(ADDRESS) ? code.replaceAll(ADDRESS, JSON.stringify(pathToFileURL(id).href)) : null,
 }
 
 /**
