@@ -16,14 +16,14 @@ export function useRecordSearch() {
   const ready = useRecordPage(asked)
   const { data: first, error, status, refresh } = ready
 
-  const more = shallowRef<RecordItem[]>([])
-  const next = ref<string | null>(first.value?.next ?? null)
+  /** Pages after the first, and where to go on from the last of them; null: only the first is there. */
+  const further = shallowRef<{ items: RecordItem[], next: string | null } | null>(null)
+  const next = computed(() => further.value ? further.value.next : first.value?.next ?? null)
   const busy = ref(false)
   const trouble = ref('')
-  watch(first, (page) => {
-    more.value = []
+  watch(first, () => {
+    further.value = null
     trouble.value = ''
-    next.value = page?.next ?? null
   })
 
   async function showMore() {
@@ -35,10 +35,7 @@ export function useRecordSearch() {
     try {
       const page = await fetchRecords(search, after)
       // The search may have changed while the page was on its way.
-      if (search === asked.value) {
-        more.value = [...more.value, ...page.items]
-        next.value = page.next
-      }
+      if (search === asked.value) further.value = { items: [...further.value?.items ?? [], ...page.items], next: page.next }
     } catch (error) {
       trouble.value = readFault(error).reason
     }
@@ -51,9 +48,9 @@ export function useRecordSearch() {
   }
 
   return {
-    ready, search, fault, error, status, refresh, next: readonly(next), busy: readonly(busy), trouble: readonly(trouble), showMore, change,
+    ready, search, fault, error, status, refresh, next, busy: readonly(busy), trouble: readonly(trouble), showMore, change,
     clear: () => void router.replace({ query: {} }),
-    items: computed(() => [...first.value?.items ?? [], ...more.value]),
+    items: computed(() => [...first.value?.items ?? [], ...further.value?.items ?? []]),
     count: computed(() => first.value?.count ?? null),
     isRead: computed(() => first.value !== null && first.value !== undefined),
   }
