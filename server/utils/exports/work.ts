@@ -1,8 +1,8 @@
-import { and, asc, eq, lt, or, sql } from 'drizzle-orm'
+import { and, asc, eq, lt, lte, or, sql } from 'drizzle-orm'
 import type { Storage } from 'unstorage'
 import { EXPORT_DAYS } from '../../../shared/schemas/exports'
 import type { ExportKind } from '../../../shared/schemas/exports'
-import { recordExports } from '../../database/schema'
+import { outages, recordExports } from '../../database/schema'
 import type { Database } from '../database'
 import { accessFault } from './access'
 import type { Order } from './contents'
@@ -99,8 +99,11 @@ function faultWords(error: unknown): string {
   return typeof reason === 'string' ? reason : 'Something went wrong while it was made; ask for it again, and tell your administrator if it fails once more'
 }
 
-/** Takes away files that are past their time. */
+/** Takes away files that are past their time, and those that hold a record that was deleted since. */
 export async function expireExports({ db, storage, clock }: Omit<Workshop, 'contents'>): Promise<void> {
-  const rows = await db.update(recordExports).set({ state: 'expired' }).where(and(eq(recordExports.state, 'done'), sql`${recordExports.expiresAt} <= ${new Date(clock()).toISOString()}`)).returning()
+  const now = new Date(clock())
+  const holdsDeleted = sql`exists (select from unnest(${recordExports.outageIds}) held(id) where not exists (select from ${outages} where ${outages.id} = held.id))`
+  const rows = await db.update(recordExports).set({ state: 'expired', expiresAt: sql`least(${recordExports.expiresAt}, ${now.toISOString()}::timestamptz)` })
+    .where(and(eq(recordExports.state, 'done'), or(lte(recordExports.expiresAt, now), holdsDeleted))).returning()
   for (const row of rows) await removeParts(storage, row.id, row.tries)
 }
