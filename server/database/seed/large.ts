@@ -47,7 +47,7 @@ export async function seedLarge(db: Database, count: number, now: number): Promi
     })
   }
   // Statistics and the map of what everybody may see, which a quiet hour would bring by itself.
-  for (const table of ['outages', 'outage_search']) await db.execute(sql.raw(`vacuum analyze ${table}`))
+  for (const table of ['outages', 'outage_search', 'outage_facts']) await db.execute(sql.raw(`vacuum analyze ${table}`))
   await db.execute(sql`analyze entries`)
 }
 
@@ -127,4 +127,5 @@ async function copy(tx: Queries, from: number, to: number, now: number): Promise
       s.tags || ('SPARE-' || n % 4) || case when n <= ${NEEDLE.copies}::int then array[${NEEDLE.tag}] else '{}'::text[] end,
       s.words || to_tsvector('english', 'lot ' || n % 5 || ' bolt' || n % 997 || case when n = ${NEEDLE.copy}::int then ${` ${NEEDLE.word}`} else '' end)
     from copies c join outage_search s on s.outage_id = c.template order by n`)
+  await tx.execute(sql`insert into outage_facts (outage_id, version, facts) select c.id, f.version, f.facts from copies c join outage_facts f on f.outage_id = c.template order by n`)
 }
