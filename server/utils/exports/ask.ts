@@ -51,7 +51,7 @@ function fileNameOf(kind: ExportKind, now: number): string {
 /** Writes to the history who took what away; a site's own history has it where all is of that site. */
 export async function keepExport(tx: Queries, person: Person, row: ExportRow, deed: 'exported' | 'downloaded', outages: readonly { code: string, siteId: string }[], now: number): Promise<void> {
   const sites = new Set(outages.map(({ siteId }) => siteId))
-  const codes = outages.map(({ code }) => code)
+  const codes = outages.map(({ code }) => code).sort()
   const records = codes.length > NAMED ? [...codes.slice(0, NAMED), `and ${codes.length - NAMED} more`] : codes
   await keepChange(tx, person, {
     subject: 'export', subjectId: row.id, subjectName: `${countWords(row.total, 'record')}, ${EXPORT_KIND_WORDS[row.kind]},`, siteId: sites.size === 1 ? [...sites][0]! : null, deed,
