@@ -32,10 +32,12 @@ function dueWords({ state, due }: AlertView, about: readonly string[]): string {
   return `${shortList(named.map(item => caseName(state, item.caseId)))} ${named.length === 1 ? 'was due at' : 'were due from'} ${siteClock(state, first?.dueAt ?? 0)}${named.length === 1 ? '' : ' on'}`
 }
 
-function holdWords({ state, now, forecasts, holdEnds }: AlertView): string {
+/** What is at stake: the shortest hold. @param said ids of cases that the line has named already, and nothing after them */
+function holdWords({ state, now, forecasts, holdEnds }: AlertView, said: readonly string[] = []): string {
   const first = forecasts.find(item => item.toward === 'limit' && item.holdMinutes !== null)
   if (!first || holdEnds === null) return ''
-  return holdEnds <= now ? `, and ${caseName(state, first.caseId)} may be at its limit` : `, and ${caseName(state, first.caseId)} holds until ${siteClock(state, holdEnds)} by the careful estimate`
+  const who = said.length === 1 && said[0] === first.caseId ? 'it' : caseName(state, first.caseId)
+  return holdEnds <= now ? `, and ${who} may be at its limit` : `, and ${who} holds until ${siteClock(state, holdEnds)} by the careful estimate`
 }
 
 export const ROUND_LATE: AlertRule = {
@@ -43,7 +45,7 @@ export const ROUND_LATE: AlertRule = {
   together: true,
   yieldsTo: 'round-missed',
   find: view => lateFindings(view, due => due.dueAt + LATE_MS),
-  words: (view, about) => `the round is late: ${dueWords(view, about)}${holdWords(view)}. Take the round now.`,
+  words: (view, about) => `the round is late: ${dueWords(view, about)}${holdWords(view, about)}. Take the round now.`,
   until: view => view.holdEnds,
 }
 
@@ -51,7 +53,7 @@ export const ROUND_MISSED: AlertRule = {
   start: 2,
   together: true,
   find: view => lateFindings(view, missedAt),
-  words: (view, about) => `a round is missed: ${dueWords(view, about)}${holdWords(view)}. Call whoever is there, and have the round taken now.`,
+  words: (view, about) => `a round is missed: ${dueWords(view, about)}${holdWords(view, about)}. Call whoever is there, and have the round taken now.`,
   until: view => view.holdEnds,
 }
 
