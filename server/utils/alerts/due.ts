@@ -52,6 +52,7 @@ export function alertsDue(state: OutageState, now: number, settings: AlertSettin
     due.over.push(...mine.filter(item => !held.includes(item)).map(item => item.key))
     const yields = open.some(item => item.alert === ALERT_RULES[alert].yieldsTo)
     if (!yields) due.passOn.push(...held.flatMap(item => passOn(item, now, settings)))
+    if (ALERT_RULES[alert].oneAtATime && held.some(item => item.acknowledged === null)) continue
     due.raise.push(...raise(view, alert, findings.filter(finding => !held.some(item => covers(item, finding))), settings))
   }
   return due

@@ -17,6 +17,8 @@ export interface AlertRule {
   start: 1 | 2
   /** all that is so goes into one alert, instead of one for each */
   together: boolean
+  /** while nobody has said to have seen an open one, no other is raised: it tells the same people the same */
+  oneAtATime?: boolean
   /** while one of this kind is open it is not passed on: that one tells the next people already */
   yieldsTo?: AlertName
   find: (view: AlertView) => AlertFinding[]

@@ -43,6 +43,7 @@ function holdWords({ state, now, forecasts, holdEnds }: AlertView, said: readonl
 export const ROUND_LATE: AlertRule = {
   start: 1,
   together: true,
+  oneAtATime: true,
   yieldsTo: 'round-missed',
   find: view => lateFindings(view, due => due.dueAt + LATE_MS),
   words: (view, about) => `the round is late: ${dueWords(view, about)}${holdWords(view, about)}. Take the round now.`,
@@ -52,6 +53,7 @@ export const ROUND_LATE: AlertRule = {
 export const ROUND_MISSED: AlertRule = {
   start: 2,
   together: true,
+  oneAtATime: true,
   find: view => lateFindings(view, missedAt),
   words: (view, about) => `a round is missed: ${dueWords(view, about)}${holdWords(view, about)}. Call whoever is there, and have the round taken now.`,
   until: view => view.holdEnds,

@@ -55,6 +55,17 @@ describe('a round that is late', () => {
     expect(look(writer).over).toHaveLength(1)
   })
 
+  it('is one at a time: of a case that grows late as well nothing more is told until somebody has seen the first', () => {
+    const writer = storyTo('dark')
+    const [first, second] = [DAIRY, FISH].sort() as [string, string]
+    writer.pass(3).sign(technician, 'reading-taken', reading(second, 37.2))
+    const happened = wait(writer, 20)
+    expect(of(happened, 'round-late').filter(item => item.what === 'raised')).toHaveLength(1)
+    expect(writer.state.alerts[0]!.about).toEqual([first])
+    acknowledge(writer, technician, 'round-late')
+    expect(look(writer).raise.map(item => [item.alert, item.about])).toEqual([['round-late', [second]]])
+  })
+
   it('is not alerted with control', () => {
     expect(wait(storyTo('in-hand'), 60).filter(item => item.what === 'raised')).toEqual([])
     expect(of(wait(storyTo('settle'), 40), 'round-late')).toEqual([])
