@@ -57,6 +57,7 @@ export function changeTitle({ subject, subjectName, deed, fields }: ChangeItem):
 /** What a change says, a line a field, in the site's own units. @param site null: people and kinds of work have no units */
 export function changeLines(change: ChangeItem, site: SiteView | null): string[] {
   if (change.subject === 'limits') return limitChangeLines(change, site ? rulebookById(site.rulebook) : undefined)
+  if (change.subject === 'record') return change.fields.map(({ field, before, after }) => `${field === 'legalHold' && after === null ? 'It was on because' : OTHER_LABELS[field] ?? field}: ${String(after ?? before)}`)
   return change.fields.map(({ field, before, after }) => {
     const spec = specOf(change.subject, field)
     const words = (value: unknown) => valueWords(value, field, spec, site)
