@@ -27,7 +27,7 @@ export type RecordSort = (typeof RECORD_SORTS)[number]
 export const SORT_WORDS: Record<RecordSort, string> = {
   'newest': 'Newest first',
   'oldest': 'Oldest first',
-  'longest-dark': 'Longest time without control',
+  'longest-dark': 'Longest without control',
   'shortest-hold': 'Shortest hold',
 }
 
