@@ -50,7 +50,7 @@ test('the technician\'s screens', async ({ page }) => {
 
 test('the screens of the others', async ({ page, open }) => {
   test.setTimeout(300_000)
-  await look(page, '/verify', false)
+  for (const path of ['/verify', '/forgot', '/notice/none.such', '/welcome/none.such', '/new-password/none.such']) await look(page, path, false)
   await signInAs(page, people.supervisor)
   const { items } = await (await page.request.get('/api/outages')).json() as { items: Item[] }
   const submitted = items.find(item => item.phase === 'submitted')!
@@ -63,5 +63,5 @@ test('the screens of the others', async ({ page, open }) => {
   await signInAs(admin, people.administrator)
   const sites = await (await admin.request.get('/api/sites')).json() as { id: string }[]
   const technician = (await (await admin.request.get('/api/people')).json() as { items: { id: string, email: string }[] }).items.find(person => person.email === people.technician)!
-  for (const path of ['/', '/people', '/people/new', `/people/${technician.id}`, '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/alerts`, `/sites/${sites[0]!.id}/history`, '/people/history', '/retention', '/retention/due', '/retention/history', `/retention/records/${sealed.id}`, '/account/device', '/work-kinds/history', '/exports/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
+  for (const path of ['/', '/people', '/people/new', `/people/${technician.id}`, '/sites', `/sites/${sites[0]!.id}`, `/sites/${sites[0]!.id}/limits`, `/sites/${sites[0]!.id}/alerts`, `/sites/${sites[0]!.id}/history`, '/people/history', '/admin/mail', '/admin/mailbox', '/retention', '/retention/due', '/retention/history', `/retention/records/${sealed.id}`, '/account/device', '/work-kinds/history', '/exports/history', '/rulebooks/eu-853-2004', '/work-kinds', '/account']) await look(admin, path, false)
 })

@@ -29,3 +29,9 @@ export function createPerson(body: z.input<typeof personCreateSchema>): Promise<
 export function updatePerson(id: string, body: z.input<typeof personUpdateSchema>): Promise<PersonItem> {
   return $fetch<PersonItem>(`/api/people/${id}`, { method: 'PATCH', body })
 }
+
+/** Writes the invitation again of somebody who has not chosen a password yet. */
+export function inviteAgain(id: string): Promise<PersonItem> {
+  const path: string = `/api/people/${id}/invitation`
+  return $fetch<PersonItem>(path, { method: 'POST' })
+}

@@ -31,7 +31,7 @@ function classSettingWords(value: unknown, unit: 'F' | 'C'): string {
 
 const DEEDS: Record<ChangeDeed, string> = { added: 'added', changed: 'changed', deleted: 'deleted', exported: 'exported', downloaded: 'downloaded' }
 const OTHER_LABELS: Record<string, string> = {
-  email: 'E-mail', name: 'Name', role: 'Role', sites: 'Sites', switchedOff: 'Switched off', password: 'Password',
+  email: 'E-mail', name: 'Name', role: 'Role', sites: 'Sites', switchedOff: 'Switched off', password: 'Password', invited: 'Invited',
   steps: 'Steps', rollBack: 'Way back', addedPoints: 'Added points',
   first: 'Told first', second: 'Told second', third: 'Told third', secondAfter: 'Told second after, minutes', thirdAfter: 'Told third after, minutes',
   changedPoints: 'Changed points',
@@ -57,14 +57,13 @@ export function changeTitle({ subject, subjectName, deed, fields }: ChangeItem):
 /** What a change says, a line a field, in the site's own units. @param site null: people and kinds of work have no units */
 export function changeLines(change: ChangeItem, site: SiteView | null): string[] {
   if (change.subject === 'limits') return limitChangeLines(change, site ? rulebookById(site.rulebook) : undefined)
-  if (change.subject === 'record') return change.fields.map(({ field, before, after }) => `${field === 'legalHold' && after === null ? 'It was on because' : OTHER_LABELS[field] ?? field}: ${String(after ?? before)}`)
   return change.fields.map(({ field, before, after }) => {
     const spec = specOf(change.subject, field)
     const words = (value: unknown) => valueWords(value, field, spec, site)
     const label = spec?.label ?? OTHER_LABELS[field] ?? field
     if (change.deed === 'added' || change.subject === 'export') return `${label}: ${words(after)}`
     if (change.deed === 'deleted') return `${label}: ${words(before)}`
-    return before === null && (field === 'password' || field.endsWith('Points')) ? `${label}: ${words(after)}` : `${label}: ${words(after)}, before ${words(before)}`
+    return before === null && (field === 'password' || field === 'invited' || field.endsWith('Points')) ? `${label}: ${words(after)}` : `${label}: ${words(after)}, before ${words(before)}`
   })
 }
 

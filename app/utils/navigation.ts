@@ -23,13 +23,14 @@ export function navigationFor(role: string | null | undefined): NavigationItem[]
     { label: 'Rulebooks', to: '/rulebooks' },
   ]
   if (role !== 'technician') items.splice(2, 0, { label: 'Insights', to: '/insights' })
-  if (role === 'administrator') items.push({ label: 'People', to: '/people' })
+  if (role === 'administrator') items.push({ label: 'People', to: '/people' }, { label: 'Mail', to: '/admin/mail' })
   items.push({ label: 'Account', to: '/account' })
   return items
 }
 
-/** Whether a path lies in the room of a link: '/' holds outages and plans too, any other link what begins with it. */
+/** Whether a path lies in the room of a link: '/' holds outages and plans too, mail also the mailbox, any other link what begins with it. */
 export function isWithin(path: string, to: string): boolean {
   if (to === '/') return path === '/' || path.startsWith('/outages') || path.startsWith('/plans')
+  if (to === '/admin/mail') return path.startsWith(to)
   return path === to || path.startsWith(`${to}/`)
 }

@@ -1,9 +1,10 @@
+import { enterSentNotices } from '../utils/mail/enter-sent'
 import { receiver, sendDueMails } from '../utils/mail/send'
 import { mailFrom, smtpUrl } from '../utils/mail/settings'
 import { SEND_MAILS } from '../utils/mail/write'
 import type { Job } from './job'
 
-/** Sends mails: at once when one was written, and again those that failed. */
+/** Sends mails: at once when one was written, and again those that failed. Then the records learn what was sent. */
 export const sendMailsJob: Job = {
   name: SEND_MAILS,
   every: 10,
@@ -18,5 +19,6 @@ export const sendMailsJob: Job = {
     } finally {
       close()
     }
+    await enterSentNotices(db, now)
   },
 }

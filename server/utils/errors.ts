@@ -19,7 +19,7 @@ export const forbidden = (reason: string): never => { throw failure(403, 'Forbid
 export const notFound = (what: string): never => { throw failure(404, 'Not Found', { reason: `There is no such ${what}` }) }
 /** 409: clashes with what is stored. */
 export const conflict = (reason: string, field?: string): never => { throw failure(409, 'Conflict', { reason, ...(field ? { field } : {}) }) }
-/** 410: it was there, and is taken away for good. */
+/** 410: it was there, and is over or taken away for good. */
 export const gone = (reason: string): never => { throw failure(410, 'Gone', { reason }) }
 /** 413: more bytes than are taken. */
 export const tooLarge = (reason: string): never => { throw failure(413, 'Content Too Large', { reason }) }

@@ -6,6 +6,7 @@ import { correctedTime, happenedAt } from './entry'
 import { goDarkGate, NO_RESULTS } from './gates'
 import { answerHands, offerHands, takeHands } from './hands-effects'
 import type { EntryKind } from './kinds'
+import { noticeAcknowledged, noticeSent } from './notice-effects'
 import type { Plan } from './plan'
 import { expectedSeen } from './select'
 import type { CaseState, Mark, OutageState, PointState } from './state'
@@ -48,6 +49,9 @@ export const EFFECTS: { [K in EntryKind]: Effect<K> } = {
   'alert-passed-on': (state, { body }, mark) => passOnAlert(state, body, mark),
   'alert-acknowledged': (state, { body }) => acknowledgeAlert(state, body),
   'alert-over': (state, { body }, mark) => endAlert(state, body.key, mark),
+
+  'notice-sent': (state, { body }, mark) => noticeSent(state, body, mark),
+  'notice-acknowledged': (state, { body }, mark) => noticeAcknowledged(state, body, mark),
 
   'outage-opened': (state, entry, mark) => {
     const { body } = entry

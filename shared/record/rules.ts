@@ -70,6 +70,8 @@ export const RULES: { [K in EntryKind]: Rule<K> } = {
   'alert-passed-on': serverOnly,
   'alert-acknowledged': serverOnly,
   'alert-over': serverOnly,
+  'notice-sent': serverOnly,
+  'notice-acknowledged': serverOnly,
 
   'outage-opened': { roles: HANDS, phases: ['plan'], unfit: (state, entry) => [
     ...(state.opened ? ['this outage is already open'] : []),

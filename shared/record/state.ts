@@ -6,13 +6,13 @@ import type { AlertName } from './kinds/alerts'
 import type { SeenInAuto, SeenInHand } from './kinds/hand'
 import type { OpenMatter, Spoken } from './kinds/hands'
 import type { Act } from './kinds/rounds'
-import type { ActCause, PlantFault, Verdict } from './kinds/server'
+import type { ActCause, NoticeParty, NoticeSubject, PlantFault, Verdict } from './kinds/server'
 import type { Phase } from './phases'
 import type { Plan } from './plan'
 import type { Snapshot } from './snapshot'
 
 /** Raised when the fold's meaning changes, so that cached folds are rebuilt. */
-export const FOLD_VERSION = 11
+export const FOLD_VERSION = 12
 
 /** Who did something, when (server-corrected Unix ms) and where it stands in the log. */
 export interface Mark { by: string, at: number, seq: number, entry: string }
@@ -117,6 +117,9 @@ export interface CaseState {
 export interface PressureState { round: number, at: number, suctionGroupId: string, suctionPsig: number, dischargePsig: number | null, by: string, seq: number, questioned: boolean }
 
 export interface DarkInterval { from: number, to: number | null, how: 'gate' | 'fact', words: string, /** what the gate would have missed */ breach: string[], mark: Mark }
+
+/** A mail to the shop's contact or the monitoring centre, and who said that they have read it. */
+export interface NoticeState { mail: string, party: NoticeParty, subject: NoticeSubject, name: string, to: string, /** handed in, Unix ms; null where only the answer to it is known */ sentAt: number | null, seq: number, acknowledged: { name: string, at: number, seq: number } | null }
 
 export interface Question { entry: string, about: string | null, words: string, mark: Mark, answer: { words: string, mark: Mark } | null }
 
@@ -241,6 +244,8 @@ export interface OutageState {
   chain: Record<string, { n: number, hash: string }>
   /** each device: when the server last received something of it, and until when it said that it has no signal, Unix ms */
   heard: Record<string, { at: number, until: number | null }>
+  /** what the shop and the monitoring centre were written, in the order of the log */
+  notices: NoticeState[]
   /** Largest |skew| seen, ms, and whose device */
   largestSkew: { ms: number, device: string } | null
 }
@@ -279,6 +284,6 @@ export function emptyState(id: string): OutageState {
     checks: {}, points: {}, cases: {}, instrumentChecks: [], pressures: [], plant: [], alerts: [], darks: [], turnedBack: null, turnBackOrdered: null, steps: {}, backAt: null,
     handBackClosed: null, defrostsWatched: [], notes: [], corrections: [], questions: [], questioned: [],
     calledOff: null, submitted: null, submitters: [], reviewed: null, returned: [], sealed: null, signers: {}, files: [],
-    refusals: [], chain: {}, heard: {}, largestSkew: null,
+    refusals: [], chain: {}, heard: {}, notices: [], largestSkew: null,
   }
 }

@@ -13,6 +13,7 @@ import { asNewest } from './newest'
 import { acceptedWords } from './margin'
 import { ACT_WORDS } from './kinds/rounds'
 import { VERDICT_WORDS } from './kinds/server'
+import { NOTICE_WORDS, PARTY_WORDS } from './notices'
 import { caseName, groupName, instrumentName, nameOf, pointName, SEEN_WORDS } from './select'
 import type { OutageState } from './state'
 import { spokenWords } from './voice'
@@ -47,6 +48,8 @@ const TOLD: { [K in EntryKind]: (state: OutageState, entry: Entry<K>) => Told } 
   'outage-numbered': (_state, { body }) => tell(`Numbered ${body.code}`),
   'verdict-changed': (state, { body }) => tell(`${caseName(state, body.caseId)} is ${VERDICT_WORDS[body.verdict]}`, join(body.clause, body.minutesAbove > 0 && `${Math.round(body.minutesAbove)} min above`)),
   'plant-warned': (_state, { body }) => tell(body.over ? 'Plant warning is over' : 'Plant warning', join(body.words, body.act)),
+  'notice-sent': (_state, { body }) => tell(`${PARTY_WORDS[body.party]} written to: ${NOTICE_WORDS[body.subject]}`, join(body.name, body.to)),
+  'notice-acknowledged': (_state, { body }) => tell(`${PARTY_WORDS[body.party]} has read the notice`, body.name),
   'entry-refused': (_state, { body }) => tell('An entry was refused', body.reason),
   'alert-raised': (_state, { body }) => tell(`Alert: ${ALERT_WORDS[body.alert].toLowerCase()}`, join(body.words, toldWords(body.to))),
   'alert-passed-on': (state, { body }) => tell(`Alert passed on: ${alertTitle(state, body.key)}`, join('not acknowledged', toldWords(body.to))),

@@ -2,7 +2,7 @@ import { z } from 'zod'
 
 /** What a mail is about. */
 export const MAIL_KINDS = [
-  'plan-waiting', 'plan-approved', 'plan-returned', 'notice-shop', 'notice-monitoring', 'alert', 'control-back',
+  'plan-waiting', 'plan-approved', 'plan-returned', 'notice-shop', 'notice-monitoring', 'alert', 'called-off', 'control-back',
   'discard', 'sealed', 'invitation', 'password-reset', 'password-set', 'device-enrolled',
 ] as const
 export type MailKind = (typeof MAIL_KINDS)[number]
@@ -15,8 +15,9 @@ export const MAIL_KIND_WORDS: Record<MailKind, string> = {
   'notice-shop': 'Notice to the shop',
   'notice-monitoring': 'Notice to the monitoring centre',
   'alert': 'Alert',
+  'called-off': 'Called off',
   'control-back': 'Control is back',
-  'discard': 'Product to be discarded',
+  'discard': 'Product moved or to be discarded',
   'sealed': 'Record sealed',
   'invitation': 'Invitation',
   'password-reset': 'Password reset',
@@ -45,3 +46,12 @@ export const mailItemSchema = z.object({
   lastError: z.string().nullable(),
 })
 export type MailItem = z.infer<typeof mailItemSchema>
+
+export interface MailPage { items: MailItem[], next: string | null }
+/** How mail goes out: whether at all, from whom, and whether into the demo's own mailbox. */
+export interface MailSettings { on: boolean, demo: boolean, from: string }
+export const mailListSchema = z.object({ state: z.enum(MAIL_STATES).optional(), before: z.string().uuid().optional() })
+
+/** A message of the demo's mailbox; times in ISO 8601 UTC. */
+export interface MailboxItem { name: string, at: string, to: string, from: string, subject: string }
+export interface MailboxMessage extends MailboxItem { text: string, html: string }

@@ -42,7 +42,8 @@ export const personCreateSchema = z.object({
   email: emailSchema,
   name: personNameSchema,
   role: z.enum(ROLES, { errorMap: () => ({ message: 'Choose a role' }) }),
-  password: passwordSchema,
+  /** given by an administrator, for one sign-in; null: they are invited by mail to choose their own */
+  password: passwordSchema.nullable(),
   siteIds: z.array(z.string().uuid()).max(500).default([]),
 })
 
@@ -63,6 +64,8 @@ export interface PersonItem {
   siteIds: string[]
   /** The password was given by an administrator and not changed since. */
   mustChangePassword: boolean
+  /** When they were invited by mail, until they choose a password. */
+  invitedAt: string | null
   disabledAt: string | null
   createdAt: string
 }
@@ -87,6 +90,19 @@ export const passwordChangeSchema = z.object({
   current: z.string().min(1, 'Enter the present password').max(PASSWORD_MAX),
   next: passwordSchema,
 }).refine(value => value.current !== value.next, { path: ['next'], message: 'Choose a password that differs from the present one' })
+
+/** Hours that an invitation is good, and a link to a new password. */
+export const INVITATION_HOURS = 7 * 24
+export const RESET_HOURS = 1
+/** So many links to a new password may be asked for in an hour, for one account and from one address. */
+export const RESETS_PER_ACCOUNT = 5
+export const RESETS_PER_ADDRESS = 20
+
+export const forgotSchema = z.object({ email: emailSchema })
+export const passwordByLinkSchema = z.object({ password: passwordSchema })
+
+/** What a link to a password is about. */
+export interface PasswordLink { name: string, email: string, until: string }
 
 export const DEVICE_NAME_MAX = 60
 const deviceName = z.string().trim().min(1, 'Name this device').max(DEVICE_NAME_MAX, `At most ${DEVICE_NAME_MAX} characters`)

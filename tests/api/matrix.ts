@@ -55,6 +55,14 @@ export const MATRIX: Row[] = [
   { route: 'POST /api/setup', expected: OPEN(403), path: () => '/api/setup', body: () => ({ email: 'late@quillfeather.example', name: 'Late', password: 'a long password' }) },
   { route: 'ANY /api/auth/[...]', expected: OPEN(200), path: () => '/api/auth/session' },
 
+  // A link that was not made here is nobody's.
+  { route: 'GET /api/notices/[token]', expected: OPEN(404), path: () => '/api/notices/none.such', unknown: '/api/notices/another' },
+  { route: 'POST /api/notices/[token]', expected: OPEN(404), path: () => '/api/notices/none.such', body: () => ({ name: 'Maud Finch' }), unknown: '/api/notices/another' },
+  { route: 'GET /api/password-links', expected: OPEN(200), path: () => '/api/password-links' },
+  { route: 'POST /api/password-links', expected: OPEN(422), path: () => '/api/password-links', body: () => ({}) },
+  { route: 'GET /api/password-links/[purpose]/[token]', expected: OPEN(404), path: () => '/api/password-links/invitation/none.such', unknown: '/api/password-links/nothing/none.such' },
+  { route: 'POST /api/password-links/[purpose]/[token]', expected: OPEN(404), path: () => '/api/password-links/password-reset/none.such', body: () => ({ password: 'a long password' }), unknown: '/api/password-links/nothing/none.such' },
+
   { route: 'GET /api/account', expected: ALL(200), path: () => '/api/account' },
   { route: 'POST /api/account/password', expected: ALL(422), path: () => '/api/account/password', body: () => ({}) },
 
@@ -68,7 +76,15 @@ export const MATRIX: Row[] = [
   { route: 'POST /api/people', expected: ADMIN(422), path: () => '/api/people', body: () => ({}) },
   { route: 'GET /api/people/[id]/devices', expected: ADMIN(200), path: ids => `/api/people/${ids.person}/devices`, unknown: `/api/people/${NOTHING}/devices` },
   { route: 'GET /api/people/[id]', expected: ADMIN(200), path: ids => `/api/people/${ids.person}`, unknown: `/api/people/${NOTHING}` },
+  { route: 'POST /api/people/[id]/invitation', expected: ADMIN(409), path: ids => `/api/people/${ids.person}/invitation`, body: () => ({}), unknown: `/api/people/${NOTHING}/invitation` },
   { route: 'PATCH /api/people/[id]', expected: ADMIN(200), path: ids => `/api/people/${ids.person}`, body: () => ({}), unknown: `/api/people/${NOTHING}` },
+
+  { route: 'GET /api/mails', expected: ADMIN(200), path: () => '/api/mails' },
+  { route: 'GET /api/mails/settings', expected: ADMIN(200), path: () => '/api/mails/settings' },
+  { route: 'POST /api/mails/[id]/retry', expected: ADMIN(404), path: () => `/api/mails/${NOTHING}/retry`, body: () => ({}), unknown: `/api/mails/${NOTHING}/retry` },
+  // The demo's own, which is not there elsewhere.
+  { route: 'GET /api/mailbox', expected: ADMIN(404), path: () => '/api/mailbox' },
+  { route: 'GET /api/mailbox/[name]', expected: ADMIN(404), path: () => '/api/mailbox/none', unknown: '/api/mailbox/another' },
 
   { route: 'GET /api/sites', expected: ALL(200), path: () => '/api/sites' },
   { route: 'POST /api/sites', expected: ADMIN(422), path: () => '/api/sites', body: () => ({}) },

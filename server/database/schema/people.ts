@@ -12,6 +12,7 @@ export const people = pgTable('people', {
   passwordHash: text().notNull(),
   sessionVersion: integer().notNull().default(1), // raised to end every session
   mustChangePassword: boolean().notNull().default(false),
+  invitedAt: timestamp({ withTimezone: true }), // by mail, and no password was chosen since
   disabledAt: timestamp({ withTimezone: true }),
   createdAt: timestamp({ withTimezone: true }).notNull().defaultNow(),
 }, table => [

@@ -3,9 +3,10 @@ import { sha256Hex } from '../../../shared/record/canonical'
 import type { OutageState } from '../../../shared/record/state'
 import { alerts, alertTold, people } from '../../database/schema'
 import type { Queries } from '../database'
+import { alertLetter } from '../../emails/alert'
+import { aboutOutage } from '../mail/tell-contacts'
 import { writeMail } from '../mail/write'
 import type { AlertsDue } from './due'
-import { alertLetterOf } from './letter'
 
 /** Alerts of one outage that come so close upon each other go as one mail, ms. */
 export const TOGETHER_MS = 60_000
@@ -31,7 +32,7 @@ export async function mailTold(db: Queries, state: OutageState, now: number): Pr
   for (const personId of [...new Set(waiting.map(row => row.personId))].sort()) {
     const mine = waiting.filter(row => row.personId === personId)
     const key = `alert ${state.id} ${personId} ${sha256Hex(mine.map(row => row.key).join('\n')).slice(0, 32)}`
-    await writeMail(db, { ...alertLetterOf(state, mine.map(row => row.words)), kind: 'alert', key, to: mine[0]!.email, outageId: state.id, personId }, now)
+    await writeMail(db, { ...alertLetter(aboutOutage(state), mine.map(row => row.words)), kind: 'alert', key, to: mine[0]!.email, outageId: state.id, personId }, now)
   }
   await db.update(alertTold).set({ mailedAt: new Date(now) }).where(and(eq(alertTold.outageId, state.id), isNull(alertTold.mailedAt), inArray(alertTold.key, [...new Set(waiting.map(row => row.key))])))
 }

@@ -1,5 +1,6 @@
 import { and, asc, eq, isNull, lte } from 'drizzle-orm'
 import nodemailer from 'nodemailer'
+import type { SendMailOptions, TransportOptions } from 'nodemailer'
 import { SECRET_MAIL_KINDS } from '../../../shared/schemas/mails'
 import { mails } from '../../database/schema'
 import type { Database, Queries } from '../database'
@@ -16,11 +17,11 @@ const PER_RUN = 500
 
 /** The receiver at an address. @param from as mails name their sender */
 export function receiver(url: string, from: string): { handIn: HandIn, close: () => void } {
-  const transport = nodemailer.createTransport({ url, pool: true, maxConnections: 1, connectionTimeout: 10_000, greetingTimeout: 10_000, socketTimeout: 30_000 } as nodemailer.TransportOptions)
+  const transport = nodemailer.createTransport({ url, pool: true, maxConnections: 1, connectionTimeout: 10_000, greetingTimeout: 10_000, socketTimeout: 30_000 } as TransportOptions)
   return {
     handIn: async ({ id, to, subject, text, html, createdAt }) => {
       // The same Message-ID at each try: a receiver that gets a mail twice can tell.
-      await transport.sendMail({ from, to, subject, text, html, date: createdAt, messageId: `<${id}@${mailDomain(from)}>`, headers: { 'Auto-Submitted': 'auto-generated' } } as nodemailer.SendMailOptions)
+      await transport.sendMail({ from, to, subject, text, html, date: createdAt, messageId: `<${id}@${mailDomain(from)}>`, headers: { 'Auto-Submitted': 'auto-generated' } } as SendMailOptions)
     },
     close: () => transport.close(),
   }

@@ -9,7 +9,7 @@ import { isMailOn } from './settings'
 export interface MailText { subject: string, text: string, html: string }
 
 /** A mail to be sent. `key` says what it tells and to whom. */
-export interface NewMail extends MailText { id?: string, kind: MailKind, key: string, to: string, outageId?: string | null, personId?: string | null }
+export interface NewMail extends MailText { id?: string, kind: MailKind, key: string, to: string, outageId?: string | null, personId?: string | null, notice?: typeof mails.$inferInsert.notice }
 
 /** Name of the job that sends them. */
 export const SEND_MAILS = 'send-mails'
@@ -19,10 +19,10 @@ export const SEND_MAILS = 'send-mails'
  * @param now Unix ms
  * @returns its id; null where mail is off, nobody is to be told, or the same was written before
  */
-export async function writeMail(db: Queries, { id, to, outageId, personId, ...mail }: NewMail, now: number): Promise<string | null> {
+export async function writeMail(db: Queries, { id, to, outageId, personId, notice, ...mail }: NewMail, now: number): Promise<string | null> {
   if (!isMailOn() || !to) return null
   const at = new Date(now)
-  const [row] = await db.insert(mails).values({ ...mail, id: id ?? uuidv7(now), to, outageId: outageId ?? null, personId: personId ?? null, createdAt: at, nextTryAt: at })
+  const [row] = await db.insert(mails).values({ ...mail, id: id ?? uuidv7(now), to, outageId: outageId ?? null, personId: personId ?? null, notice: notice ?? null, createdAt: at, nextTryAt: at })
     .onConflictDoNothing({ target: mails.key }).returning({ id: mails.id })
   if (row) await hasten(db, SEND_MAILS)
   return row?.id ?? null

@@ -1,11 +1,11 @@
 import { RateLimiterDrizzle } from 'rate-limiter-flexible'
-import { PER_ACCOUNT, PER_ADDRESS, SIGN_IN_WINDOW_MINUTES } from '../../../shared/schemas/people'
+import { PER_ACCOUNT, PER_ADDRESS, RESETS_PER_ACCOUNT, RESETS_PER_ADDRESS, SIGN_IN_WINDOW_MINUTES } from '../../../shared/schemas/people'
 import { rateLimits } from '../../database/schema'
 import { useDatabase } from '../database'
 
 const SECONDS = SIGN_IN_WINDOW_MINUTES * 60
 
-const limiter = (keyPrefix: string, points: number) => new RateLimiterDrizzle({ storeClient: useDatabase(), schema: rateLimits, keyPrefix, points, duration: SECONDS, clearExpiredByTimeout: false })
+const limiter = (keyPrefix: string, points: number, duration = SECONDS) => new RateLimiterDrizzle({ storeClient: useDatabase(), schema: rateLimits, keyPrefix, points, duration, clearExpiredByTimeout: false })
 
 /** Seconds until this account or address may try again; 0 when it may now. */
 export async function signInWait(email: string, address: string): Promise<number> {
@@ -25,4 +25,15 @@ export async function countWrongPassword(email: string, address: string): Promis
 /** A right password clears the account's count, not the address's. */
 export async function clearWrongPasswords(email: string): Promise<void> {
   await limiter('account', PER_ACCOUNT).delete(email)
+}
+
+/** Counts a wish for a link to a new password; seconds until this address may ask again, 0 when it may now. */
+export async function resetWait(address: string): Promise<number> {
+  const { consumedPoints, msBeforeNext } = await limiter('reset-address', RESETS_PER_ADDRESS, 3600).penalty(address)
+  return consumedPoints > RESETS_PER_ADDRESS ? Math.ceil(msBeforeNext / 1000) : 0
+}
+
+/** Counts a wish for an account's link, and says whether it is granted. */
+export async function mayReset(email: string): Promise<boolean> {
+  return (await limiter('reset-account', RESETS_PER_ACCOUNT, 3600).penalty(email)).consumedPoints <= RESETS_PER_ACCOUNT
 }

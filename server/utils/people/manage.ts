@@ -8,19 +8,45 @@ import { keepChange } from '../changes/keep'
 import type { Queries } from '../database'
 import { useDatabase } from '../database'
 import { conflict, notFound, unprocessable } from '../errors'
+import { isMailOn } from '../mail/settings'
 import { clearWrongPasswords } from './limits'
-import { hashPassword } from './password'
+import { writeInvitation, writePasswordSet } from './mails'
+import { hashPassword, nobodysPassword } from './password'
 
 type Row = typeof people.$inferSelect
 
-/** Makes an account with a password that its owner must change. 409 for an e-mail address in use. */
+/**
+ * Makes an account with a password that its owner must change, or, without one, invites them by mail.
+ * 409 for an e-mail address in use; 422 for an invitation where mail is off.
+ */
 export async function createPerson(by: Changer, { email, name, role, password, siteIds }: z.output<typeof personCreateSchema>): Promise<PersonItem> {
-  const passwordHash = await hashPassword(password)
+  const invited = password === null
+  if (invited && !isMailOn()) return unprocessable('password', 'Mail is off here: give a temporary password')
+  const passwordHash = await hashPassword(password ?? nobodysPassword())
+  const now = new Date()
   return useDatabase().transaction(async (tx) => {
-    const [row] = await tx.insert(people).values({ email, name, role, passwordHash, mustChangePassword: true }).onConflictDoNothing({ target: people.email }).returning()
+    const [row] = await tx.insert(people).values({ email, name, role, passwordHash, mustChangePassword: true, invitedAt: invited ? now : null }).onConflictDoNothing({ target: people.email }).returning()
     if (!row) return conflict('Somebody has this e-mail address already', 'email')
     const item = itemOf(row, await setSites(tx, row, siteIds))
-    await keepPerson(tx, by, item, {}, await toldPerson(tx, item))
+    if (invited) await writeInvitation(tx, row, by.name, now.getTime())
+    await keepPerson(tx, by, item, {}, { ...await toldPerson(tx, item), ...invited ? { invited: 'by mail' } : {} })
+    return item
+  })
+}
+
+/** Writes the invitation of somebody again who has not chosen a password yet. 404 for nobody; 409 where there is nothing to invite to. */
+export async function inviteAgain(id: string, by: Changer): Promise<PersonItem> {
+  const now = new Date()
+  return useDatabase().transaction(async (tx) => {
+    const [before] = await tx.select().from(people).where(eq(people.id, id)).for('update')
+    if (!before) return notFound('person')
+    if (!isMailOn()) return conflict('Mail is off here: give a temporary password')
+    if (before.disabledAt) return conflict('The account is switched off')
+    if (before.invitedAt === null) return conflict('They were not invited, or chose a password already')
+    const [row] = await tx.update(people).set({ invitedAt: now }).where(eq(people.id, id)).returning()
+    const item = itemOf(row!, await sitesOf(tx, id))
+    await writeInvitation(tx, row!, by.name, now.getTime())
+    await keepPerson(tx, by, item, await toldPerson(tx, item), { ...await toldPerson(tx, item), invited: 'again, by mail' })
     return item
   })
 }
@@ -48,10 +74,11 @@ export async function updatePerson(id: string, by: Changer, change: z.output<typ
       name: change.name ?? before.name,
       role,
       disabledAt,
-      ...(passwordHash === undefined ? {} : { passwordHash, mustChangePassword: true }),
+      ...(passwordHash === undefined ? {} : { passwordHash, mustChangePassword: true, invitedAt: null }),
       ...(endsSessions ? { sessionVersion: sql`${people.sessionVersion} + 1` } : {}),
     }).where(eq(people.id, id)).returning()
     const changed = itemOf(row!, await setSites(tx, row!, change.siteIds))
+    if (passwordHash !== undefined) await writePasswordSet(tx, row!, 'given', Date.now())
     await keepPerson(tx, by, changed, told, { ...await toldPerson(tx, changed), ...passwordHash === undefined ? {} : { password: 'given anew' } })
     return changed
   })
@@ -95,6 +122,6 @@ async function keepPerson(tx: Queries, by: Changer, { id, name }: PersonItem, be
 
 /** An account as an administrator sees it. */
 export function itemOf(row: Row, siteIds: string[]): PersonItem {
-  const { id, email, name, role, mustChangePassword, disabledAt, createdAt } = row
-  return { id, email, name, role, siteIds: [...siteIds].sort(), mustChangePassword, disabledAt: disabledAt?.toISOString() ?? null, createdAt: createdAt.toISOString() }
+  const { id, email, name, role, mustChangePassword, invitedAt, disabledAt, createdAt } = row
+  return { id, email, name, role, siteIds: [...siteIds].sort(), mustChangePassword, invitedAt: invitedAt?.toISOString() ?? null, disabledAt: disabledAt?.toISOString() ?? null, createdAt: createdAt.toISOString() }
 }

@@ -1,3 +1,4 @@
+import { randomBytes } from 'node:crypto'
 import { hash, verify } from '@node-rs/argon2'
 
 // OWASP's Password Storage cheat sheet: argon2id, 19 MiB, two passes, one lane (from memory).
@@ -8,6 +9,11 @@ const NOBODY = hash('an account that is not there', COST)
 /** argon2id hash in its usual text form. */
 export function hashPassword(password: string): Promise<string> {
   return hash(password, COST)
+}
+
+/** A password that nobody knows, for an account whose owner has yet to choose theirs. */
+export function nobodysPassword(): string {
+  return randomBytes(32).toString('base64url')
 }
 
 /** Whether the password is right; false for a missing hash, after the same work. */

@@ -11,6 +11,7 @@ import type { Person } from '../access'
 import { maySeeSite } from '../access'
 import type { Database, Queries } from '../database'
 import { notFound } from '../errors'
+import { tellByMail } from '../mail/tell'
 import { readDeletion } from '../retention/tombstone'
 import type { PushResult, Refusal } from './admit'
 import { hastenAlerts } from '../alerts/hasten'
@@ -106,6 +107,7 @@ async function appendLocked(db: Database, folds: Folds, person: Person, outageId
     const results = await appendAll(draft, await readKnown(tx, person.id, items), person, items)
     if (draft.state.size > before) {
       await hastenAlerts(draft)
+      await tellByMail(draft)
       await saveProjection(draft)
     }
     return { draft, results }

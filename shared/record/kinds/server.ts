@@ -21,6 +21,13 @@ export type PlantFault = (typeof PLANT_FAULTS)[number]
 export const ACT_CAUSES = ['hold-short', 'deadline-near', 'act', 'discard'] as const
 export type ActCause = (typeof ACT_CAUSES)[number]
 
+/** Who is told without an account. */
+export const NOTICE_PARTIES = ['shop', 'monitoring'] as const
+export type NoticeParty = (typeof NOTICE_PARTIES)[number]
+/** What they are told: that control is away, that nothing comes of it, that it is back, what product was moved or discarded. */
+export const NOTICE_SUBJECTS = ['control-away', 'called-off', 'control-back', 'product'] as const
+export type NoticeSubject = (typeof NOTICE_SUBJECTS)[number]
+
 /** Kinds that only the server signs. */
 export const serverKinds = {
   'signer-named': { 1: z.object({
@@ -61,6 +68,10 @@ export const serverKinds = {
   }).strict() },
   /** an act of a short hold is asked for no more: readings since show that the case holds */
   'act-lapsed': { 1: z.object({ caseId: uuid, holdMinutes: z.number().min(0).nullable(), judgedAt: time }).strict() }, // null: its limit is never reached
+  /** a mail to somebody without an account was handed in */
+  'notice-sent': { 1: z.object({ mail: uuid, party: z.enum(NOTICE_PARTIES), subject: z.enum(NOTICE_SUBJECTS), name: z.string().max(80), to: z.string().min(1).max(254), sentAt: time }).strict() },
+  /** whoever has the link of a notice said that they have read it, under a name that they gave */
+  'notice-acknowledged': { 1: z.object({ mail: uuid, party: z.enum(NOTICE_PARTIES), name: z.string().trim().min(1).max(80) }).strict() },
   'entry-refused': { 1: z.object({ device: uuid, n: z.number().int().min(1), id: uuid, hash: z.string().regex(/^[0-9a-f]{64}$/), reason: z.string().max(1000) }).strict() },
   ...alertKinds,
 }

@@ -64,5 +64,7 @@ export const BODIES: { [K in EntryKind]: BodyInput<K> } = {
   'alert-over': { key: 'round-late dairy 1', judgedAt: isoTime(BEGAN) },
   'act-lapsed': { caseId: DAIRY, holdMinutes: 25.5, judgedAt: isoTime(BEGAN) },
   'act-opened': { caseId: DAIRY, cause: 'deadline-near', deadline: isoTime(BEGAN), openedAt: isoTime(BEGAN) },
+  'notice-sent': { mail: entryId, party: 'shop', subject: 'control-away', name: 'Maud Finch', to: 'maud@quillfeather.example', sentAt: isoTime(BEGAN) },
+  'notice-acknowledged': { mail: entryId, party: 'shop', name: 'Maud Finch' },
   'entry-refused': { device: entryId, n: 3, id: entryId, hash: 'e'.repeat(64), reason: words },
 }

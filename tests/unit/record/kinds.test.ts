@@ -79,7 +79,7 @@ describe('the registry', () => {
   it('knows its kinds and no inherited name', () => {
     expect(kinds.every(isEntryKind)).toBe(true)
     for (const name of ['constructor', '__proto__', 'toString', 'note_added', '']) expect(isEntryKind(name)).toBe(false)
-    expect(kinds.filter(isServerKind).sort()).toEqual(['act-lapsed', 'act-opened', 'alert-acknowledged', 'alert-over', 'alert-passed-on', 'alert-raised', 'entry-refused', 'outage-numbered', 'plant-warned', 'signer-named', 'verdict-changed'])
+    expect(kinds.filter(isServerKind).sort()).toEqual(['act-lapsed', 'act-opened', 'alert-acknowledged', 'alert-over', 'alert-passed-on', 'alert-raised', 'entry-refused', 'notice-acknowledged', 'notice-sent', 'outage-numbered', 'plant-warned', 'signer-named', 'verdict-changed'])
   })
 
   it('has no schema for a version to come', () => {
