@@ -22,9 +22,9 @@ import { pushWorld } from '../tests/support/push-world'
 
 const CONNECTIONS = [1, 8, 32]
 const OUTAGES = [1, 8, 100]
-const MEASURED = 192
+const MEASURED = 640
 const BATCH = 50
-const ROUNDS = 1
+const ROUNDS = 3
 
 /** Runs one worker a connection; each does its share. @returns entries per second */
 async function perSecond(workers: (() => Promise<number>)[]): Promise<number> {

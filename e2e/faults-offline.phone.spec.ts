@@ -7,8 +7,8 @@ import { enrol, sign } from './support/run'
 
 /** What a browser says on its console of a request that was cut off, refused or met a server that was going down. */
 const UNHEARD = /console error: Failed to load resource: (net::ERR_|the server responded with a status of (207|403|502|503))/
-/** All that waits is in the record this soon after the network is back, ms; measured in each step. */
-const DRAINED_MS = 5000
+/** All that waits is in the record this soon after the network is back, on a machine with much else to do, ms; each step says how long it took. */
+const DRAINED_MS = 15_000
 const PUSH = /\/api\/outages\/[^/]+\/entries$/
 
 const cut = (browser: CDPSession, offline: boolean) => browser.send('Network.emulateNetworkConditions', { offline, latency: 0, downloadThroughput: -1, uploadThroughput: -1 })
@@ -35,7 +35,7 @@ async function onNextPush(page: Page, meet: (route: Route) => Promise<void>): Pr
   return { met }
 }
 
-test('a killed server, a cut network, lost and doubled answers: nothing is lost, nothing doubled, and each entry is said to be where it is', async ({ page, context, server, faults }, info) => {
+test('a killed server, a cut network, lost and doubled answers: nothing is lost, nothing doubled, and each entry is said to be where it is', async ({ page, context, server, faults, open }, info) => {
   test.setTimeout(180_000)
   faults.allow(UNHEARD)
   await signInAs(page, 'technician@quillfeather.example')
@@ -81,7 +81,7 @@ test('a killed server, a cut network, lost and doubled answers: nothing is lost,
       await write(`signed as the server went down, ${wait}`)
       await met
       await write(`signed without a server, ${wait}`)
-      await expect(page.getByText(/kept on this phone/)).toBeVisible()
+      await expect(page.getByText(/entr(y|ies) kept on this phone/).first()).toBeVisible()
       await server.up()
       await expectDrained(`killed after ${wait} ms`, Date.now())
     })
@@ -95,7 +95,7 @@ test('a killed server, a cut network, lost and doubled answers: nothing is lost,
     await write('signed as the network went')
     await met
     await write('signed without a network')
-    await expect(page.getByText(/entr(y|ies) kept on this phone/)).toBeVisible()
+    await expect(page.getByText(/entr(y|ies) kept on this phone/).first()).toBeVisible()
     await cut(browser, false)
     await expectDrained('cut off', Date.now())
   })
@@ -137,9 +137,9 @@ test('a killed server, a cut network, lost and doubled answers: nothing is lost,
     await expect(page.getByText('Refused, not in the record', { exact: true })).toHaveCount(0)
   })
 
-  await signInAs(page, 'auditor@quillfeather.example').catch(() => undefined)
-  const record = await (await page.request.get(`/api/outages/${id}/record.json`)).json()
+  const desk = await open('desk')
+  await signInAs(desk, 'auditor@quillfeather.example')
+  const record = await (await desk.request.get(`/api/outages/${id}/record.json`)).json()
   expect(verifyRecord(record)).toMatchObject({ faults: [] })
   info.annotations.push({ type: 'drained after, ms', description: JSON.stringify(drains) })
-  console.log(JSON.stringify(drains))
 })
