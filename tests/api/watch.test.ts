@@ -1,5 +1,6 @@
 // The watch on two built servers with one database; rules of this project, no published source.
 import { randomBytes } from 'node:crypto'
+import { connect as connectSocket } from 'node:net'
 import postgres from 'postgres'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { WatchAnswer } from '../../shared/schemas/watch'
