@@ -25,7 +25,7 @@ let administrator: Client
 let records: { id: string, code: string }[]
 
 beforeAll(async () => {
-  server = await startTestServer({ demo: true })
+  server = await startTestServer({ demo: true, jobs: true })
   database = connect(server.databaseUrl, 4)
   auditor = await signIn(server.url, 'auditor@quillfeather.example')
   administrator = await signIn(server.url, 'admin@quillfeather.example')
