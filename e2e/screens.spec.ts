@@ -55,9 +55,12 @@ test('the screens of the others', async ({ page, open }) => {
   const { items } = await (await page.request.get('/api/outages')).json() as { items: Item[] }
   const submitted = items.find(item => item.phase === 'submitted')!
   const sealed = items.find(item => item.phase === 'sealed')!
-  for (const path of ['/', '/records', '/records?words=nobodywrotethis', '/insights', '/exports', `/records/${submitted.id}`, `/outages/${submitted.id}`, `/outages/${submitted.id}/review`]) await look(page, path, false)
+  const dark = items.find(item => item.phase === 'dark')!
+  for (const path of ['/watch', `/watch/${dark.id}`]) await look(page, path, false)
+  for (const path of ['/records', '/records?words=nobodywrotethis', '/insights', '/exports', `/records/${submitted.id}`, `/outages/${submitted.id}`, `/outages/${submitted.id}/review`]) await look(page, path, false)
   const desk = await open('desk')
   await signInAs(desk, people.auditor)
+  for (const path of ['/watch', `/watch/${submitted.id}`]) await look(desk, path, false)
   for (const path of ['/', '/records', '/records?tag=C-1&sort=shortest-hold&from=2026-01-01', '/insights', '/exports', `/records/${sealed.id}`, '/retention/deleted']) await look(desk, path, false)
   const admin = await open('desk')
   await signInAs(admin, people.administrator)

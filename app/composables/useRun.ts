@@ -32,7 +32,7 @@ export function useSiteClock() {
 /** Acts that end a screen or open a gate: the screen waits for the server's answer; all others go on once kept. */
 const WAITED_FOR: ReadonlySet<EntryKind> = new Set([
   'plan-changed', 'plan-submitted', 'plan-approved', 'plan-returned', 'margin-accepted', 'in-hand-begun', 'called-off',
-  'went-dark', 'control-back', 'hand-back-closed', 'submitted', 'returned', 'sealed', 'left-in-exception', 'decided-otherwise', 'hands-offered', 'hands-taken', 'voice-confirmed', 'voice-denied',
+  'went-dark', 'control-back', 'turn-back-ordered', 'hand-back-closed', 'submitted', 'returned', 'sealed', 'left-in-exception', 'decided-otherwise', 'hands-offered', 'hands-taken', 'voice-confirmed', 'voice-denied',
 ])
 
 /** Signing from a screen: what is under way, and what came of it in words. */

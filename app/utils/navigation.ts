@@ -6,23 +6,24 @@ export interface NavigationItem {
   to: string
 }
 
-const homes: Record<NavigationRole, string> = {
-  technician: 'Outages',
-  supervisor: 'Watch',
-  auditor: 'Overview',
-  administrator: 'Overview',
+/** The first page of each role: a supervisor's is the watch itself. */
+const homes: Record<NavigationRole, NavigationItem[]> = {
+  technician: [{ label: 'Outages', to: '/' }],
+  supervisor: [{ label: 'Watch', to: '/watch' }],
+  auditor: [{ label: 'Overview', to: '/' }, { label: 'Watch', to: '/watch' }],
+  administrator: [{ label: 'Overview', to: '/' }, { label: 'Watch', to: '/watch' }],
 }
 
 /** The links of the header for a role, in their order; nothing for somebody without a known role. */
 export function navigationFor(role: string | null | undefined): NavigationItem[] {
   if (!role || !Object.hasOwn(homes, role)) return []
   const items: NavigationItem[] = [
-    { label: homes[role as NavigationRole], to: '/' },
+    ...homes[role as NavigationRole],
     { label: 'Records', to: '/records' },
     { label: 'Sites', to: '/sites' },
     { label: 'Rulebooks', to: '/rulebooks' },
   ]
-  if (role !== 'technician') items.splice(2, 0, { label: 'Insights', to: '/insights' })
+  if (role !== 'technician') items.splice(items.findIndex(item => item.to === '/records') + 1, 0, { label: 'Insights', to: '/insights' })
   if (role === 'administrator') items.push({ label: 'People', to: '/people' }, { label: 'Mail', to: '/admin/mail' })
   items.push({ label: 'Account', to: '/account' })
   return items

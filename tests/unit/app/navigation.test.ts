@@ -12,9 +12,14 @@ describe('navigationFor', () => {
 
   it('begins with the first page and ends with the account', () => {
     for (const role of ['technician', 'supervisor', 'auditor', 'administrator']) {
-      expect(paths(role)[0]).toBe('/')
+      expect(paths(role)[0]).toBe(role === 'supervisor' ? '/watch' : '/')
       expect(paths(role).at(-1)).toBe('/account')
     }
+  })
+
+  it('leads supervisors, auditors and administrators to the watch', () => {
+    for (const role of ['supervisor', 'auditor', 'administrator']) expect(paths(role)).toContain('/watch')
+    expect(paths('technician')).not.toContain('/watch')
   })
 
   it.each([null, undefined, '', 'owner', 'toString', '__proto__'])('gives nothing to %j', (role) => {
