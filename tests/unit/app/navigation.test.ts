@@ -35,6 +35,7 @@ describe('isWithin', () => {
     ['/records/1', '/records', true],
     ['/recordsets', '/records', false],
     ['/people/new', '/people', true],
+    ['/admin/mailbox/1', '/admin/mail', true],
   ])('%s in the room of %s: %s', (path, to, within) => {
     expect(isWithin(path, to)).toBe(within)
   })
