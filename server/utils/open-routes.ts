@@ -4,7 +4,7 @@ export const OPEN_ROUTES: readonly { path: RegExp, why: string }[] = [
   { path: /^\/api\/health$/, why: 'asked by the start command and by load balancers' },
   { path: /^\/api\/setup$/, why: 'makes the first administrator; closed once anybody exists' },
   { path: /^\/api\/notices\/[^/]+$/, why: 'a shop\'s contact has no account; the link is signed' },
-  { path: /^\/api\/password-links(\/(invitation|password-reset)\/[^/]+)?$/, why: 'whoever chooses a password cannot sign in yet; the link is signed' },
+  { path: /^\/api\/password-links(\/[^/]+\/[^/]+)?$/, why: 'whoever chooses a password cannot sign in yet; the link is signed' },
   { path: /^\/api\/server-keys$/, why: 'public keys, for whoever verifies a record without an account' },
 ]
 
