@@ -33,15 +33,16 @@ test('an auditor finds a record', async ({ page }) => {
     await page.getByLabel('Order').selectOption('longest-dark')
     await expect(page).toHaveURL(/sort=longest-dark/)
     await expect(codes).toHaveCount(all)
-    const order = await codes.allTextContents()
+    // Quarry Street has no third defrost heater.
+    const withPoint = (await codes.allTextContents()).filter(code => !code.startsWith('Q027'))
     await page.getByText('More to look for').click()
     await page.getByLabel('Point tag').fill('dh-3')
     await page.keyboard.press('Enter')
-    await expect(codes).toHaveText(order.filter(code => code.startsWith('Q031')))
+    await expect(codes).toHaveText(withPoint)
     await page.reload()
     await hydrated(page)
     await expect(page.getByLabel('Point tag')).toHaveValue('dh-3')
-    await expect(codes).toHaveText(order.filter(code => code.startsWith('Q031')))
+    await expect(codes).toHaveText(withPoint)
   })
 
   await test.step('days that lie the wrong way round are said, not searched', async () => {
