@@ -55,7 +55,7 @@ describe('an alert', () => {
   it('says whom it reached, and whether anybody acknowledged it', () => {
     const writer = buildRecord({ until: 'dark' })
     const at = isoTime(writer.now)
-    const raised = { alert: 'round-late', about: [caseId('Fish service')], level: 1, words: 'Quarry Street: Fish service is late', until: null, to: ['Ines Calloway'], judgedAt: at } as const
+    const raised = { alert: 'round-late' as const, about: [caseId('Fish service')], level: 1 as const, words: 'Quarry Street: Fish service is late', until: null, to: ['Ines Calloway'], judgedAt: at }
     writer.serverEntry('alert-raised', { key: 'round-late one', ...raised })
     writer.serverEntry('alert-raised', { key: 'round-late two', ...raised, to: [] })
     writer.serverEntry('alert-acknowledged', { key: 'round-late one', person: supervisor.id, name: supervisor.name, acknowledgedAt: at })
