@@ -38,6 +38,7 @@ let outage: { id: string, siteId: string }
 beforeAll(async () => {
   process.env.HOLDOVER_SERVER_KEY = randomBytes(32).toString('base64url')
   process.env.HOLDOVER_SMTP_URL = 'smtp://127.0.0.1:1'
+  process.env.NUXT_AUTH_SECRET = randomBytes(32).toString('base64url')
   await makeDatabase(admin, name)
   one = connect(url, 3)
   two = connect(url, 3)

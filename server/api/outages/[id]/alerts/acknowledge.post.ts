@@ -7,8 +7,8 @@ import { readBodyAs } from '~~/server/utils/parse'
 
 /** Says that one has seen an alert: it goes on to nobody else. */
 export default defineEventHandler(async (event) => {
-  const person = requireRole(event, 'technician', 'supervisor', 'administrator')
   const { outage } = await requireOutage(event)
+  const person = requireRole(event, 'technician', 'supervisor', 'administrator')
   const { key } = await readBodyAs(event, acknowledgeSchema)
   return acknowledgeAlert(useDatabase(), person, outage.id, key, Date.now())
 })
