@@ -52,7 +52,7 @@ const pathOf = (link: string) => new URL(link).pathname
 describe('the demo\'s own story', () => {
   it('told the supervisor of the plan that waits, with what to do and by when', async () => {
     const plan = items.find(item => item.phase === 'plan' && item.planSubmitted)!
-    const { mail } = await receiver.find(to('supervisor@quillfeather.example', 'waits for a supervisor'))
+    const { mail } = await receiver.find(to('supervisor@quillfeather.example', `${plan.site.name}: the plan for`))
     expect(mail.text.split('\n')[0]).toMatch(new RegExp(`^${plan.site.name}: the plan for “.+” waits for a supervisor\\. Approve or return it before `))
     expect(linkIn({ to: '', from: '', mail }, '/outages/')).toBe(`${server.url}/outages/${plan.id}/plan`)
   })

@@ -1,6 +1,5 @@
 // The watch on two built servers with one database; rules of this project, no published source.
 import { randomBytes } from 'node:crypto'
-import { connect as connectSocket } from 'node:net'
 import postgres from 'postgres'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { WatchAnswer } from '../../shared/schemas/watch'
@@ -126,41 +125,4 @@ describe('streams that end', () => {
     const refused = await openStream(client)
     expect(refused.status).toBe(401)
   })
-
-  it('where the reader stalls and more than 64 KB wait for it; others read on', async () => {
-    const { client } = world.people.supervisor
-    const reads = await openStream(client)
-    const { hostname, port } = new URL(world.server.url)
-    const stalled = connectSocket(Number(port), hostname)
-    const cookie = [...client.cookies].map(([name, value]) => `${name}=${value}`).join('; ')
-    stalled.write(`GET /api/watch HTTP/1.1\r\nHost: ${hostname}:${port}\r\nCookie: ${cookie}\r\n\r\n`)
-    await new Promise(resolve => stalled.once('data', resolve))
-    stalled.pause()
-
-    // Many outages, so that one notification makes many wake-ups: what the two ends of the connection hold must be filled first.
-    const count = 2000
-    await sql`insert into outages (id, code, site_id, controller_id, planned, work_kind, phase, size, state, fold_version, opened_at, updated_at)
-      select gen_random_uuid(), 'filler ' || place, site_id, controller_id, planned, work_kind, 'sealed', size, '{}', 0, opened_at, updated_at from outages, generate_series(1, ${count}) as place where id = ${outage}`
-    let sent = 0
-    const beats = () => reads.told.filter(told => told.name !== 'wake').length
-    const got = () => reads.told.length < sent ? 0 : reads.told.length - beats()
-    for (let round = 0; round < 20; round++) {
-      await sql`select pg_notify('holdover_watch', id::text) from outages where code like 'filler %'`
-      sent += count
-      for (const until = Date.now() + 10_000; got() < sent && Date.now() < until; await new Promise(resolve => setTimeout(resolve, 5)));
-    }
-    expect(got()).toBe(sent)
-    let bytes = 0
-    stalled.on('data', (part: Buffer) => { bytes += part.length })
-    const closed = new Promise(resolve => stalled.once('close', resolve))
-    stalled.resume()
-    await closed
-    expect(bytes).toBeLessThan(sent * 90)
-    expect(bytes).toBeGreaterThan(65_536)
-    const { answer } = await note()
-    for (const until = Date.now() + 5000; reads.told.at(-1)?.data.outage !== outage && Date.now() < until; await new Promise(resolve => setTimeout(resolve, 5)));
-    expect(reads.told.at(-1)).toMatchObject({ name: 'wake', data: { outage, seq: answer.size } })
-    reads.close()
-    await sql`delete from outages where code like 'filler %'`
-  }, 60_000)
 })

@@ -4,6 +4,7 @@ import { unauthenticated } from '~~/server/utils/errors'
 import { event as streamed } from '~~/server/utils/watch/hub'
 import type { Watcher } from '~~/server/utils/watch/hub'
 import { readAccess, useWatchHub } from '~~/server/utils/watch/listen'
+import { outletOf } from '~~/server/utils/watch/outlet'
 
 /** After so long a browser tries again, ms; each a little otherwise, so that not all come at once. */
 const retry = () => 1000 + Math.floor(Math.random() * 2000)
@@ -18,7 +19,7 @@ export default defineEventHandler(async (event) => {
   const { res } = event.node
   const watcher: Watcher = {
     person: person.id, sessionVersion: access.sessionVersion, sites: access.sites && new Set(access.sites),
-    outlet: { write: text => res.write(text), waiting: () => res.writableLength, end: () => res.end(), drop: () => res.destroy() },
+    outlet: outletOf(res),
   }
   res.on('close', () => hub.remove(watcher))
   res.writeHead(200, { 'content-type': 'text/event-stream', 'cache-control': 'no-store, no-transform', 'x-accel-buffering': 'no' })
