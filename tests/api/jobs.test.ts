@@ -16,6 +16,7 @@ it('time alone brings a verdict to an outage that nobody writes to', async () =>
   const { server, people } = world
   const phone = await world.phoneOf('technician')
   const outage = await world.open(phone, server.now() - 60_000)
+  await phone.act(outage, 'reading-taken', { round: 0, caseId: world.snapshot.cases[0]!.id, value: 36, unit: 'F', method: 'product', instrumentId: null })
   const log = async () => (await people.technician.client.send<{ entries: StoredEntry[] }>('GET', `/api/outages/${outage}/entries`)).body.entries
   const before = (await log()).length
   await server.advance(90)
