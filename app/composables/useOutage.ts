@@ -15,7 +15,7 @@ import { drainFiles, keepFile } from '~/offline/files'
 import { keptOutbox, onKeptChange } from '~/offline/kept'
 import { forgetLog, keepLog, keptLog } from '~/offline/logs'
 import type { OutboxEntry, PushResult, Trouble } from '~/offline/outbox-ports'
-import { isWaiting } from '~/offline/outbox-ports'
+import { isWaiting, troubleOfFault } from '~/offline/outbox-ports'
 import { fetchEntries, fetchServerTime, putFile } from '~/queries/entries'
 import { useSigner } from '~/stores/signer'
 import { stateHere } from '~/utils/state-here'
@@ -133,7 +133,7 @@ export function useOutage(id: string, person: { id: string, role: Role }) {
 
   async function send(): Promise<Map<string, PushResult>> {
     if (sameLog.parting.value) return new Map()
-    const { answers, trouble: met } = await outbox.drain(id, person.id).catch(() => ({ answers: new Map<string, PushResult>(), trouble: 'failed' as Trouble }))
+    const { answers, trouble: met } = await outbox.drain(id, person.id).catch((error: unknown) => ({ answers: new Map<string, PushResult>(), trouble: troubleOfFault(error) }))
     trouble.value = met
     if (met === null) await drainFiles(id, person.id, putFile).catch(() => undefined)
     return answers

@@ -33,9 +33,12 @@ export type PushResult
 /**
  * Why entries wait: no answer; nobody is signed in; somebody else is; the outage is not to be found;
  * the server failed; it takes no body of this size; it does not know this version of a kind yet; its log is
- * not the one that this device saw.
+ * not the one that this device saw; this device keeps no answer.
  */
-export type Trouble = 'away' | 'signed-out' | 'another-signer' | 'missing' | 'failed' | 'too-large' | 'newer' | 'other-log'
+export type Trouble = 'away' | 'signed-out' | 'another-signer' | 'missing' | 'failed' | 'too-large' | 'newer' | 'other-log' | 'storage'
+
+/** Why sending broke off: by this device's storage, as where it is full, else by the server. */
+export const troubleOfFault = (error: unknown): Trouble => error instanceof DOMException ? 'storage' : 'failed'
 
 /** A push without answers to its entries. What was signed stays kept. */
 export class Unsent extends Error {

@@ -3,7 +3,7 @@ import { ENTRIES_PER_PUSH, entryBytes, entryHash, isoTime } from '~~/shared/reco
 import type { BodyInput, EntryKind } from '~~/shared/record/kinds'
 import { newestSchema, newestVersion } from '~~/shared/record/kinds'
 import type { ChainEnd, Locks, OutboxEntry, OutboxPorts, PushResult, Refused, Settlement, Signing, Trouble } from './outbox-ports'
-import { isWaiting, Unsent } from './outbox-ports'
+import { isWaiting, troubleOfFault, Unsent } from './outbox-ports'
 
 export * from './outbox-ports'
 
@@ -93,7 +93,7 @@ export function createOutbox({ store, send, locks, now, newId, changed = () => {
     const drained = new Map<string, Drained>()
     const next = async (): Promise<void> => {
       for (let outage = outages.shift(); outage !== undefined; outage = outages.shift()) {
-        drained.set(outage, await drain(outage, person).catch((): Drained => ({ answers: new Map(), trouble: 'failed' })))
+        drained.set(outage, await drain(outage, person).catch((error: unknown): Drained => ({ answers: new Map(), trouble: troubleOfFault(error) })))
       }
     }
     await Promise.all(Array.from({ length: SIDE_BY_SIDE }, next))

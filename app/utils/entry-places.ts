@@ -34,5 +34,6 @@ export const TROUBLE_WORDS: Record<Trouble, string> = {
   'failed': 'The server failed on them. They stay here and are tried again.',
   'too-large': 'The server does not take an entry of this size. It stays here; tell your administrator.',
   'other-log': 'The log of this outage is not the one that this phone saw: nothing is sent to it. They stay here; tell your supervisor and whoever keeps the server.',
+  'storage': 'The storage of this device is full, or the browser keeps nothing: what the server answers cannot be kept. They stay here and are sent again once there is room.',
   'newer': 'They are of a newer version than the server. They are sent once it is renewed.',
 }
